@@ -1,0 +1,1 @@
+"""Audits CNC lathe programs before they meet metal."""
