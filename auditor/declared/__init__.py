@@ -1,1 +1,1 @@
-
+"""The declared world: job and shop files, codes, materials, units."""

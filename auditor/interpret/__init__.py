@@ -1,1 +1,1 @@
-
+"""Blocks to Moves."""

@@ -1,1 +1,1 @@
-
+"""Published laws on numpy arrays. Imports numpy and nothing else."""

@@ -1,1 +1,1 @@
-
+"""Text to Blocks."""

@@ -1,1 +1,1 @@
-
+"""Mechanics applied to Samples: Loads."""

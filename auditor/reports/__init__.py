@@ -1,1 +1,1 @@
-
+"""One file a format: an Audit in, text out."""

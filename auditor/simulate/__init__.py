@@ -1,1 +1,1 @@
-
+"""Moves to Samples: the tool's outline, the remaining stock, engagement."""

@@ -1,1 +1,1 @@
-
+"""Fixed cycles: one file a family, each turns a call into strokes."""
