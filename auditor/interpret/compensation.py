@@ -29,8 +29,8 @@ def offset_path(
     *,
     cancelled: bool = True,
     blind: frozenset[int] = frozenset(),
-    startup: Literal["A", "B"] = "A",
-    acute: Literal["link line", "arc"] = "link line",
+    startup: Literal["perpendicular", "intersection"] = "perpendicular",
+    acute: Literal["line", "arc"] = "line",
 ) -> OffsetPath:
     """Path of the imaginary tip for a run of programmed strokes under G41 or G42.
 
@@ -57,7 +57,7 @@ def offset_path(
         Indices of strokes that stand behind two or more blocks without motion: the control cannot look
         ahead to them, so the stroke before ends square.
     startup, acute
-        Settings ``comp_startup`` and ``comp_acute`` of the control.
+        Settings ``compensation_start`` and ``compensation_corner`` of the control.
 
     Remarks
     -------

@@ -16,6 +16,7 @@ from auditor.interpret.moves import Feed, Kind
 
 TOPIC = "cycle-corner"
 SHORTEST = 1e-6  # mm; below it two points are the same point
+FLAT = 1e-9  # sine below which two directions are one
 
 
 @dataclass(frozen=True, slots=True)
@@ -73,4 +74,125 @@ def draw(start: Point, legs: Sequence[Leg]) -> tuple[Stroke, ...]:
     >>> [(round(s.end.z, 3), round(s.end.r, 3)) for s in path]
     [(-18.0, 10.0), (-20.0, 12.0), (-20.0, 20.0)]
     """
-    raise NotImplementedError
+    ends = _theoretical_ends(start, legs)
+    points = [start, *ends]
+    cuts = [0.0] * len(points)  # cut-back at each point, both sides alike
+    corners: list[Stroke | None] = [None] * len(points)
+    for index, leg in enumerate(legs):
+        if leg.chamfer is None and leg.rounding is None:
+            continue
+        if index + 1 == len(legs):
+            raise _fault(leg, "no straight move follows the block with the corner word")
+        _check_turn(leg, points[index + 1], points[index + 2])
+        cuts[index + 1], corners[index + 1] = _break(leg, points[index], points[index + 1], points[index + 2])
+    strokes: list[Stroke] = []
+    for index, leg in enumerate(legs):
+        strokes += _leg_strokes(leg, points[index], points[index + 1], cuts[index], cuts[index + 1], corners[index + 1])
+    return tuple(strokes)
+
+
+def _fault(leg: Leg, message: str) -> CycleFault:
+    named = {",C": leg.chamfer, ",R": leg.rounding, ",A": leg.angle}
+    return CycleFault(TOPIC, message, tuple(word for word, value in named.items() if value is not None), leg.line)
+
+
+def _theoretical_ends(start: Point, legs: Sequence[Leg]) -> list[Point]:
+    """Sharp end point of every leg, angles solved."""
+    ends: list[Point] = []
+    here = start
+    for index, leg in enumerate(legs):
+        if leg.angle_only:
+            if index + 1 == len(legs):
+                raise _fault(leg, "a line given by its angle alone needs a following line with X, Z and an angle")
+            here = _crossing(here, leg, legs[index + 1])
+        else:
+            here = _end(here, leg)
+        ends.append(here)
+    return ends
+
+
+def _end(start: Point, leg: Leg) -> Point:
+    """End of a leg of which at most one coordinate follows from the angle."""
+    if leg.angle is None or (leg.end_z is not None and leg.end_r is not None):
+        return Point(start.z if leg.end_z is None else leg.end_z, start.r if leg.end_r is None else leg.end_r)
+    sine, cosine = math.sin(math.radians(leg.angle)), math.cos(math.radians(leg.angle))
+    if leg.end_r is not None:
+        if abs(sine) < FLAT:
+            raise _fault(leg, f"Z cannot follow from X along a line at {leg.angle:g} degrees: give Z")
+        return Point(start.z + (leg.end_r - start.r) * cosine / sine, leg.end_r)
+    assert leg.end_z is not None  # angle alone is solved by _crossing
+    if abs(cosine) < FLAT:
+        raise _fault(leg, f"X cannot follow from Z along a line at {leg.angle:g} degrees: give X")
+    return Point(leg.end_z, start.r + (leg.end_z - start.z) * sine / cosine)
+
+
+def _crossing(start: Point, leg: Leg, following: Leg) -> Point:
+    """Where the line from ``start`` meets the line of the following leg, both known by their angles."""
+    if leg.angle is None or following.angle is None or following.end_z is None or following.end_r is None:
+        raise _fault(leg, "a line given by its angle alone needs a following line with X, Z and an angle")
+    one, two = math.radians(leg.angle), math.radians(following.angle)
+    turn = math.sin(two - one)
+    if abs(turn) < FLAT:
+        raise _fault(leg, "the two lines given by their angles are parallel: they do not meet")
+    dz, dr = following.end_z - start.z, following.end_r - start.r
+    along = (dz * math.sin(two) - dr * math.cos(two)) / turn
+    return Point(start.z + along * math.cos(one), start.r + along * math.sin(one))
+
+
+def _check_turn(leg: Leg, corner: Point, after: Point) -> None:
+    """The sign of an old corner word has to agree with the move behind it."""
+    if leg.turn is None:
+        return
+    dz, dr = after.z - corner.z, after.r - corner.r
+    if abs(dz) > SHORTEST and abs(dr) > SHORTEST:
+        raise _fault(leg, "a corner word without a comma stands between a pure Z and a pure X move only")
+    if (dz + dr) * leg.turn < 0:
+        raise _fault(leg, "the sign of the corner word points away from the move that follows")
+
+
+def _break(leg: Leg, before: Point, corner: Point, after: Point) -> tuple[float, Stroke]:
+    """Cut-back along both sides and the stroke that joins them."""
+    to_back, to_front = _direction(corner, before), _direction(corner, after)
+    if to_back is None or to_front is None:
+        raise _fault(leg, "one side of the corner has no length")
+    cross = to_back[0] * to_front[1] - to_back[1] * to_front[0]
+    inside = math.atan2(abs(cross), to_back[0] * to_front[0] + to_back[1] * to_front[1])
+    if inside > math.pi - FLAT or inside < FLAT:
+        raise _fault(leg, "the two sides lie on one line: there is no corner to break")
+    if leg.chamfer is not None:
+        cut = leg.chamfer
+        return cut, _stroke(leg, Kind.FEED, _along(corner, to_front, cut))
+    assert leg.rounding is not None
+    cut = leg.rounding / math.tan(inside / 2)
+    bisector = (to_back[0] + to_front[0], to_back[1] + to_front[1])
+    reach = leg.rounding / math.sin(inside / 2) / math.hypot(*bisector)
+    arc = _stroke(leg, Kind.ARC, _along(corner, to_front, cut))
+    # sides seen from the corner, back before front counter-clockwise, make the path turn right
+    return cut, replace(arc, centre=_along(corner, bisector, reach), clockwise=cross > 0)
+
+
+def _direction(tail: Point, head: Point) -> tuple[float, float] | None:
+    length = math.dist(tail, head)
+    return None if length < SHORTEST else ((head.z - tail.z) / length, (head.r - tail.r) / length)
+
+
+def _along(point: Point, direction: tuple[float, float], distance: float) -> Point:
+    return Point(point.z + distance * direction[0], point.r + distance * direction[1])
+
+
+def _stroke(leg: Leg, kind: Kind, end: Point) -> Stroke:
+    return Stroke(kind, end, feed=leg.feed, line=leg.line, block=leg.block)
+
+
+def _leg_strokes(
+    leg: Leg, start: Point, end: Point, cut_start: float, cut_end: float, corner: Stroke | None
+) -> list[Stroke]:
+    """The straight part of a leg and the corner at its end."""
+    length = math.dist(start, end)
+    if length < cut_start + cut_end - SHORTEST:
+        raise _fault(leg, f"the side is {length:.4g} mm long, the corners take {cut_start + cut_end:.4g} mm of it")
+    strokes: list[Stroke] = []
+    if length > cut_start + cut_end + SHORTEST or not cut_start + cut_end:
+        direction = _direction(start, end)
+        strokes.append(_stroke(leg, Kind.FEED, end if direction is None else _along(end, direction, -cut_end)))
+    return strokes if corner is None else [*strokes, corner]
