@@ -62,6 +62,7 @@ class Samples:
     low: Floats  # across-coordinate where the stretch begins
     high: Floats  # and where it ends
     stretch: Ints  # 0, 1, … within the position
+    infeed: Floats  # thread passes: the advance per turn that gives the chip its area; else NaN
 
 
 @dataclass(frozen=True, slots=True)

@@ -1,0 +1,110 @@
+"""A threading pass: V sections one lead apart, with the chip that each turn really takes.
+
+In the half-section a thread is the tool's outline repeated at every lead. The work meets the edge in the
+radial direction; ``infeed`` is the uniform advance that would give the same chip area over the same edge, so
+that thickness ``infeed * sine`` and area ``infeed * extent`` follow the rules of every other cut.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+import numpy as np
+import shapely
+from shapely.geometry.base import BaseGeometry
+
+from auditor.interpret.moves import Move
+from auditor.simulate.outline import Direction, Outline
+from auditor.simulate.pieces import Piece, straight
+from auditor.simulate.samples import Edge, Floats, Ints
+
+GRAZING = 1e-4  # mm: an edge that only slides along the flank it cut before takes no chip
+
+
+@dataclass(frozen=True, slots=True)
+class ThreadCut:
+    """One pass: rows as in Samples and the area of the half-section that it removes."""
+
+    piece: Piece
+    edge: Edge
+    position: Floats
+    low: Floats
+    high: Floats
+    stretch: Ints
+    infeed: Floats
+    area: BaseGeometry
+
+
+def thread_pass(move: Move, outline: Outline, stock: BaseGeometry) -> ThreadCut | None:
+    """What a threading pass cuts; None where it cuts air or the lead is not known."""
+    if move.start is None or move.end is None or not move.lead:
+        return None
+    piece = straight(move.start, move.end)
+    if piece is None:
+        return None
+    turns = _turns(piece, move.lead)
+    sections = shapely.polygons([outline.hull() + _at(piece, turn) for turn in turns])
+    chips = shapely.area(shapely.intersection(sections, stock))
+    cutting = np.flatnonzero(chips > GRAZING**2)
+    if len(cutting) == 0:
+        return None
+    edge = outline.edge(_inward(outline))
+    rows = [
+        (turns[turn], low, high, ordinal, float(chips[turn]))
+        for turn in cutting
+        for ordinal, (low, high) in enumerate(_engaged(edge, _at(piece, turns[turn]), stock))
+    ]
+    if not rows:
+        return None
+    position, low, high, stretch, chip = (np.array(column) for column in zip(*rows, strict=True))
+    extent = np.array([(high - low)[position == p].sum() for p in position])
+    return ThreadCut(
+        piece, edge, position, low, high, stretch.astype(np.int64), chip / extent,
+        shapely.union_all(sections[cutting]),
+    )  # fmt: skip
+
+
+def _turns(piece: Piece, lead: float) -> Floats:
+    """Positions one lead apart, lead measured along the axis of the longer travel."""
+    pitch = lead / max(abs(piece.direction[0]), abs(piece.direction[1]))
+    return np.arange(0.0, piece.length + 1e-9, pitch)
+
+
+def _at(piece: Piece, position: float) -> tuple[float, float]:
+    return (
+        piece.start.z + piece.direction[0] * position,
+        piece.start.r + piece.direction[1] * position,
+    )
+
+
+def _inward(outline: Outline) -> Direction:
+    """The radial direction that the nose points to."""
+    nodes = outline.hull()
+    return (0.0, -1.0) if abs(nodes[:, 1].min()) < abs(nodes[:, 1].max()) else (0.0, 1.0)
+
+
+def _engaged(edge: Edge, at: tuple[float, float], stock: BaseGeometry) -> list[tuple[float, float]]:
+    """Across-intervals of the edge that lie inside the stock."""
+    dz, dr = edge.direction
+    nodes = np.stack((edge.along * dz - edge.across * dr, edge.along * dr + edge.across * dz), axis=1) + at
+    inside = shapely.intersection(shapely.linestrings(nodes), stock)
+    intervals = []
+    for part in shapely.get_parts(inside):
+        middle = shapely.line_interpolate_point(part, 0.5, normalized=True)
+        if part.length < GRAZING or shapely.distance(middle, stock.boundary) < GRAZING:
+            continue
+        across = (shapely.get_coordinates(part) - at) @ np.array((-dr, dz))
+        intervals.append((float(across.min()), float(across.max())))
+    return _merged(sorted(intervals))
+
+
+def _merged(intervals: list[tuple[float, float]]) -> list[tuple[float, float]]:
+    """Intervals that touch belong to one stretch."""
+    stretches: list[tuple[float, float]] = []
+    for low, high in intervals:
+        if stretches and low <= stretches[-1][1] + GRAZING:
+            stretches[-1] = (stretches[-1][0], max(high, stretches[-1][1]))
+        else:
+            stretches.append((low, high))
+    return [(low, high) for low, high in stretches if math.isfinite(low) and high > low]
