@@ -133,6 +133,7 @@ class Block:
     skip: int | None = None  # block skip switch 1..9
     comments: tuple[Comment, ...] = ()
     fault: SyntaxFault | None = None
+    called: str | None = None  # the name in M98 <NAME>
 
     @property
     def label(self) -> str | None:

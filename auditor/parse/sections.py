@@ -1,0 +1,113 @@
+"""Which lines of a file are program: what lies between the % marks, and what does not."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Iterator
+from dataclasses import dataclass
+from itertools import pairwise
+
+from auditor.parse.blocks import TextNote
+from auditor.parse.clean import without_gaps
+
+_COMMENT = re.compile(r"\([^)]*\)?|;.*")
+_PROGRAM_HEAD = re.compile(r"/?(?:[O:][0-9]+|<[^<>]+>)")
+_PROGRAM_END = re.compile(r"M0*(?:2|30|99)(?![0-9.])")
+_LOOKS_LIKE_CODE = re.compile(r"(?<![A-Z])[GXZUW][+-]?\.?[0-9]")
+
+
+@dataclass(frozen=True, slots=True)
+class Sections:
+    """``data`` holds the indices of the lines to read; ``titles`` those between an opening % and its program number."""
+
+    data: list[int]
+    titles: frozenset[int]
+    notes: tuple[TextNote, ...]
+
+
+def sections(lines: list[str]) -> Sections:
+    """Sort the lines of a file by its % marks; a file without any is program throughout."""
+    marks = [index for index, line in enumerate(lines) if is_mark(line)]
+    if not marks:
+        return Sections(list(range(len(lines))), frozenset(), ())
+    return _Sorting(lines, marks).sort()
+
+
+def bare(line: str) -> str:
+    """The code of a line, roughly: no comments, no blanks, upper case."""
+    return without_gaps(_COMMENT.sub("", line)).upper()
+
+
+def is_mark(line: str) -> bool:
+    """Whether a line opens or ends the program text: % at its front."""
+    return "%" in line and without_gaps(line).startswith("%")
+
+
+def is_program_head(line: str) -> bool:
+    """Whether a line opens a program: ``O1234``, ``:1234`` or ``<NAME>``."""
+    return _PROGRAM_HEAD.match(bare(line)) is not None
+
+
+def after_mark(line: str) -> str:
+    """What stands behind the % of a mark line: a name, or the program number."""
+    return line.partition("%")[2]
+
+
+class _Sorting:
+    def __init__(self, lines: list[str], marks: list[int]) -> None:
+        self.lines = lines
+        self.bounds = [*marks, len(lines)]
+        self.data: list[int] = []
+        self.titles: list[int] = []
+        self.notes: list[TextNote] = []
+
+    def sort(self) -> Sections:
+        inside = opened = self._before_first(range(self.bounds[0]))
+        for mark, following in pairwise(self.bounds):
+            part = range(mark + 1, following)
+            if not inside and (not opened or self._begins_program(mark, part)):
+                inside = self._open(mark, part)  # two marks with nothing between them open once
+                opened = opened or inside
+            else:
+                inside = False
+                self._note_outside(part)
+        return Sections(self.data, frozenset(self.titles), tuple(self.notes))
+
+    def _before_first(self, part: range) -> bool:
+        """Whether a program stands before the first %, which then ends it; else it is leader text."""
+        code = [bare(self.lines[index]) for index in self._filled(part)]
+        is_program = any(_PROGRAM_HEAD.match(text) or _PROGRAM_END.search(text) for text in code)
+        if is_program or (code and not any(self._filled(range(self.bounds[0] + 1, len(self.lines)), marks=False))):
+            self.data.extend(part)
+            return True
+        if any(_LOOKS_LIKE_CODE.search(text) for text in code):
+            self._note(part[0], "text before the first % was skipped as a leader, though it looks like code")
+        return False
+
+    def _open(self, mark: int, part: range) -> bool:
+        if is_program_head(after_mark(self.lines[mark])):
+            self.data.append(mark)
+        self.data.extend(part)
+        filled = list(self._filled(part))
+        if len(filled) > 1 and is_program_head(self.lines[filled[1]]):
+            self.titles.append(filled[0])
+        return bool(filled)
+
+    def _begins_program(self, mark: int, part: range) -> bool:
+        first = [self.lines[index] for index in self._filled(part)][:1]
+        return any(is_program_head(line) for line in [after_mark(self.lines[mark]), *first])
+
+    def _note_outside(self, part: range) -> None:
+        first = next(iter(self._filled(part)), None)
+        if first is not None:
+            self._note(first, "text behind the % that ends the program; controls do not read it, it was not audited")
+
+    def _filled(self, part: range, marks: bool = True) -> Iterator[int]:
+        """The lines of a part that hold more than blanks and comments."""
+        for index in part:
+            text = bare(self.lines[index])
+            if text and (marks or not text.startswith("%")):
+                yield index
+
+    def _note(self, index: int, message: str) -> None:
+        self.notes.append(TextNote("after-end", index + 1, message))
