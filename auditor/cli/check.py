@@ -156,5 +156,5 @@ def _write(answers: Sequence[Answer], several: bool, choices: Choices) -> None:
     for answer in answers:
         if not (on_screen and sys.stdout.isatty()):  # a terminal shows the reasons in the report already
             _talk.complain(answer.faults)
-        if not (on_screen or choices.quiet):
+        if not (on_screen or choices.quiet or answer.faults):
             _talk.say(answer.in_words())

@@ -44,7 +44,7 @@ _FIGURES = {
 def render(outcome: Outcome, view: View) -> str:
     """One program's object."""
     body = _unreadable(outcome) if isinstance(outcome, Unreadable) else _audit(outcome, view)
-    return json.dumps(body, indent=1, allow_nan=False)
+    return "{\n" + ",\n".join(f" {json.dumps(key)}: {_laid_out(value)}" for key, value in body.items()) + "\n}"
 
 
 def join(parts: Sequence[str], several: bool) -> str:
@@ -52,6 +52,13 @@ def join(parts: Sequence[str], several: bool) -> str:
     if not several and len(parts) == 1:
         return parts[0] + "\n"
     return f'{{"report": "{_SET}", "audits": [' + ",\n".join(parts) + "]}\n"
+
+
+def _laid_out(value: Value) -> str:
+    """A list of objects takes a line an object, so that a difference between two reports can be read."""
+    if isinstance(value, list) and value:
+        return "[\n  " + ",\n  ".join(json.dumps(item, allow_nan=False) for item in value) + "\n ]"
+    return json.dumps(value, allow_nan=False)
 
 
 def _unreadable(outcome: Unreadable) -> Object:

@@ -76,10 +76,7 @@ def _heading(paper: Paper, audit: Audit) -> None:
         checked = f"{missing} of {coverage.motion_blocks} motion blocks NOT checked"
     else:
         checked = f"all {coverage.motion_blocks} motion blocks checked"
-    paper.paragraph(
-        f"{checked}; cutting {duration(totals.cutting_time)} of {duration(totals.time)}, "
-        f"{totals.removed / 1000.0:.1f} cm3 of chips", margin=2,
-    )
+    paper.paragraph(f"{checked}; cutting {duration(totals.cutting_time)} of {duration(totals.time)}", margin=2)
 
 
 def _unreadable(paper: Paper, outcome: Unreadable) -> None:

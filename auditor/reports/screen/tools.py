@@ -70,7 +70,7 @@ def write(paper: Paper, audit: Audit) -> None:
     if not found:
         return
     paper.gap()
-    head = ("Tools and their largest", "does", "depth", "feed", "m/min", "force", "power", "time")
+    head = ("Tool: its largest", "does", "depth", "feed", "m/min", "force", "power", "time")
     _row(paper, head, style="bold")
     for use in found:
         name = use.name if use.name.startswith(f"T{use.number}") else f"T{use.number} {use.name}"
