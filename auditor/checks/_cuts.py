@@ -1,0 +1,115 @@
+"""What the geometry rules ask about a cut: which moves, which way, in what part of the stock."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from auditor.checks._judging import cutting_moves, rows_of
+from auditor.declared.model import Tool, ToolKind
+from auditor.findings import Run
+from auditor.interpret.moves import Kind, Move
+
+Floats = NDArray[np.float64]
+
+SPRING_PASS = 0.02  # mm; a cut shallower than this takes off what an earlier one left standing, no chip is meant
+SIDEWAYS: tuple[ToolKind, ...] = ("turning", "boring")
+
+
+@dataclass(frozen=True, slots=True)
+class Cut:
+    """One feed or arc move of a declared tool that takes stock off, with its rows of Loads."""
+
+    move: Move
+    tool: Tool
+    rows: slice
+
+    def largest(self, figure: Floats) -> float:
+        """The largest value along the cut; NaN when it is not known anywhere."""
+        own = figure[self.rows]
+        known = own[np.isfinite(own)]
+        return float(known.max()) if len(known) else math.nan
+
+    def row_of_largest(self, figure: Floats) -> int:
+        """The row where it is largest."""
+        highest = int(np.argmax(np.nan_to_num(figure[self.rows], nan=-np.inf)))
+        return int(self.rows.start) + highest
+
+
+def cuts(run: Run, kinds: tuple[ToolKind, ...] = SIDEWAYS) -> Iterator[Cut]:
+    """The cuts of tools of these kinds in order of execution; rapids and threads left out."""
+    loads = run.prediction.loads
+    for index in np.flatnonzero(cutting_moves(run)):
+        move = run.path.moves[int(index)]
+        tool = run.job.tools.get(move.tool) if move.tool is not None else None
+        if tool is None or tool.kind not in kinds or move.kind in (Kind.RAPID, Kind.THREAD):
+            continue
+        rows = rows_of(loads, int(index))
+        if rows.stop > rows.start:
+            yield Cut(move, tool, rows)
+
+
+def along_axis(move: Move) -> bool:
+    """Whether the move is straight and parallel to Z or X: a cylinder or a face."""
+    if move.kind is Kind.ARC or move.start is None or move.end is None:
+        return False
+    return abs(move.end.z - move.start.z) < 1e-6 or abs(move.end.r - move.start.r) < 1e-6
+
+
+def raw_radius(run: Run, z: float) -> float:
+    """Outer radius of the raw stock at a length, mm; 0 beyond its ends."""
+    outline = run.job.workpiece.outline
+    reached = [0.0]
+    for start, end in zip(outline, (*outline[1:], outline[0]), strict=True):
+        low, high = min(start.z, end.z), max(start.z, end.z)
+        if low <= z <= high:
+            share = (z - start.z) / (end.z - start.z) if high > low else 0.0
+            reached.append(max(start.r, end.r) if high == low else start.r + share * (end.r - start.r))
+    return max(reached)
+
+
+def interrupted(run: Run, cut: Cut) -> bool:
+    """Whether the work strikes the edge in this cut: keyways, cross holes, flats of hexagon and square bar."""
+    loads, work = run.prediction.loads, run.job.workpiece
+    z = loads.z[cut.rows][loads.depth[cut.rows] > 0.0]
+    if not len(z):
+        return False
+    if any(low <= z.max() and z.min() <= high for low, high in work.interrupted):
+        return True
+    flats = {"hexagon": math.cos(math.pi / 6.0), "square": math.cos(math.pi / 4.0)}.get(work.section)
+    return flats is not None and cut.largest(loads.outermost) > 0.5 * work.diameter * flats + 1e-3
+
+
+def in_skin(run: Run, cut: Cut) -> bool:
+    """Whether the cut goes through a rolled, cast or forged skin."""
+    if run.job.workpiece.skin not in ("hot rolled", "cast", "forged"):
+        return False
+    loads = run.prediction.loads
+    for row in range(cut.rows.start, cut.rows.stop):
+        raw = raw_radius(run, float(loads.z[row]))
+        if loads.depth[row] > 0.0 and raw > 0.0 and loads.outermost[row] >= raw - 0.05:
+            return True
+    return False
+
+
+def wedge_angle(tool: Tool) -> float:
+    """Normal wedge angle of the insert behind its land, deg: 90 less clearance less chip-breaker face."""
+    return 90.0 - tool.insert_clearance - tool.face_rake
+
+
+def tolerance_third(run: Run) -> float | None:
+    """A third of the diameter tolerance, mm; None when no tolerance is declared."""
+    tolerance = run.job.workpiece.diameter_tolerance
+    return None if tolerance is None else tolerance / 3.0
+
+
+def diameter_error(run: Run, cut: Cut) -> float:
+    """Diameter the work comes out larger by, mm: 2y + 2 y_t^2/d, with y the push-off and y_t the bend downwards."""
+    loads = run.prediction.loads
+    with np.errstate(divide="ignore", invalid="ignore"):
+        down = np.where(loads.r != 0.0, loads.bend_tangential**2 / np.abs(loads.r), 0.0)
+    return cut.largest(2.0 * loads.bend + down)

@@ -1,0 +1,111 @@
+"""Computed ways out: the feed or depth at which the force law itself brings a figure to its limit."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+
+import numpy as np
+from numpy.typing import NDArray
+
+from auditor.checks._judging import Excess, lasting, rows_of
+from auditor.checks._words import INCH, depth, feed, figure
+from auditor.findings import Run
+from auditor.interpret.moves import Kind, Move
+from auditor.predict.loads import Loads
+
+Floats = NDArray[np.float64]
+Figure = Callable[[Loads], Floats]
+
+FEED_STEP = 0.005  # mm/rev
+DEPTH_STEP = 0.05  # mm
+
+
+def feed_within(run: Run, move: Move, figure: Figure, limit: float) -> float | None:
+    """The largest feed, mm/rev, rounded down to 0.005, at which the lasting figure meets the limit, if any."""
+    from auditor.predict.what_if import at_feed
+
+    now = _largest(run.prediction.loads.feed, run, move)
+    if move.kind is Kind.THREAD or now is None:
+        return None
+
+    def value(steps: int) -> float:
+        loads = at_feed(run.job, run.path, run.simulation, move.index, steps * FEED_STEP)
+        return lasting(loads, figure(loads), move.index)
+
+    steps = _last_within(value, math.ceil(now / FEED_STEP - 1e-9) - 1, limit)
+    return steps * FEED_STEP if steps else None
+
+
+def depth_within(run: Run, move: Move, figure: Figure, limit: float) -> float | None:
+    """The largest depth, mm, rounded down to 0.05, at which the lasting figure meets the limit, if any."""
+    from auditor.predict.what_if import at_depth
+
+    now = _largest(run.prediction.loads.depth, run, move)
+    if now is None:
+        return None
+
+    def value(steps: int) -> float:
+        loads = at_depth(run.job, run.path, run.simulation, move.index, steps * DEPTH_STEP)
+        return lasting(loads, figure(loads), move.index)
+
+    steps = _last_within(value, math.ceil(now / DEPTH_STEP - 1e-9) - 1, limit)
+    return steps * DEPTH_STEP if steps else None
+
+
+def _largest(column: Floats, run: Run, move: Move) -> float | None:
+    own = column[rows_of(run.prediction.loads, move.index)]
+    known = own[np.isfinite(own)]
+    return float(known.max()) if len(known) and known.max() > 0.0 else None
+
+
+def _last_within(value: Callable[[int], float], most: int, limit: float) -> int:
+    """The largest whole number up to ``most`` whose value is within the limit, 0 when none is; value rises."""
+    low, high = 0, most + 1
+    while high - low > 1:
+        middle = (low + high) // 2
+        if value(middle) <= limit:
+            low = middle
+        else:
+            high = middle
+    return low
+
+
+def cure(run: Run, excess: Excess, share: Figure, *, depth_helps: bool = True) -> str | None:
+    """Feed or depth that brings ``share`` (figure over limit) to 1, and what clears the band as well."""
+    move = excess.move
+    if move.kind is Kind.THREAD:
+        return None
+    spread = max(excess.band[1] / excess.value, 1.0)
+    targets = [("Within the limit at ", 1.0)] if excess.value > excess.limit else []
+    targets.append(("clear of the prediction's uncertainty at ", 1.0 / spread))
+    parts = [text for lead, target in targets if (text := _ways(run, move, share, target, lead, depth_helps))]
+    if not parts:
+        return None
+    sentence = "; ".join(parts)
+    return f"{sentence[0].upper()}{sentence[1:]}."
+
+
+def _ways(run: Run, move: Move, share: Figure, target: float, lead: str, depth_helps: bool) -> str:
+    ways = []
+    slower = feed_within(run, move, share, target)
+    if slower is not None:
+        ways.append(feed_word(run, move, slower))
+    shallower = depth_within(run, move, share, target) if depth_helps else None
+    if shallower is not None:
+        ways.append(f"depth {length(run, shallower)}")
+    return lead + " or at ".join(ways) if ways else ""
+
+
+def feed_word(run: Run, move: Move, per_rev: float) -> str:
+    """The F word that gives this feed, in the program's own units and feed mode."""
+    scale = INCH if run.path.units == "in" else 1.0
+    if move.feed is not None and move.feed.mode == "min":
+        rpm = _largest(run.prediction.loads.rpm, run, move)
+        return f"F{per_rev * rpm / scale:.0f}" if rpm else f"{feed(per_rev)} mm a turn"
+    return f"F{math.floor(per_rev / scale * 1e4) / 1e4:.4f}" if scale != 1.0 else f"F{feed(per_rev)}"
+
+
+def length(run: Run, value: float) -> str:
+    """A length as the program's units have it."""
+    return f"{figure(value / INCH, 3)} in" if run.path.units == "in" else f"{depth(value)} mm"

@@ -1,0 +1,85 @@
+"""Rapid through the stock: does a rapid move hit something, or end too near it?
+
+What
+    Follows every rapid move with the tool's outline through what is left of the stock at that moment: in a
+    straight line, and along the bent path of two axes that each run at their own rate. Also: contact with chuck
+    and tailstock, rapids that end close to a raw surface, and pieces that come loose other than by parting.
+
+Why
+    Nothing stops a rapid. It hits at full speed; the insert is the least of what breaks. Raw stock varies in
+    size, so a rapid that ends a hair off the drawing size may end inside the bar. A ring that comes loose flies.
+
+Formula and source
+    Geometry of the half-section, exact. Stop: contact in the straight path; contact in the bent path (review
+    when the machine's rapid rates are not declared, since they shape it); contact with chuck or tailstock.
+    Review: a rapid that ends nearer than rapid_clearance to a raw surface; a loose piece. Common practice.
+
+Remedy
+    Move one axis after the other, or start the rapid further out; feed the last millimetre to a raw surface.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from auditor.checks._judging import origin, threshold
+from auditor.checks._remedy import length
+from auditor.checks._words import figure, x_word, z_word
+from auditor.declared.model import Point
+from auditor.findings import Finding, Level, Limit, NotJudged, Run
+from auditor.interpret.moves import Kind
+from auditor.simulate.samples import Contact, LoosePiece
+
+CHECK = "rapid-in-stock"
+LIMITS = (Limit("rapid_clearance", 1.0, "mm", "common practice", "least distance of a rapid's end from a raw surface"),)
+SMALLEST_PIECE = 5.0  # mm3; what is smaller is swarf
+CUTS_OFF = ("parting", "grooving", "face grooving")
+
+
+def judge(run: Run) -> Iterator[Finding | NotJudged]:
+    """Rapids that touch, rapids that end too near, and pieces that come loose."""
+    for contact in run.simulation.contacts:
+        if run.path.moves[contact.move].kind is Kind.RAPID:
+            yield from _judge_contact(run, contact)
+    for piece in run.simulation.loose:
+        yield from _judge_piece(run, piece)
+
+
+def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
+    move = run.path.moves[contact.move]
+    at = Point(contact.z, contact.r)
+    place = f"at {x_word(run, contact.r)} {z_word(run, contact.z)}"
+    deep = length(run, contact.depth)
+    match contact.kind:
+        case "rapid":
+            level, message = Level.STOP, f"The tool hits the stock at rapid {place}, {deep} deep. " \
+                "What it would have broken out is counted as cut from here on."
+        case "dogleg":
+            assumed = any(item.about.startswith("machine.rapid") for item in run.job.assumptions)
+            level = Level.REVIEW if assumed else Level.STOP
+            message = "The two axes do not run in a straight line: each runs at its own rapid rate, and the bent " \
+                f"path goes through the stock {place}, {deep} deep." + (" The rates are assumed." if assumed else "")
+        case "near":
+            if contact.depth >= threshold(run, LIMITS[0]):
+                return
+            level, message = Level.REVIEW, f"The rapid ends {figure(contact.depth, 2)} mm from raw stock {place}; " \
+                f"raw sizes vary. {origin(run, LIMITS)}"
+        case _:
+            level, message = Level.STOP, f"The tool hits the {_body(contact)} at rapid {place}."
+    remedy = "Feed the last millimetre." if contact.kind == "near" else \
+        "Move one axis after the other, or start the rapid further out."
+    yield run.finding(CHECK, level, move, message, at=at, value=contact.depth, unit="mm", remedy=remedy)
+
+
+def _body(contact: Contact) -> str:
+    return "chuck" if contact.kind == "jaw" else "tailstock"
+
+
+def _judge_piece(run: Run, piece: LoosePiece) -> Iterator[Finding]:
+    move = run.path.moves[piece.move]
+    tool = run.job.tools.get(move.tool) if move.tool is not None else None
+    if piece.volume < SMALLEST_PIECE or (tool is not None and tool.kind in CUTS_OFF):
+        return
+    message = f"A piece of {figure(piece.volume / 1000.0, 2)} cm3 between {z_word(run, piece.z[0])} and " \
+              f"{z_word(run, piece.z[1])} comes loose here and flies; no parting tool is at work."
+    yield run.finding(CHECK, Level.REVIEW, move, message, remedy="Take that stock off in chips before this move.")

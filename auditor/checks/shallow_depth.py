@@ -1,0 +1,71 @@
+"""Shallow depth: does the tool push the work aside more than it cuts?
+
+What
+    Marks cuts less deep than the nose radius, with the predicted force across the feed (passive force) beside the
+    one along it.
+
+Why
+    A shallow cut runs on the nose alone. The edge then stands nearly along the feed, and most of the thrust pushes
+    the work away instead of along: slender parts and thin walls come out thick in the middle. In work-hardening
+    material a shallow cut runs in the skin that the last pass hardened.
+
+Formula and source
+    The thrust stands at right angles to the chord of the engaged edge (Colwell 1954), so passive over feed force
+    rises as depth falls below the nose radius. A note for one block a tool and run of cuts; a review where the
+    predicted bending makes the diameter more than a third of the tolerance larger on a surface that stays, or
+    where the depth is under hardened_layer in work-hardening material (common practice).
+
+Remedy
+    A smaller nose radius, one cut instead of two, or a freer-cutting edge; in work-hardening material a deeper cut.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_error, tolerance_third
+from auditor.checks._judging import origin, threshold
+from auditor.checks._words import depth, figure, finding_at, force, micro
+from auditor.findings import Finding, Level, Limit, NotJudged, Run
+
+CHECK = "shallow-depth"
+LIMITS = (Limit("hardened_layer", 0.1, "mm", "common practice", "least depth in work-hardening material"),)
+
+
+def judge(run: Run) -> Iterator[Finding | NotJudged]:
+    """Reviews for every such block; notes for the shallowest block of each tool."""
+    notes: dict[int, tuple[float, Finding]] = {}
+    for cut in cuts(run):
+        deep = cut.largest(run.prediction.loads.depth)
+        if cut.tool.shape == "R" or not SPRING_PASS < deep < cut.tool.nose_radius:
+            continue
+        finding = _judge_cut(run, cut, deep)
+        if finding.level is Level.REVIEW:
+            yield finding
+        elif cut.tool.number not in notes or deep < notes[cut.tool.number][0]:
+            notes[cut.tool.number] = (deep, finding)
+    for _, finding in notes.values():
+        yield finding
+
+
+def _judge_cut(run: Run, cut: Cut, deep: float) -> Finding:
+    loads = run.prediction.loads
+    row = cut.row_of_largest(loads.depth)
+    passive, along = float(loads.passive[row]), float(loads.feed_force[row])
+    message = f"Depth {depth(deep)} is less than the nose radius {figure(cut.tool.nose_radius, 2)}: "
+    if passive > along:
+        message += f"the tool pushes the work aside with {force(passive)} (passive force) against {force(along)} " \
+                   "along the feed."
+    else:
+        message += "the cut runs on the nose."
+    third, error = tolerance_third(run), diameter_error(run, cut)
+    skin = threshold(run, LIMITS[0])
+    if run.job.workpiece.material.work_hardening and deep < skin:
+        return finding_at(run, CHECK, Level.REVIEW, row, f"{message} It runs in the skin the last pass hardened. "
+                          f"{origin(run, LIMITS)}", value=deep, limit=skin, unit="mm",
+                          remedy=f"At least {depth(skin)} mm deep.")
+    if third is not None and run.simulation.final_surface[cut.move.index] and error > third:
+        return finding_at(run, CHECK, Level.REVIEW, row, f"{message} That bends the work so that the diameter comes "
+                          f"out {micro(error)} too large, more than a third of the tolerance.", value=error,
+                          limit=third, unit="mm", remedy="A smaller nose radius or a freer-cutting edge.")
+    return finding_at(run, CHECK, Level.NOTE, row, message, value=deep, limit=cut.tool.nose_radius, unit="mm")

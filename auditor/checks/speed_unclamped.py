@@ -1,0 +1,108 @@
+"""Constant surface speed without a limit: how fast will the work turn near the centre?
+
+What
+    Looks at every stretch under constant surface speed (G96) that has no programmed speed limit, or one above the
+    machine's or the chuck's, and at a change between G96 and G97 without a new S.
+
+Why
+    Under G96 the speed rises as the tool goes inwards, without bound at the centre. Without a limit the spindle
+    runs up to its maximum, whatever the chuck, the bar or the grip can bear. A speed word read in the wrong mode
+    turns metres a minute into revolutions.
+
+Formula and source
+    Speed asked for = 1000 x surface speed / (pi x diameter). Common practice: a limit (G50 S or G92 S) stands
+    before the first G96 and is not above what chuck and machine are good for. Stop: the path leads to a diameter
+    at which the spindle reaches the machine's or the chuck's limit. Review: it has no limit but does not get
+    there, or the limit is above the machine's or the chuck's.
+
+Remedy
+    A block G50 S (G92 S in systems B and C) with the lowest of the machine's and the chuck's limit before G96.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator
+
+from auditor.checks._remarks import finding_of, remarks_of
+from auditor.checks._words import x_word
+from auditor.findings import Finding, Level, NotJudged, Run
+from auditor.interpret.moves import Move, Remark
+
+CHECK = "speed-unclamped"
+LIMITS = ()
+
+
+def judge(run: Run) -> Iterator[Finding | NotJudged]:
+    """Unlimited surface speed, limits that limit nothing, and S read in the wrong mode."""
+    for remark in remarks_of(run, CHECK):
+        if remark.topic != "clamp-missing":
+            yield finding_of(CHECK, Level.REVIEW, remark)
+    told = [remark for remark in remarks_of(run, CHECK) if remark.topic == "clamp-missing"]
+    for start, moves in _unlimited_stretches(run):
+        fastest = max(moves, key=lambda move: _asked(move) or 0.0)
+        said = next((remark for remark in told if remark.line <= start.line), None)
+        yield _unlimited(run, start, fastest, said)
+    yield from _too_high(run)
+
+
+def _unlimited_stretches(run: Run) -> Iterator[tuple[Move, list[Move]]]:
+    """Runs of consecutive moves under G96 without a limit, with the move that opens each."""
+    stretch: list[Move] = []
+    for move in run.path.moves:
+        if move.spindle.mode == "surface" and move.spindle.clamp is None and move.spindle.direction:
+            stretch.append(move)
+        elif stretch:
+            yield stretch[0], stretch
+            stretch = []
+    if stretch:
+        yield stretch[0], stretch
+
+
+def _asked(move: Move) -> float | None:
+    """The speed, rpm, that surface speed asks for at the smallest radius of the move."""
+    radii = [abs(r) for r in (move.start_r, move.end_r) if r is not None and move.kind != "rapid"]
+    if move.kind == "rapid" and move.end_r is not None:
+        radii = [abs(move.end_r)]
+    if move.start_r is not None and move.end_r is not None and move.start_r * move.end_r < 0:
+        radii.append(0.0)
+    if not radii or move.spindle.value is None:
+        return None
+    return 1000.0 * move.spindle.value / (2.0 * math.pi * max(min(radii), 1e-6))
+
+
+def _unlimited(run: Run, start: Move, fastest: Move, remark: Remark | None) -> Finding:
+    limit = _lowest(run)
+    asked = _asked(fastest) or 0.0
+    reached = min(asked, run.job.machine.speed_limit)
+    level = Level.STOP if asked >= limit else Level.REVIEW
+    place = x_word(run, fastest.end_r) if fastest.end_r is not None else "its smallest diameter"
+    message = f"Constant surface speed runs without a speed limit: at {place} the spindle turns {reached:.0f} rpm " \
+              f"({'all the machine has' if asked > run.job.machine.speed_limit else 'as surface speed asks'}); " \
+              f"{limit:.0f} rpm is the least of the machine's and the chuck's limits as declared."
+    line, block = (remark.line, remark.block) if remark else (start.line, start.block)
+    return Finding(
+        CHECK, level, line, block, fastest.tool, message, at=fastest.end, value=reached, limit=limit, unit="rpm",
+        words=("S",), move=start.index,
+        remedy=f"A block G50 S{math.floor(limit):d} before it (G92 in systems B and C).",
+    )
+
+
+def _too_high(run: Run) -> Iterator[Finding]:
+    limit = _lowest(run)
+    said: set[float] = set()
+    for move in run.path.moves:
+        clamp = move.spindle.clamp
+        if move.spindle.mode != "surface" or clamp is None or clamp <= limit or clamp in said:
+            continue
+        said.add(clamp)
+        message = f"The programmed limit of {clamp:.0f} rpm holds nothing back: machine and chuck as declared bear " \
+                  f"{limit:.0f} rpm."
+        yield run.finding(CHECK, Level.REVIEW, move, message, value=clamp, limit=limit, unit="rpm",
+                          remedy=f"S{math.floor(limit):d} in the G50 or G92 block.")
+
+
+def _lowest(run: Run) -> float:
+    chuck = run.job.workholding.speed_limit
+    machine = run.job.machine.speed_limit
+    return machine if chuck is None else min(machine, chuck)
