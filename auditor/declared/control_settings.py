@@ -91,6 +91,8 @@ _ROUGHING = (
     _choice("rough_levels_from", ("shifted start", "start"), "the point from which roughing depths are counted"),
     _choice("rough_last_layer", ("profile pass", "own pass"), "who takes the last layer of a roughing cycle"),
     _choice("rough_escape", ("rapid", "feed"), "the 45 degree retract after each roughing cut"),
+    _choice("pocket_order", ("depth first", "level by level"), "the order of the pockets in roughing of type II"),
+    _choice("pocket_wall", ("follow", "leave"), "whether type II roughing goes up the wall behind each cut"),
     _switch("rough_compensation", False, "whether G41/G42 acts in the roughing cycles"),
     _choice("pattern_first_pass", ("full shift", "one step in"), "where pattern repeating begins"),
     _choice("taper_letter", ("R", "I or K"), "the taper word of the single cycles"),

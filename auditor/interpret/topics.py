@@ -23,9 +23,9 @@ TOPICS: dict[str, frozenset[str]] = {
         "compensation-blank-blocks", "compensation-tip", "compensation-missing", "compensation-change",
     }),
     "cycle-faults": frozenset({
-        "cycle-profile-missing", "cycle-profile-bad", "cycle-profile-far", "cycle-not-monotonic", "cycle-allowance-sign",
-        "cycle-stored-value", "cycle-depth", "cycle-start", "cycle-corner", "cycle-peck", "cycle-relief",
-        "cycle-word-with-point", "cycle-shift-with-pocket",
+        "cycle-profile-missing", "cycle-profile-bad", "cycle-profile-far", "cycle-not-monotonic",
+        "cycle-allowance-sign", "cycle-stored-value", "cycle-depth", "cycle-start", "cycle-corner", "cycle-peck",
+        "cycle-relief", "cycle-word-with-point", "cycle-shift-with-pocket", "cycle-groove-step",
     }),
     "program-flow": frozenset({
         "end-missing", "subprogram-missing", "target-missing", "endless", "repeats-main", "number-repeated",
