@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 from itertools import pairwise
 from typing import Literal
@@ -15,6 +15,7 @@ Semicolon = Literal["comment", "eob"]
 Topic = Literal["paren", "blank-in-number", "semicolon"]
 Remark = tuple[Topic, str]
 
+_GAPS = frozenset(f" \t\v\f{IGNORED}")
 _GAP = re.compile(f"[ \t\v\f{IGNORED}]+")
 _MARK = re.compile(r"[();]")
 _PARENTHESIS = re.compile(r"[()]")
@@ -43,7 +44,7 @@ class CleanCode:
 
     def behind(self, position: int) -> CleanCode:
         """The code from a position on."""
-        return replace(self, text=self.text[position:], columns=self.columns[position:])
+        return replace(self, text=self.text[position:], columns=self.columns[position:]) if position else self
 
     def without(self, start: int, end: int) -> CleanCode:
         """The code with a piece cut out of it."""
@@ -140,7 +141,7 @@ def _close_up(code: str, start: int, end: int, scan: _Scan | None = None) -> Cle
     remarks: tuple[Remark, ...] = ()
     if _GAP.search(text) is not None:
         remarks = _split_number(text)
-        columns = tuple(_outside_gaps(text, start))
+        columns = [column for column, character in enumerate(text, start) if character not in _GAPS]
         text = without_gaps(text)
     if text.isascii():  # elsewhere upper case may change the length; such a block is at fault anyway
         text = text.upper()
@@ -162,11 +163,3 @@ def _split_number(text: str) -> tuple[Remark, ...]:
         end += 1
     written = text[max(start - 1, 0) : end].strip()
     return (("blank-in-number", f"'{written}' holds a blank inside a number; it was read as {without_gaps(written)}"),)
-
-
-def _outside_gaps(text: str, start: int) -> Iterator[int]:
-    position = 0
-    for gap in _GAP.finditer(text):
-        yield from range(start + position, start + gap.start())
-        position = gap.end()
-    yield from range(start + position, start + len(text))

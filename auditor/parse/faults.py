@@ -35,7 +35,9 @@ def fault_before_reading(code: CleanCode, line: str) -> SyntaxFault | None:
             code.end(len(text)),
             f"blocks of up to {LONGEST_BLOCK} are read; is a line end missing?",
         )
-    return _long_number(code) or _deep_bracket(code) or _letter_l(code, line)
+    if "[" in text and (fault := _deep_bracket(code)):
+        return fault
+    return _long_number(code) or _letter_l(code, line)
 
 
 def fault_at(code: CleanCode, position: int) -> SyntaxFault:

@@ -6,16 +6,16 @@ import hashlib
 import re
 from bisect import bisect_right
 from collections.abc import Iterator
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from os import PathLike, fspath
 from pathlib import Path
 
 from auditor.errors import Fault, ProgramError
 from auditor.parse import faults
-from auditor.parse.blocks import Block, Comment, Opaque, ProgramText, Statement, SyntaxFault, TextNote, Word
-from auditor.parse.clean import CleanCode, Remark, Semicolon, clean
+from auditor.parse.blocks import Block, Opaque, ProgramText, Statement, SyntaxFault, TextNote, Word
+from auditor.parse.clean import CleanCode, Semicolon, clean
 from auditor.parse.decode import decode, split_lines
-from auditor.parse.grammar import ComputedWord, UnreadableError, begins_statement, read_statement, read_words, split_word
+from auditor.parse.grammar import UnreadableError, begins_statement, read_statement, read_words
 from auditor.parse.sections import is_mark, sections
 
 _HEAD = re.compile(
@@ -106,92 +106,109 @@ class _Reader:
             number = None
 
     def _block(self, reading: _Reading, line: int, text: str, number: int | None) -> Block:
-        for topic, message in reading.remarks:
+        code, head, content = reading.code, reading.head, reading.content
+        for topic, message in code.remarks:
             self.notes.append(TextNote(topic, line, message))
-        if reading.unclosed is not None:
+        if code.unclosed is not None:
             later = bisect_right(self.closings, line)
             closing = self.closings[later] if later < len(self.closings) else None
-            fault = faults.unclosed_comment(reading.unclosed, line, closing)
-            reading = replace(reading, words=(), statement=None, called=None, fault=fault)
+            content = _Content(fault=faults.unclosed_comment(code.unclosed, line, closing))
         return Block(
             line,
             text,
-            reading.words,
-            reading.statement,
-            reading.number if number is None else number,
-            reading.program,
-            reading.skip,
-            reading.comments,
-            reading.fault,
-            reading.called,
+            content.words,
+            content.statement,
+            head.number if number is None else number,
+            head.program,
+            head.skip,
+            code.comments,
+            content.fault,
+            content.called,
         )
+
+
+@dataclass(frozen=True, slots=True)
+class _Head:
+    """What stands in front of the words: ``/n O N /n``, and the length of it."""
+
+    length: int = 0
+    skip: int | None = None
+    program: int | str | None = None
+    number: int | None = None
+
+
+@dataclass(frozen=True, slots=True)
+class _Content:
+    """What the rest of the block says."""
+
+    words: tuple[Word, ...] = ()
+    statement: Statement | None = None
+    called: str | None = None
+    fault: SyntaxFault | None = None
 
 
 @dataclass(frozen=True, slots=True)
 class _Reading:
     """What a piece of a line reads as, on whichever line it stands."""
 
-    comments: tuple[Comment, ...]
-    remarks: tuple[Remark, ...]
-    unclosed: Comment | None
-    is_empty: bool
-    number: int | None = None
-    program: int | str | None = None
-    skip: int | None = None
-    called: str | None = None
-    words: tuple[Word, ...] = ()
-    statement: Statement | None = None
-    fault: SyntaxFault | None = None
+    code: CleanCode
+    head: _Head
+    content: _Content
+
+    @property
+    def is_empty(self) -> bool:
+        """Blank lines are no blocks; a lone comment or block number is one."""
+        return not (self.code.text or self.code.comments)
+
+
+_NO_HEAD, _NO_CONTENT = _Head(), _Content()
 
 
 def _read(code: CleanCode, line: str) -> _Reading:
-    reading = _Reading(code.comments, code.remarks, code.unclosed, not (code.text or code.comments))
-    text = code.text
-    head = _HEAD.match(text)
-    if not text or head is None:
-        return reading
-    position = head.end()
-    skip = head["skip"]
-    if skip is None and head["number"] and (behind := _SKIP.match(text, position)):
-        skip, position = behind["skip"], behind.end()
-    program = head["name"] if head["program"] is None else int(head["program"])
-    reading = replace(
-        reading,
-        skip=None if skip is None else int(skip or 1),
-        program=program,
-        number=None if head["number"] is None else int(head["number"]),
+    head = _read_head(code.text)
+    if head.length == len(code.text):
+        return _Reading(code, head, _NO_CONTENT)
+    return _Reading(code, head, _read_content(code.behind(head.length), line))
+
+
+def _read_head(text: str) -> _Head:
+    found = _HEAD.match(text)
+    if found is None or not found[0]:
+        return _NO_HEAD
+    length, skip = found.end(), found["skip"]
+    if skip is None and found["number"] and (behind := _SKIP.match(text, length)):
+        length, skip = behind.end(), behind["skip"]
+    return _Head(
+        length,
+        None if skip is None else int(skip or 1),
+        found["name"] if found["program"] is None else int(found["program"]),
+        None if found["number"] is None else int(found["number"]),
     )
-    return _read_rest(reading, code.behind(position), line)
 
 
-def _read_rest(reading: _Reading, code: CleanCode, line: str) -> _Reading:
+def _read_content(code: CleanCode, line: str) -> _Content:
     if _DATA_OUTPUT.match(code.text):
-        return replace(reading, statement=Opaque(line[code.start(0) : code.end(len(code.text))]))
+        return _Content(statement=Opaque(line[code.start(0) : code.end(len(code.text))]))
     fault = faults.fault_before_reading(code, line)
     if fault is not None:
-        return replace(reading, fault=fault)
-    call = _NAMED_CALL.match(code.text)
-    if call is not None:
-        reading = replace(reading, called=call["name"])
+        return _Content(fault=fault)
+    called = None
+    if "<" in code.text and (call := _NAMED_CALL.match(code.text)):
+        called = call["name"]
         code = code.without(call.start("name") - 1, call.end("name") + 1)
     try:
         if begins_statement(code.text):
-            return replace(reading, statement=read_statement(code.text))
-        return replace(reading, words=_words(code))
+            return _Content(statement=read_statement(code.text))
+        return _Content(_words(code), called=called)
     except UnreadableError as stopped:
-        return replace(reading, fault=faults.fault_at(code, stopped.position))
+        return _Content(fault=faults.fault_at(code, stopped.position))
 
 
 def _words(code: CleanCode) -> tuple[Word, ...]:
     """Back to front, because a word ends where the next begins."""
     words = []
-    end = len(code.text)
-    for item in reversed(read_words(code.text) if code.text else ()):
-        if isinstance(item, ComputedWord):
-            start, letter, value = item.start, item.letter, item.value
-        else:
-            start = item.start_pos or 0
-            letter, value = split_word(item)
-        words.append(Word(letter, value, code.columns[start], code.columns[end - 1] + 1))
+    columns, end = code.columns, len(code.text)
+    for letter, value, start in reversed(read_words(code.text)):
+        words.append(Word(letter, value, columns[start], columns[end - 1] + 1))
         end = start
     return tuple(reversed(words))
