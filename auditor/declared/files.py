@@ -1,0 +1,76 @@
+"""Job file and shop file as a whole, and their JSON Schema for editors."""
+
+from __future__ import annotations
+
+from typing import Annotated, Any
+
+from pydantic import Field
+from pydantic.json_schema import JsonSchemaValue
+
+from auditor.declared import tables, units
+from auditor.declared.fields import Table, Text
+from auditor.declared.tool_tables import ToolTable
+
+_DIALECT = "https://json-schema.org/draft/2020-12/schema"
+_NAME = {"type": "string", "description": "the name of an entry in the nearest shop.toml"}
+
+
+class JobHead(Table):
+    """The keys of a job file; tables are read one by one, so that every fault is found."""
+
+    program: Text | None = None
+    batch: Annotated[int, Field(ge=1)] | None = None
+    unattended: bool | None = None
+    control: Any = None
+    machine: Any = None
+    workholding: Any = None
+    workpiece: Any = None
+    tools: Any = None
+    limits: Any = None
+    model: Any = None
+    accepted: Any = None
+
+
+class _JobFile(JobHead):
+    """PART.job.toml"""
+
+    control: tables.ControlTable | None = None
+    machine: tables.MachineTable
+    workholding: tables.WorkholdingTable
+    workpiece: tables.WorkpieceTable
+    tools: dict[str, ToolTable] = Field(default_factory=dict)
+    limits: dict[str, float | str] = Field(default_factory=dict)
+    model: tables.ModelTable | None = None
+    accepted: list[tables.AcceptedTable] = Field(default_factory=list)
+
+
+class _ShopFile(Table):
+    """shop.toml"""
+
+    machines: dict[str, tables.MachineTable] = Field(default_factory=dict)
+    workholdings: dict[str, tables.WorkholdingTable] = Field(default_factory=dict)
+    materials: dict[str, tables.MaterialTable] = Field(default_factory=dict)
+    tools: dict[str, ToolTable] = Field(default_factory=dict)
+    controls: dict[str, tables.ControlTable] = Field(default_factory=dict)
+
+
+def job_schema() -> JsonSchemaValue:
+    """The JSON Schema of a job file: a name of a shop entry may stand where a table may."""
+    schema = _JobFile.model_json_schema()
+    properties = schema["properties"]
+    for key in ("control", "machine", "workholding"):
+        properties[key] = {"anyOf": [_NAME, properties[key]]}
+    properties["tools"]["additionalProperties"] = {"anyOf": [_NAME, properties["tools"]["additionalProperties"]]}
+    properties["tools"]["propertyNames"] = {"pattern": "^[1-9][0-9]{0,3}$"}
+    quantity = {"type": "string", "pattern": units.PATTERN}
+    properties["limits"]["additionalProperties"] = {"anyOf": [{"type": "number", "minimum": 0}, quantity]}
+    workpiece = schema["$defs"]["WorkpieceTable"]
+    named = {"type": "string", "description": "the name of a material in shop.toml or in the catalogue"}
+    workpiece["properties"]["material"] = {"anyOf": [named, {"$ref": "#/$defs/MaterialTable"}]}
+    workpiece["required"] = sorted({*workpiece["required"], "material"})
+    return {"$schema": _DIALECT, **schema, "title": "turnaudit job file"}
+
+
+def shop_schema() -> JsonSchemaValue:
+    """The JSON Schema of a shop file."""
+    return {"$schema": _DIALECT, **_ShopFile.model_json_schema(), "title": "turnaudit shop file"}
