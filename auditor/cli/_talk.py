@@ -8,11 +8,14 @@ import sys
 from collections.abc import Callable, Iterable, Iterator
 from contextlib import contextmanager
 from pathlib import Path
+from typing import TYPE_CHECKING
 
 import click
 
 from auditor.errors import Fault
-from auditor.reports import View
+
+if TYPE_CHECKING:
+    from auditor.reports import View
 
 _WIDEST, _NARROWEST = 80, 60
 
@@ -25,6 +28,15 @@ def say(text: str) -> None:
     click.echo(safe if _holds(sys.stderr.encoding, safe) else plain(safe), err=True)
 
 
+def tell(text: str) -> None:
+    """An answer on standard output, in ASCII where its encoding holds no more."""
+    if not _holds(sys.stdout.encoding, text):
+        from auditor.reports._figures import plain
+
+        text = "\n".join(map(plain, text.split("\n")))
+    click.echo(text)
+
+
 def complain(faults: Iterable[Fault]) -> None:
     """Why something could not be done, one line a reason."""
     for fault in faults:
@@ -33,6 +45,8 @@ def complain(faults: Iterable[Fault]) -> None:
 
 def view_of(output: Path | None, brief: bool, series: bool) -> View:
     """How a report is to be written for its target: a file holds every sign, a terminal what it says it holds."""
+    from auditor.reports import View
+
     if output is not None:
         return View(brief=brief, series=series)
     from auditor.reports.screen import signs

@@ -7,6 +7,8 @@ from typing import TYPE_CHECKING
 
 import click
 
+from auditor.cli._talk import tell
+
 if TYPE_CHECKING:
     from auditor.findings import Limit, Rule
 
@@ -22,12 +24,12 @@ def command(check: str | None) -> None:
 
     known = rules()
     if check is None:
-        _echo(_listed(known))
+        tell(_listed(known))
         return
     name = check.replace("_", "-").lower()
     if name not in known:
         raise click.BadParameter(_unknown(check, name, known), param_hint="CHECK")
-    _echo(_explained(known[name]))
+    tell(_explained(known[name]))
 
 
 def _listed(known: Mapping[str, Rule]) -> str:
@@ -55,16 +57,3 @@ def _explained(rule: Rule) -> str:
 def _threshold(limit: Limit) -> str:
     default = f"{limit.default:g} {limit.unit}".rstrip()
     return f"  {limit.name} = {default}  ({limit.provenance}): {limit.meaning}"
-
-
-def _echo(text: str) -> None:
-    """The text on standard output, in ASCII where the encoding holds no more."""
-    import sys
-
-    from auditor.reports._figures import plain
-
-    try:
-        text.encode(sys.stdout.encoding or "ascii")
-    except (UnicodeError, LookupError):
-        text = "\n".join(plain(line) for line in text.split("\n"))
-    click.echo(text)
