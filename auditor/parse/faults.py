@@ -7,6 +7,7 @@ import unicodedata
 
 from auditor.parse.blocks import Comment, SyntaxFault
 from auditor.parse.clean import CleanCode
+from auditor.parse.grammar import begins_statement
 
 LONGEST_BLOCK = 500  # characters of code; the longest block a control takes is about half of it
 LONGEST_LINE = 10_000
@@ -18,9 +19,63 @@ _WIDE_BLANKS = "\u00a0\u2000\u2001\u2002\u2003\u2004\u2005\u2006\u2007\u2008\u20
 _LONG_NUMBER = re.compile(r"[0-9.]{9,}")
 _NOT_ASCII = re.compile(r"[^\x00-\x7f]")
 _BRACKET = re.compile(r"[\[\]]")
-_VALUE = re.compile(r"[+\-.,0-9]*")
+_OF_A_NUMBER = "+-.,0123456789"
+_NO_VALUE = re.compile(r"(?P<address>,?[A-Z])[+-]?\.?$")
 _ONE_AS_LETTER = re.compile(r"[0-9A-Z.+-]l")
-_FRONT = {"O": "the program number", "N": "the block number", "/": "a block skip"}
+
+_FRONT = {"O": "the program number", "N": "the block number"}
+_FRONT_WORD = re.compile(r"[ON][0-9]+(?![0-9.])")
+_LETTER_FOR_DIGIT = {
+    "O": "letter O typed for the digit 0?",
+    "L": "letter l typed for the digit 1?",
+    "I": "letter I typed for the digit 1?",
+}
+
+# Faults of a number, the likeliest reading first: what is found in it, what to say, what was meant.
+_NUMBER_FAULTS = (
+    (re.compile("[0-9],[0-9]"), "has a comma inside its number", "decimal comma? a decimal point is wanted"),
+    (re.compile(","), "cannot be read", "behind a comma only C (chamfer), R (rounding) or A (angle) can stand"),
+    (re.compile("[+-][+-]"), "has two signs", "one of them is too many"),
+    (re.compile("[0-9.][+-]"), "has a sign behind its number", "sums stand in brackets [ ]"),
+    (re.compile(r"\..*\."), "has two decimal points", None),
+    (re.compile(r"^[+-]?\.?$"), "has no digit", None),
+)
+
+_FUNCTION = r"(?<![A-Z])[A-Z]{2,5}(?<!EQ|NE|GT|GE|LT|LE|OR)(?<!AND|MOD|XOR)$"
+
+# What is wanted inside statements and expressions, by what stands before.
+_WANTED = tuple(
+    (re.compile(before), wanted)
+    for before, wanted in (
+        (r"(?:IF|WHILE)$", "a condition in brackets [ ] is wanted here"),
+        (r"^IF\[.*\]$", "GOTO or THEN is wanted behind the condition"),
+        (r"^WHILE\[.*\]$", "DO1, DO2 or DO3 is wanted behind the condition"),
+        (r"(?:DO|END)$", "loops are numbered 1, 2 or 3"),
+        (r"GOTO$", "GOTO wants a block number, #i or an expression in brackets [ ]"),
+        (r"THEN$", "only an assignment #i = value is read behind THEN"),
+        (r"#$", "# wants the number of a variable"),
+        (r"(?:^|THEN)#[^=]*$", "an assignment is wanted: #i = value"),
+        (_FUNCTION, "a function wants its value in brackets [ ]"),
+        (r"(?:[-+*/=\[,]|[A-Z])$", "a number, #i or an expression in brackets [ ] is wanted here"),
+    )
+)
+
+_SIGNS = {
+    "=": ("words with = belong to another dialect and are not read", None),
+    "/": (
+        "a / inside a block: some controls leave out the rest of the block, some refuse it",
+        "put block skip at the front, or divide inside brackets [ ]",
+    ),
+    "'": ("' is no code", "comments stand in parentheses ( )"),
+    '"': ('" is no code', "comments stand in parentheses ( )"),
+    "*": ("* is no code", "comments stand in parentheses ( ), products in brackets [ ]"),
+    "%": ("% inside a block", "% opens and ends a program at the front of a line only"),
+    "<": ("a name in angle brackets is read as a program's name or behind M98 only", None),
+    "]": ("a bracket ] without its [", None),
+    "#": ("an address letter is missing in front of #", None),
+    "[": ("an address letter is missing in front of [", None),
+    ":": ("a program number comes first in a block", None),
+}
 
 
 def fault_before_reading(code: CleanCode, line: str) -> SyntaxFault | None:
@@ -42,15 +97,17 @@ def fault_before_reading(code: CleanCode, line: str) -> SyntaxFault | None:
 
 def fault_at(code: CleanCode, position: int) -> SyntaxFault:
     """Why the grammar stopped at ``position`` of the code."""
+    text, before = code.text, code.text[:position]
     bracket = _unclosed_bracket(code, position)
     if bracket is not None:
         return bracket
-    if position >= len(code.text):
-        return _cut_short(code)
-    character = code.text[position]
-    if character.isalpha():
+    if position < len(text) and text[position] in ".," and before[-1:].isdigit():
+        return _number(code, position)
+    if begins_statement(text) or before.endswith("#") or before.count("[") > before.count("]"):
+        return _expression(code, position)
+    if position == len(text) or text[position].isalpha():
         return _letter(code, position)
-    if character in "+-.,0123456789":
+    if text[position] in _OF_A_NUMBER:
         return _number(code, position)
     return _sign(code, position)
 
@@ -101,7 +158,7 @@ def _long_number(code: CleanCode) -> SyntaxFault | None:
     for found in _LONG_NUMBER.finditer(code.text):
         digits = len(found[0]) - found[0].count(".")
         if digits > MOST_DIGITS and found[0].count(".") <= 1:
-            message = f"a number of {digits} digits; no control takes more than {MOST_DIGITS}"
+            message = f"a number of {digits} digits; numbers have up to {MOST_DIGITS}"
             return _fault(code, found.start(), found.end(), message)
     return None
 
@@ -140,94 +197,77 @@ def _unclosed_bracket(code: CleanCode, position: int) -> SyntaxFault | None:
     return None
 
 
-def _cut_short(code: CleanCode) -> SyntaxFault:
-    """The block ends where something more is wanted."""
-    text, end = code.text, len(code.text)
-    if text.startswith(("IF", "WHILE", "GOTO", "DO", "END")):
-        wanted = "GOTO or THEN" if text.startswith("IF") else "DO1, DO2 or DO3"
-        if text.endswith("]"):
-            return _fault(code, 0, end, f"the statement breaks off; {wanted} is missing")
-        return _fault(code, 0, end, "the statement breaks off; a number or value is missing at its end")
-    if text.startswith("#"):
-        return _fault(code, 0, end, "the assignment breaks off; #i = value is wanted")
-    return _no_value(code, end)
-
-
-def _no_value(code: CleanCode, end: int, hint: str | None = None) -> SyntaxFault:
-    """The word that ends before ``end`` has a letter and perhaps a sign, but no value."""
-    start = end - 1
-    while start and code.text[start] in "+-.":
-        start -= 1
-    word = code.text[start:end]
-    if word.endswith("."):
-        return _fault(code, start, end, f"{word}: a point without a digit", hint)
-    if word.endswith(("+", "-")) and word[0].isalpha():
-        return _fault(code, start, end, f"{word}: a sign without a value", hint)
-    return _fault(code, start, end, f"{word} has no value", hint)
+def _expression(code: CleanCode, position: int) -> SyntaxFault:
+    """Inside a statement or an expression: what was wanted follows from what stands before."""
+    text = code.text
+    found = text[position : position + 1]
+    hint = None
+    message = next((wanted for before, wanted in _WANTED if before.search(text, 0, position)), None)
+    if message is None:
+        message = "a bracket ] without its [" if found == "]" else f"{found} cannot stand here"
+    if found == "=" and not text.startswith("#"):
+        hint = "relations are written EQ NE GT GE LT LE"
+    elif found == "N" and text.endswith("GOTO", 0, position):
+        hint = "without the letter N"
+    elif found in "<_" and found and text[position - 1] == "#":
+        hint = "named variables belong to another dialect and are not read"
+    if not found:
+        return _fault(code, position - 1, position, message, hint)
+    return _fault(code, position, position + 1, message, hint)
 
 
 def _letter(code: CleanCode, position: int) -> SyntaxFault:
-    text, letter = code.text, code.text[position]
-    before = text[position - 1] if position else ""
-    hint = {
-        "O": "letter O typed for the digit 0?",
-        "L": "letter l typed for the digit 1?",
-        "I": "letter I typed for the digit 1?",
-    }.get(letter)
-    if before.isalpha() or (before and before in "+-."):
-        return _no_value(code, position, hint)
+    """A letter, or the end, where a value is missing or no word can begin."""
+    text, letter = code.text, code.text[position : position + 1]
+    hint = _LETTER_FOR_DIGIT.get(letter)
+    word = _NO_VALUE.search(text, 0, position)
+    if word is not None:
+        problem = "has no value"
+        if len(word[0]) > len(word["address"]):
+            problem = "has a point without a digit" if word[0].endswith(".") else "has a sign without a number"
+        if _is_plain_text(code, word.start()):
+            hint = "text that is no code belongs in parentheses ( )"
+        return _fault(code, word.start(), position, f"{word[0]} {problem}", hint)
     if letter in _FRONT:
-        message = f"{letter} cannot stand here: {_FRONT[letter]} comes first in a block"
-        return _fault(code, position, position + 1, message, hint if letter == "O" else None)
+        glued = position > 0 and code.columns[position] == code.columns[position - 1] + 1
+        if position == 0 and not _FRONT_WORD.match(text):
+            message = f"{letter} wants a whole number of up to {MOST_DIGITS} digits behind it"
+        else:
+            message = f"{letter} cannot stand here: {_FRONT[letter]} comes first in a block"
+        return _fault(code, position, position + 1, message, hint if glued else None)
     return _fault(code, position, position + 1, f"{letter} cannot stand here")
 
 
+def _is_plain_text(code: CleanCode, position: int) -> bool:
+    """Three letters in a row, as no code has them."""
+    letters = code.text[position : position + 3]
+    return len(letters) == 3 and letters.isalpha() and code.columns[position + 2] == code.columns[position] + 2
+
+
 def _number(code: CleanCode, position: int) -> SyntaxFault:
-    """Something is wrong with the number that the word beginning before ``position`` carries."""
+    """Something is wrong with the number around ``position``, or with the word that carries it."""
     text = code.text
-    start = position
-    while start and text[start - 1] in "+-.,0123456789":
+    start = end = position
+    while start and text[start - 1] in _OF_A_NUMBER:
         start -= 1
-    letter = text[start - 1] if start and text[start - 1].isalpha() else ""
-    match = _VALUE.match(text, start)
-    end = match.end() if match else position + 1
+    while end < len(text) and text[end] in _OF_A_NUMBER:
+        end += 1
     value = text[start:end]
-    word = letter + value
-    start -= len(letter)
-    if "," in value:
-        hint = "decimal comma? a decimal point is wanted"
-        if not re.search(r"[0-9],[0-9]", value):
-            hint = "behind a comma only C (chamfer), R (rounding) or A (angle) can stand"
-        return _fault(code, start, end, f"{word}: a comma inside a number", hint)
-    if re.search(r"[+-]{2}", value):
-        return _fault(code, start, end, f"{word}: two signs", "one of them is too many")
-    if value.count(".") > 1:
-        return _fault(code, start, end, f"{word}: two decimal points")
-    if not re.search("[0-9]", value):
-        return _no_value(code, end)
-    if re.search(r"[0-9.][+-]", value):
-        return _fault(code, start, end, f"{word}: a sign behind the number", "sums need brackets [ ]")
-    return _fault(code, start, end, f"{word}: a number without an address letter")
+    if start and text[start - 1].isalpha():
+        start -= 1
+    word = text[start:end]
+    for pattern, problem, hint in _NUMBER_FAULTS:
+        if pattern.search(value):
+            return _fault(code, start, end, f"{word} {problem}", hint)
+    return _fault(code, start, end, f"{word} has no address letter", "is a letter missing in front?")
 
 
 def _sign(code: CleanCode, position: int) -> SyntaxFault:
+    """A character that no word begins with."""
     character = code.text[position]
-    message, hint = f"{character} cannot stand here", None
-    if character == "=":
-        message = "words with = belong to another dialect and are not read"
-    elif character == "/":
-        message = "a / inside a block: some controls leave out the rest of the block, some refuse it"
-        hint = "put block skip at the front, or divide inside brackets [ ]"
-    elif character in "'\"*":
-        message, hint = f"{character} is no code here", "comments stand in parentheses ( )"
-    elif character == "%":
-        message, hint = "% inside a block", "the mark for start and end of the program stands at the front of a line"
-    elif character in "<>":
-        message = "names in angle brackets are read as a program's name or behind M98 only"
-    elif character == "]":
-        message = "a bracket ] without its ["
-    elif character == "#" or character == "[":
-        message = f"{character} cannot stand here: an address letter is missing in front of it"
-    elif not character.isprintable():
+    message, hint = _SIGNS.get(character, (f"{character} is no code", None))
+    if not character.isprintable():
         message = f"a control byte ({ord(character):02X} hex) outside a comment"
+    elif character == "/" and position == 0:
+        message, hint = "block skip stands twice", None
     return _fault(code, position, position + 1, message, hint)

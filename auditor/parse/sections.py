@@ -5,7 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator
 from dataclasses import dataclass
-from itertools import pairwise
+from itertools import islice, pairwise
 
 from auditor.parse.blocks import TextNote
 from auditor.parse.clean import without_gaps
@@ -88,13 +88,13 @@ class _Sorting:
         if is_program_head(after_mark(self.lines[mark])):
             self.data.append(mark)
         self.data.extend(part)
-        filled = list(self._filled(part))
+        filled = list(islice(self._filled(part), 2))
         if len(filled) > 1 and is_program_head(self.lines[filled[1]]):
             self.titles.append(filled[0])
         return bool(filled)
 
     def _begins_program(self, mark: int, part: range) -> bool:
-        first = [self.lines[index] for index in self._filled(part)][:1]
+        first = [self.lines[index] for index in islice(self._filled(part), 1)]
         return any(is_program_head(line) for line in [after_mark(self.lines[mark]), *first])
 
     def _note_outside(self, part: range) -> None:
