@@ -6,6 +6,7 @@ nothing but the cycles is under test. Source of the expected moves: see ``proven
 
 from __future__ import annotations
 
+import itertools
 import json
 import math
 import re
@@ -187,7 +188,7 @@ def test_levels_and_stretches_of_the_pocket() -> None:
     strokes = carried_out("C08")
     cuts = {
         (round(2 * stroke.end.r, 4), round(before.end.z, 4), round(stroke.end.z, 4))
-        for before, stroke in zip(strokes, strokes[1:], strict=False)
+        for before, stroke in itertools.pairwise(strokes)
         if stroke.kind is Kind.FEED and before.end.r == stroke.end.r and stroke.cycle_pass != strokes[-1].cycle_pass
     }
     assert cuts == rows
