@@ -10,7 +10,7 @@ import re
 from dataclasses import dataclass
 from typing import Literal
 
-from auditor.declared.iso_inserts import CLEARANCE_ANGLE, HANDS, INCLUDED_ANGLE, CodeError, Hand
+from auditor.declared.iso_codes import CLEARANCE_ANGLE, HANDS, INCLUDED_ANGLE, CodeError, Hand
 
 BarMaterial = Literal["steel", "heavy metal", "carbide"]
 

@@ -8,24 +8,16 @@ unless a test names a copy they were confirmed in.
 
 from __future__ import annotations
 
-import math
 import re
 from dataclasses import dataclass
 from typing import Literal
 
-Hand = Literal["right", "left", "neutral"]
+from auditor.declared.iso_codes import CLEARANCE_ANGLE, HANDS, INCLUDED_ANGLE, CodeError, Hand, InsertCodeError
+from auditor.declared.iso_sizes import INCH, Size, inch_size, metric_size
 
-INCH = 25.4  # mm
+__all__ = ["CLEARANCE_ANGLE", "INCLUDED_ANGLE", "CodeError", "Insert", "decode_insert"]
 
-INCLUDED_ANGLE: dict[str, float | None] = {
-    "A": 85.0, "B": 82.0, "C": 80.0, "D": 55.0, "E": 75.0, "H": 120.0, "K": 55.0, "L": 90.0, "M": 86.0,
-    "O": 135.0, "P": 108.0, "R": None, "S": 90.0, "T": 60.0, "V": 35.0, "W": 80.0,
-}  # fmt: skip
-CLEARANCE_ANGLE: dict[str, float | None] = {
-    "N": 0.0, "A": 3.0, "B": 5.0, "C": 7.0, "P": 11.0, "D": 15.0, "E": 20.0, "F": 25.0, "G": 30.0, "O": None,
-}  # fmt: skip
 TOLERANCE_LETTERS = "ACEFGHJKLMNU"
-HANDS: dict[str, Hand] = {"R": "right", "L": "left", "N": "neutral"}
 EDGE_CONDITIONS = {
     "F": "sharp",
     "E": "honed",
@@ -65,46 +57,10 @@ _FIXINGS = {
 # Inch only, for inscribed circles under 1/4 in, counted in 1/32 in instead of 1/8 and 1/16 in.
 _SMALL_FIXINGS = {"D": _Fixing(True, False, 2), "E": _Fixing(False, False, 2)}
 
-_RHOMBIC = "CDEMV"
-_CORNERS = {"H": 6, "O": 8, "P": 5, "S": 4, "T": 3}
-_TRIGON_EDGE = 0.6840  # edge / inscribed circle of the 80 deg trigon
-_INCH_CIRCLES = (3.96875, 4.7625, 5.55625, 6.35, 7.9375, 9.525, 12.7, 15.875, 19.05, 25.4, 31.75)
-_METRIC_CIRCLES = (5.0, 6.0, 8.0, 10.0, 12.0, 16.0, 20.0, 25.0, 32.0)
-# Two inscribed circles share a digit here; the standard marks the smaller with an S.
-_SMALL_SIZES = {("C", "S4"): 3.96875, ("W", "S3"): 4.7625}
-_THICKNESS = {
-    "01": 1.59, "T0": 1.79, "T1": 1.98, "02": 2.38, "T2": 2.78, "03": 3.18, "T3": 3.97, "04": 4.76, "T4": 4.96,
-    "05": 5.56, "T5": 5.95, "06": 6.35, "T6": 6.75, "07": 7.94, "09": 9.52, "T9": 9.72, "11": 11.11, "12": 12.70,
-}  # fmt: skip
-_INCH_SIZES = {
-    "1.2": 1.25, "1.5": 1.5, "1.8": 1.75, "2": 2.0, "2.5": 2.5, "3": 3.0, "4": 4.0, "5": 5.0, "6": 6.0,
-    "8": 8.0, "10": 10.0, "12": 12.0,
-}  # 1/8 in, rounded in the code  # fmt: skip
-_INCH_THICKNESS = {
-    "1": 1.0, "1.2": 1.25, "1.5": 1.5, "1.8": 1.75, "2": 2.0, "2.5": 2.5, "3": 3.0, "3.5": 3.5, "4": 4.0,
-    "5": 5.0, "6": 6.0, "7": 7.0, "8": 8.0,
-}  # 1/16 in  # fmt: skip
-_INCH_CORNERS = {"0": 0.0, ".2": 0.256, ".5": 0.5, **{str(n): float(n) for n in range(1, 9)}}  # 1/64 in; .2 = 0.004 in
-
 _SEPARATORS = " _-\u2013"
 _METRIC_BODY = re.compile(r"(\d\d|S\d)[\s_-]*(\d\d|T\d)[\s_-]*(\d\d|M0|[A-Z]{2})", re.ASCII)
 _INCH_BODY = re.compile(r"(1[02]|\d(?:\.\d)?)[\s_-]*(\d(?:\.\d)?)[\s_-]*(0?\.\d|\d)?(?![\d.])", re.ASCII)
 _EDGE = re.compile(r"([FETSKP])?([RLN])?(\d+)?", re.ASCII)
-
-
-class CodeError(ValueError):
-    """An insert or holder code that cannot be read: which position, what stands there, what is wanted."""
-
-    def __init__(self, code: str, position: str, found: str, wanted: str) -> None:
-        self.code = code
-        self.position = position
-        self.found = found
-        self.wanted = wanted
-        super().__init__(f"{code!r}, {position}: found {found or 'nothing'}, wanted {wanted}")
-
-
-class InsertCodeError(CodeError):
-    """A code that is not ISO 1832 or ANSI B212.4."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -134,17 +90,6 @@ class Insert:
 
 
 @dataclass(frozen=True, slots=True)
-class _Size:
-    """Positions 5 to 7 in millimetres."""
-
-    inscribed_circle: float | None
-    edge_length: float
-    thickness: float
-    corner_radius: float | None
-    notes: tuple[str, ...] = ()
-
-
-@dataclass(frozen=True, slots=True)
 class _Edge:
     """Positions 8 and 9, the chamfer and the maker's own code."""
 
@@ -153,28 +98,6 @@ class _Edge:
     chamfer_width: float | None = None
     chamfer_angle: float | None = None
     maker_code: str | None = None
-
-
-def edge_length(shape: str, inscribed_circle: float) -> float:
-    """Length of the cutting edge of an equilateral insert from its inscribed circle, mm.
-
-    Rhombus: d / sin(corner angle). Regular polygon of n corners: d tan(180/n). Round: d.
-
-    >>> round(edge_length("C", 12.7), 2)
-    12.9
-    >>> round(edge_length("T", 9.525), 2)
-    16.5
-    """
-    if shape == "R":
-        return inscribed_circle
-    if shape == "W":
-        return _TRIGON_EDGE * inscribed_circle
-    if shape in _CORNERS:
-        return inscribed_circle * math.tan(math.pi / _CORNERS[shape])
-    angle = INCLUDED_ANGLE[shape]
-    if shape not in _RHOMBIC or angle is None:
-        raise ValueError(f"shape {shape}: the edge does not follow from an inscribed circle")
-    return inscribed_circle / math.sin(math.radians(angle))
 
 
 def decode_insert(code: str) -> Insert:
@@ -193,27 +116,14 @@ def decode_insert(code: str) -> Insert:
     >>> round(decode_insert("DNMG-431").corner_radius, 3)
     0.397
     """
-    text = " ".join(code.upper().split())
-    letters, rest = _take_letters(code, text)
-    shape, clearance, tolerance, fixing = letters
-    metric = len(fixing) == 1 and _METRIC_BODY.match(rest)
-    fits = _FIXINGS | ({} if metric else _SMALL_FIXINGS)
-    if fixing and fixing not in fits:
-        raise InsertCodeError(code, "letter 4 (fixing and chip-breaker)", fixing, "one of " + " ".join(sorted(fits)))
-    body = metric or _INCH_BODY.match(rest)
-    if not body:
-        raise InsertCodeError(code, "positions 5 to 7 (size)", rest, "six digits such as 120408, or inch such as 432")
-    if metric:
-        size = _metric_size(code, shape, body[1], body[2], body[3])
-    else:
-        size = _inch_size(code, shape, fixing, body[1], body[2], body[3])
-    edge = _read_edge(code, rest[body.end() :], inch=not metric)
-    kind = fits[fixing or "N"]
+    (shape, clearance, tolerance, fixing), rest = _take_letters(code, " ".join(code.upper().split()))
+    form, size, tail = _take_size(code, shape, fixing, rest)
+    edge = _read_edge(code, tail, inch=form == "inch")
+    kind = (_FIXINGS | _SMALL_FIXINGS)[fixing or "N"]
     clearance_angle = CLEARANCE_ANGLE[clearance]
-    faces = 1 if kind.faces == 2 and clearance_angle else kind.faces  # clearance leaves a single cutting face
     return Insert(
         code=code.strip(),
-        form="metric" if metric else "inch",
+        form=form,
         shape=shape,
         included_angle=INCLUDED_ANGLE[shape],
         clearance_angle=clearance_angle,
@@ -221,7 +131,7 @@ def decode_insert(code: str) -> Insert:
         fixing=fixing or "N",
         has_hole=kind.has_hole,
         breaker=kind.breaker,
-        faces=faces,
+        faces=1 if kind.faces == 2 and clearance_angle else kind.faces,  # clearance leaves a single cutting face
         inscribed_circle=size.inscribed_circle,
         edge_length=size.edge_length,
         thickness=size.thickness,
@@ -255,80 +165,19 @@ def _take_letters(code: str, text: str) -> tuple[tuple[str, str, str, str], str]
     return (found[0], found[1], found[2], fixing), rest
 
 
-def _metric_size(code: str, shape: str, size: str, thickness: str, corner: str) -> _Size:
-    if thickness not in _THICKNESS:
-        raise InsertCodeError(code, "position 6 (thickness)", thickness, "one of " + " ".join(_THICKNESS))
-    height = _THICKNESS[thickness]
-    if shape == "R":
-        return _round_size(code, size, height, corner)
-    notes = []
-    if corner.isdigit():
-        radius: float | None = int(corner) / 10.0
-    elif corner == "M0":
-        raise InsertCodeError(code, "position 7 (corner radius)", corner, "two digits; M0 belongs to round inserts")
-    else:
-        radius = None
-        notes.append(f"corner {corner}: facet letters of a milling insert; give the nose radius outright")
-    if shape in "ABKL":
-        notes.append(f"edge length {int(size)} mm is the whole number of the code")
-        if not size.isdigit() or size == "00":
-            raise InsertCodeError(code, "position 5 (edge length)", size, "two digits")
-        return _Size(None, float(size), height, radius, tuple(notes))
-    circle = _circle_from_edge(code, shape, size)
-    return _Size(circle, edge_length(shape, circle), height, radius, tuple(notes))
-
-
-def _circle_from_edge(code: str, shape: str, size: str) -> float:
-    """The standard inscribed circle whose edge, cut off or rounded to whole mm, gives the digits."""
-    small = _SMALL_SIZES.get((shape, size))
-    if small is not None:
-        return small
-    edges = {circle: edge_length(shape, circle) for circle in reversed(_INCH_CIRCLES)}
-    for whole in (math.floor, round):
-        for circle, edge in edges.items():
-            if size.isdigit() and whole(edge) == int(size):
-                return circle
-    sizes = sorted({f"{math.floor(edge):02d}" for edge in edges.values()})
-    raise InsertCodeError(code, "position 5 (edge length)", size, f"for shape {shape} one of " + " ".join(sizes))
-
-
-def _round_size(code: str, size: str, thickness: float, corner: str) -> _Size:
-    """Round inserts: M0 marks a diameter in whole millimetres, 00 one of the inch series."""
-    series = {"M0": _METRIC_CIRCLES, "00": _INCH_CIRCLES}.get(corner)
-    if series is None:
-        raise InsertCodeError(code, "position 7 (corner)", corner, "M0 (metric diameter) or 00 (inch diameter)")
-    for whole in (math.floor, round):
-        for diameter in series:
-            if size.isdigit() and whole(diameter) == int(size):
-                return _Size(diameter, diameter, thickness, diameter / 2.0)
-    sizes = " ".join(f"{math.floor(diameter):02d}" for diameter in series)
-    raise InsertCodeError(code, "position 5 (diameter)", size, "one of " + sizes)
-
-
-def _inch_size(code: str, shape: str, fixing: str, size: str, thickness: str, corner: str | None) -> _Size:
-    if shape in "ABKL":
-        raise InsertCodeError(code, "position 5 (size)", size, f"the metric code; shape {shape} is not read in inch")
-    # 7/8 in is no standard circle, so a plain 7 is the 7/32 in of small boring inserts.
-    if fixing in _SMALL_FIXINGS or size == "7":
-        circle = _inch(code, "position 5 (size in 1/32 in)", size, {"5": 5.0, "6": 6.0, "7": 7.0}, 32)
-        height = _inch(code, "position 6 (thickness in 1/32 in)", thickness, _INCH_THICKNESS, 32)
-        notes: tuple[str, ...] = ("size and thickness read in 1/32 in, the rule under 1/4 in",)
-    else:
-        circle = _inch(code, "position 5 (size in 1/8 in; metric codes have six digits)", size, _INCH_SIZES, 8)
-        height = _inch(code, "position 6 (thickness in 1/16 in)", thickness, _INCH_THICKNESS, 16)
-        notes = ()
-    if shape == "R":
-        return _Size(circle, circle, height, circle / 2.0, notes)
-    digits = (corner or "").removeprefix("0") or (corner or "")
-    radius = _inch(code, "position 7 (corner in 1/64 in)", digits, _INCH_CORNERS, 64)
-    return _Size(circle, edge_length(shape, circle), height, radius, notes)
-
-
-def _inch(code: str, position: str, found: str, table: dict[str, float], parts: int) -> float:
-    """Millimetres from a code digit that counts parts of an inch."""
-    if found not in table:
-        raise InsertCodeError(code, position, found, "one of " + " ".join(table))
-    return round(table[found] * INCH / parts, 6)
+def _take_size(code: str, shape: str, fixing: str, rest: str) -> tuple[Literal["metric", "inch"], Size, str]:
+    """Positions 5 to 7 in the form they are written in, and what follows them."""
+    metric = _METRIC_BODY.match(rest) if fixing else None  # the three-letter form exists in inch alone
+    fits = _FIXINGS if metric else _FIXINGS | _SMALL_FIXINGS
+    if fixing and fixing not in fits:
+        raise InsertCodeError(code, "letter 4 (fixing and chip-breaker)", fixing, "one of " + " ".join(sorted(fits)))
+    if metric:
+        return "metric", metric_size(code, shape, metric[1], metric[2], metric[3]), rest[metric.end() :]
+    inch = _INCH_BODY.match(rest)
+    if not inch:
+        raise InsertCodeError(code, "positions 5 to 7 (size)", rest, "six digits such as 120408, or inch such as 432")
+    size = inch_size(code, shape, inch[1], inch[2], inch[3], in_32nds=fixing in _SMALL_FIXINGS)
+    return "inch", size, rest[inch.end() :]
 
 
 def _read_edge(code: str, tail: str, inch: bool) -> _Edge:

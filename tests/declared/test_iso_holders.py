@@ -8,8 +8,8 @@ import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
+from auditor.declared.iso_codes import CodeError
 from auditor.declared.iso_holders import decode_holder
-from auditor.declared.iso_inserts import CodeError
 from tests.declared.published import by_id, rows
 
 STYLES = [row for row in rows("iso_codes.csv") if row["table"] == "cutting edge angle"]

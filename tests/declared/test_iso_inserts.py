@@ -14,8 +14,8 @@ from auditor.declared.iso_inserts import (
     EDGE_CONDITIONS,
     CodeError,
     decode_insert,
-    edge_length,
 )
+from auditor.declared.iso_sizes import edge_length
 from tests.declared.published import by_id, rows
 
 CODES = rows("iso_codes.csv")
