@@ -50,4 +50,7 @@ def main() -> None:
     except click.Abort:
         click.echo("turnaudit: interrupted", err=True)
         status = EXIT_INTERRUPTED
+    except Exception as problem:  # a person at a machine is never shown a traceback
+        click.echo(f"turnaudit itself failed, please report it: {type(problem).__name__}: {problem}", err=True)
+        status = EXIT_NOT_AUDITED
     sys.exit(status if isinstance(status, int) else EXIT_CLEAN)

@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+import itertools
+import textwrap
+from collections.abc import Iterator, Mapping
 from typing import TYPE_CHECKING
 
 import click
@@ -11,6 +13,8 @@ from auditor.cli._talk import tell
 
 if TYPE_CHECKING:
     from auditor.findings import Limit, Rule
+
+_WIDTH = 80
 
 
 @click.command(short_help="Say what a check computes, and from what.")
@@ -34,7 +38,10 @@ def command(check: str | None) -> None:
 
 def _listed(known: Mapping[str, Rule]) -> str:
     width = max(map(len, known), default=0)
-    lines = [f"{name:<{width}}  {rule.title}" for name, rule in sorted(known.items())]
+    lines = []
+    for name, rule in sorted(known.items()):
+        lead = f"{name:<{width}}  "
+        lines += textwrap.wrap(rule.title, _WIDTH, initial_indent=lead, subsequent_indent=" " * len(lead))
     return "\n".join([*lines, "", "turnaudit explain CHECK says more about one of them."])
 
 
@@ -47,13 +54,29 @@ def _unknown(check: str, name: str, known: Mapping[str, Rule]) -> str:
 
 
 def _explained(rule: Rule) -> str:
-    lines = [rule.name, "=" * len(rule.name), "", rule.text.strip()]
+    lines = [rule.name, "=" * len(rule.name), "", *_narrowed(rule.text.strip())]
     if rule.limits:
-        lines += ["", "Thresholds, to be set in [limits] of the job file:"]
-        lines += [_threshold(limit) for limit in rule.limits]
+        lines += ["", "Thresholds, to be set in [limits] of the job file"]
+        for limit in rule.limits:
+            lines += textwrap.wrap(_threshold(limit), _WIDTH, initial_indent="    ", subsequent_indent="        ")
     return "\n".join(lines)
+
+
+def _narrowed(text: str) -> Iterator[str]:
+    """The text with those paragraphs wrapped anew that are too wide for a terminal."""
+    for (margin, _), group in itertools.groupby(text.splitlines(), key=lambda line: (_margin(line), not line.strip())):
+        lines = list(group)
+        if max(map(len, lines)) <= _WIDTH:
+            yield from lines
+        else:
+            words = " ".join(line.strip() for line in lines)
+            yield from textwrap.wrap(words, _WIDTH, initial_indent=margin, subsequent_indent=margin)
+
+
+def _margin(line: str) -> str:
+    return line[: len(line) - len(line.lstrip())]
 
 
 def _threshold(limit: Limit) -> str:
     default = f"{limit.default:g} {limit.unit}".rstrip()
-    return f"  {limit.name} = {default}  ({limit.provenance}): {limit.meaning}"
+    return f"{limit.name} = {default} ({limit.provenance}): {limit.meaning}"

@@ -35,7 +35,8 @@ def test_one_check_with_its_thresholds_and_their_provenance(name: str) -> None:
     status, text = run(name)
     assert status == 0
     assert "What\n" in text
-    assert "power_share = 1  (common practice): share of the spindle's power that may be used" in text
+    assert "power_share = 1 (common practice): share of the spindle's power that may be used" in " ".join(text.split())
+    assert max(map(len, text.splitlines())) <= 80
 
 
 def test_slip_of_the_pen_is_helped() -> None:

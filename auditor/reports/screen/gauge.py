@@ -16,8 +16,8 @@ def draw(paper: Paper, value: float, band: tuple[float, float] | None, limit: fl
     """
     low, high = band if band is not None and all(map(math.isfinite, band)) else (value, value)
     bottom = min(0.0, low, value, limit)
-    top = max(high, value, limit, bottom + 1e-12)
-    span = (top - bottom) * 1.08
+    top = max(0.0, high, value, limit)
+    span = (top - bottom) * 1.08 or 1.0
 
     def cell(figure: float) -> int:
         return min(CELLS - 1, max(0, int((figure - bottom) / span * CELLS)))
