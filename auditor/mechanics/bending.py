@@ -106,9 +106,7 @@ def cantilever_compliance(length: ArrayLike, modulus: ArrayLike, moment: ArrayLi
     return np.asarray(a**3 / (3.0 * _rigidity(modulus, moment)))
 
 
-def fixed_pinned_compliance(
-    position: ArrayLike, span: ArrayLike, modulus: ArrayLike, moment: ArrayLike
-) -> Floats:
+def fixed_pinned_compliance(position: ArrayLike, span: ArrayLike, modulus: ArrayLike, moment: ArrayLike) -> Floats:
     """Give of a plain bar in chuck and tailstock, at the load: a^3 b^2 (3L + b) / (12 E I L^3).
 
     Parameters
@@ -269,9 +267,7 @@ def diameter_error(push_off: ArrayLike, tangential: ArrayLike, diameter: ArrayLi
     Geometry of a circle moved off the tip: r^2 = (d/2 + y)^2 + y_t^2, second order terms of y dropped.
     """
     d = positive("diameter", "mm", diameter)
-    return np.asarray(
-        2.0 * finite("bending", "mm", push_off) + 2.0 * finite("bending", "mm", tangential) ** 2 / d
-    )
+    return np.asarray(2.0 * finite("bending", "mm", push_off) + 2.0 * finite("bending", "mm", tangential) ** 2 / d)
 
 
 def whipping_speed(length: ArrayLike, outer: ArrayLike, modulus: ArrayLike, density: ArrayLike) -> Floats:

@@ -231,8 +231,8 @@ def largest_thickness(depth: ArrayLike, feed: ArrayLike, nose_radius: ArrayLike,
     Plane geometry of ISO 3002-1 (1982), h = f sin kappa_r; for ap << r it tends to f sqrt(2 ap / r).
     """
     f = not_negative("feed", "mm/rev", feed)
-    reach = np.minimum(nose_angle(depth, nose_radius, edge_angle), 90.0)
-    kappa = np.where(not_negative("nose radius", "mm", nose_radius) == 0.0, finite("cutting edge angle", "deg", edge_angle), reach)
+    end = nose_angle(depth, nose_radius, edge_angle)
+    kappa = np.where(not_negative("nose radius", "mm", nose_radius) == 0.0, end, np.minimum(end, 90.0))
     return np.asarray(f * np.sin(np.radians(kappa)))
 
 
@@ -279,9 +279,7 @@ def chord_angle(depth: ArrayLike, feed: ArrayLike, nose_radius: ArrayLike, edge_
     straight = straight_length(a, r, edge_angle)
     kappa = angle("cutting edge angle", edge_angle, 0.0, 180.0)
     half = np.minimum(0.5 * f, r)
-    return chord_through(
-        -half, r - np.sqrt(r**2 - half**2), r * np.sin(theta2) + straight * np.cos(kappa), a
-    )
+    return chord_through(-half, r - np.sqrt(r**2 - half**2), r * np.sin(theta2) + straight * np.cos(kappa), a)
 
 
 def chord_through(along_low: ArrayLike, across_low: ArrayLike, along_high: ArrayLike, across_high: ArrayLike) -> Floats:

@@ -165,8 +165,8 @@ def friction_angle(reference_angle: ArrayLike, effective_rake: ArrayLike, refere
     Parameters
     ----------
     reference_angle : array_like (...), deg
-        beta_ref at the reference rake: steel 32, stainless 33, cast iron and aluminium 27 to 32, titanium 22, copper
-        and brass 28, all within about 6.
+        beta_ref at the reference rake: steel 32, stainless 33, cast iron 27, aluminium 32, titanium 22, copper and
+        brass 28, all within about 6.
     effective_rake : array_like (...), deg
         Rake the chip meets.
     reference_rake : array_like (...), deg
