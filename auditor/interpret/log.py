@@ -17,7 +17,8 @@ class Log:
     not_audited: dict[int, NotAudited] = field(default_factory=dict)  # by line
     motion_lines: set[int] = field(default_factory=set)
     assumptions: dict[str, Assumption] = field(default_factory=dict)  # by what they are about
-    dwell_time: float = 0.0  # s
+    dwell_time: float = 0.0  # s, of which the moves carry those behind them
+    arc_sweeps: list[float] = field(default_factory=list)  # degrees, of every arc
     tools_called: dict[int, int] = field(default_factory=dict)  # tool number -> line of first call
     said: set[tuple[object, ...]] = field(default_factory=set)
 

@@ -3,16 +3,22 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, field, replace
+from typing import Literal
 
 from auditor.declared.control_settings import choice
 from auditor.declared.model import Control, Job, Point, System, Tool
 from auditor.interpret import corners
 from auditor.interpret.compensated_run import CompensatedRun, joined
 from auditor.interpret.cycles.call import CycleFault, CycleRemark, Stroke
+from auditor.interpret.flow import Flow
+from auditor.interpret.library import Program
 from auditor.interpret.log import Log
 from auditor.interpret.moves import Kind, Move, Remark, Spindle
 from auditor.interpret.state import State
+from auditor.interpret.variables import Variables
 from auditor.interpret.words import BlockWords
+
+Side = Literal["off", "left", "right"]
 
 
 class NotUnderstood(Exception):  # noqa: N818 - not an error: the block is left out and said so
@@ -43,13 +49,24 @@ class Run:
     state: State
     log: Log
     words: BlockWords  # the block being carried out
+    flow: Flow
+    variables: Variables = field(default_factory=Variables)
     compensated: CompensatedRun = field(default_factory=CompensatedRun)
     chain: CornerChain | None = None
     collected: list[Stroke] | None = None  # strokes of a profile, instead of moves
+    profile_is_cut: bool = False  # the profile is being finished, not only drawn for a roughing cycle
+    profile_side: Side = "off"  # compensation within the profile carried out last
+    rough_starts: dict[tuple[int | None, int | None], Point | None] = field(default_factory=dict)
     cycle: str | None = None  # the cycle whose strokes are being written
+    cycle_side: Side | None = None  # compensation of these strokes
     stock_in_doubt: bool = False  # a not-audited block may have cut
     block_in_doubt: bool = False  # this block rests on something that was not understood
+    flow_in_doubt: bool = False  # the way taken depended on something not known
     moved: bool = False  # the program has moved already
+    strokes: int = 0  # carried out so far
+    units_said: bool = False
+    first_zero: str | None = None  # the work zero taken for the declared Z0
+    called_name: str | None = None  # M98 <NAME>
     ended: str | None = None
 
     @property
@@ -106,11 +123,50 @@ class Run:
         for remark in remarks:
             self.remark(remark.topic, remark.message, *remark.words, line=remark.line)
 
+    def lose_track(self, reason: str) -> None:
+        """Something unknown ran here: the block is not audited, and nothing it may have changed is known."""
+        self.settle()
+        self.log.add_not_audited(self.words.line, self.words.text, reason)
+        self.stock_in_doubt = True
+        self.state.forget_position()
+        self.state.forget_readings()
+
+    def target_missing(self, number: int) -> None:
+        """A jump or return to a block that does not exist: where the program goes on is not known."""
+        self.remark("target-missing", f"N{number} is not in {self.flow.frame.program.title}", "P")
+        self.lose_track(f"the program goes on at N{number}, which is missing")
+
+    def jump(self, number: int) -> None:
+        """Go on at block N``number``."""
+        self.check_repeated(number)
+        if not self.flow.jump(number):
+            self.target_missing(number)
+
+    def check_repeated(self, number: int) -> None:
+        """A block number that is used as a target should stand once."""
+        lines = self.flow.repeated_number(number)
+        if lines:
+            where = ", ".join(str(line) for line in lines)
+            self.remark("number-repeated", f"N{number} stands more than once: lines {where}")
+
+    def call(self, program: Program, *, repeats: int, first: int = 0, macro: bool = False) -> None:
+        """Run another program and come back."""
+        if repeats < 1:
+            return
+        frame = self.flow.frame
+        place = (self.words.line, self.words.label) if frame.program.file is None else (frame.call_line, None)
+        self.flow.call(program, repeats=repeats, place=place, first=first, macro=macro)
+
+    def finish(self, how: str) -> None:
+        """The program ends here."""
+        self.ended = how
+
     def travel(self, stroke: Stroke) -> None:
         """Carry out one stroke from the programmed point; its end is the programmed point afterwards."""
         start = self.state.position
         if start is None:
             raise NotUnderstood(self.unknown_start(), "position-unknown")
+        self.strokes += 1
         stroke = self.dressed(stroke)
         run = self.compensated
         if self.state.compensation != "off" and stroke.kind is not Kind.THREAD:
@@ -126,6 +182,7 @@ class Run:
     def rapid_partly_known(self, end_z: float | None, end_r: float | None) -> None:
         """A rapid whose start or end is not wholly known: written axis by axis."""
         self.settle()
+        self.strokes += 1
         stroke = self.dressed(Stroke(Kind.RAPID, Point(end_z or 0.0, end_r or 0.0)), end_r)
         self.write(self.state.z, self.state.r, stroke, (end_z, end_r))
         self.state.z, self.state.r = end_z, end_r
@@ -187,7 +244,7 @@ class Run:
                 cycle=self.cycle,
                 cycle_pass=stroke.cycle_pass,
                 offset=state.tool.offset,
-                compensation=self.compensated.side or state.compensation,
+                compensation=self.cycle_side or self.compensated.side or state.compensation,
                 thread_depth=stroke.thread_depth,
                 dogleg=choice(self.control, "rapid_path") == "dogleg",
                 dwell_after=stroke.dwell_after,
@@ -205,11 +262,19 @@ class Run:
         """Whether a move rests on something that was not understood."""
         state = self.state
         cut_in_doubt = kind is not Kind.RAPID and not (state.spindle.certain and state.feed.certain)
-        return cut_in_doubt or self.block_in_doubt or state.foreign_zero or not state.tool.certain
+        return cut_in_doubt or self.block_in_doubt or self.flow_in_doubt or state.foreign_zero or not state.tool.certain
 
     def settle(self) -> None:
         """Carry out what still waits for a following move: corners, a compensated run."""
         self.close_chain()
+        if self.compensated.open:
+            self.release_compensated()
+
+    def settle_or_fault(self) -> None:
+        """As ``settle``, inside a profile: what is wrong there is a fault of the cycle."""
+        chain, self.chain = self.chain, None
+        if chain is not None:
+            corners.draw(chain.start, chain.legs)  # raises: the last leg waits for a following move
         if self.compensated.open:
             self.release_compensated()
 

@@ -8,6 +8,8 @@ from typing import Literal
 from auditor.declared.model import Point
 from auditor.interpret.moves import Feed, Spindle
 
+NOWHERE = Point(0.0, 0.0)
+
 
 @dataclass(slots=True)
 class SpindleState:
@@ -19,6 +21,7 @@ class SpindleState:
     clamp: float | None = None  # rpm
     last_surface: float | None = None  # m/min, kept while G97 acts
     certain: bool = True  # False after a block that may have held S or M and could not be read
+    stopped_line: int = 0  # of the last M5, 0 before any
     speed_mode_line: int | None = None  # G96/G97 changed here without S, not yet restated
     unclamped_line: int | None = None  # G96 here without any limit so far
 
@@ -34,6 +37,7 @@ class FeedState:
     mode: Literal["rev", "min"] = "rev"
     value: float | None = None  # mm/rev or mm/min
     certain: bool = True
+    line: int = 0  # of the F word
     mode_line: int | None = None  # mode changed here without F, not yet restated
 
     def command(self) -> Feed | None:
@@ -70,7 +74,7 @@ class State:
     feed: FeedState = field(default_factory=FeedState)
     tool: ToolState = field(default_factory=ToolState)
     compensation: Literal["off", "left", "right"] = "off"
-    shift: Point = Point(0.0, 0.0)  # G52, part coordinates = program coordinates + shift
+    shift: Point = NOWHERE  # G52, part coordinates = program coordinates + shift
     work_zero: str | None = None  # None until one is called
     foreign_zero: bool = False  # a work zero whose place is not known is in force
     return_to_initial: bool = True

@@ -60,65 +60,108 @@ _COMMON: dict[float, str] = {
     68: "opposite turret",
     69: "opposite turret off",
     80: "drilling off",
-    83: "drilling",
-    84: "tapping",
-    85: "boring",
+    83: "drill",
+    84: "tap",
+    85: "bore",
     87: "side drilling",
     88: "side tapping",
     89: "side boring",
     96: "surface speed",
     97: "rotation speed",
 }
-_SEVENTIES = ("finishing", "rough turning", "rough facing", "pattern repeating", "peck facing", "peck grooving",
-              "thread multi-pass")
+_SEVENTIES = (
+    "finishing",
+    "rough turning",
+    "rough facing",
+    "pattern repeating",
+    "peck along z",
+    "peck along x",
+    "multi-pass thread",
+)
 
-SYSTEMS: Mapping[System, Mapping[float, str]] = MappingProxyType({
-    "A": MappingProxyType({
-        **_COMMON,
-        20: "inch", 21: "metric",
-        32: "thread",
-        50: "preset", 50.3: "work preset",
-        **dict(zip(range(70, 77), _SEVENTIES, strict=True)),
-        90: "single turning", 92: "single threading", 94: "single facing",
-        98: "feed per minute", 99: "feed per revolution",
-    }),
-    "B": MappingProxyType({
-        **_COMMON,
-        20: "inch", 21: "metric",
-        33: "thread",
-        92: "preset", 92.1: "work preset",
-        **dict(zip(range(70, 77), _SEVENTIES, strict=True)),
-        77: "single turning", 78: "single threading", 79: "single facing",
-        90: "absolute", 91: "incremental",
-        94: "feed per minute", 95: "feed per revolution",
-        98: "return to initial level", 99: "return to R level",
-    }),
-    "C": MappingProxyType({
-        **_COMMON,
-        70: "inch", 71: "metric",
-        33: "thread",
-        92: "preset", 92.1: "work preset",
-        **dict(zip(range(72, 79), _SEVENTIES, strict=True)),
-        20: "single turning", 21: "single threading", 24: "single facing",
-        90: "absolute", 91: "incremental",
-        94: "feed per minute", 95: "feed per revolution",
-        98: "return to initial level", 99: "return to R level",
-    }),
-})
+SYSTEMS: Mapping[System, Mapping[float, str]] = MappingProxyType(
+    {
+        "A": MappingProxyType(
+            {
+                **_COMMON,
+                20: "inch",
+                21: "metric",
+                32: "thread",
+                50: "preset",
+                50.3: "work preset",
+                **dict(zip(range(70, 77), _SEVENTIES, strict=True)),
+                90: "turning cycle",
+                92: "thread cycle",
+                94: "facing cycle",
+                98: "feed per minute",
+                99: "feed per revolution",
+            }
+        ),
+        "B": MappingProxyType(
+            {
+                **_COMMON,
+                20: "inch",
+                21: "metric",
+                33: "thread",
+                92: "preset",
+                92.1: "work preset",
+                **dict(zip(range(70, 77), _SEVENTIES, strict=True)),
+                77: "turning cycle",
+                78: "thread cycle",
+                79: "facing cycle",
+                90: "absolute",
+                91: "incremental",
+                94: "feed per minute",
+                95: "feed per revolution",
+                98: "return to initial level",
+                99: "return to R level",
+            }
+        ),
+        "C": MappingProxyType(
+            {
+                **_COMMON,
+                70: "inch",
+                71: "metric",
+                33: "thread",
+                92: "preset",
+                92.1: "work preset",
+                **dict(zip(range(72, 79), _SEVENTIES, strict=True)),
+                20: "turning cycle",
+                21: "thread cycle",
+                24: "facing cycle",
+                90: "absolute",
+                91: "incremental",
+                94: "feed per minute",
+                95: "feed per revolution",
+                98: "return to initial level",
+                99: "return to R level",
+            }
+        ),
+    }
+)
 
 # three-digit ways of writing decimal G numbers
 _ALIASES: dict[float, float] = {107: 7.1, 112: 12.1, 113: 13.1, 250: 50.2, 251: 51.2}
 
-SINGLE_CYCLES = frozenset({"single turning", "single threading", "single facing"})
-DRILLING_CYCLES = frozenset({"drilling", "tapping", "boring"})
+SINGLE_CYCLES = frozenset({"turning cycle", "thread cycle", "facing cycle"})
+DRILLING_CYCLES = frozenset({"drill", "tap", "bore"})
 PROFILE_CYCLES = frozenset({"finishing", "rough turning", "rough facing", "pattern repeating"})
 MULTIPLE_CYCLES = frozenset(_SEVENTIES)
 
 _GROUPS: dict[str, frozenset[str]] = {
-    "motion": frozenset({
-        "rapid", "feed", "arc clockwise", "arc counter-clockwise", "thread", "variable thread",
-        "circular thread clockwise", "circular thread counter-clockwise", *SINGLE_CYCLES,
-    }),
+    "motion": frozenset(
+        {
+            "rapid",
+            "feed",
+            "arc clockwise",
+            "arc counter-clockwise",
+            "thread",
+            "variable thread",
+            "circular thread clockwise",
+            "circular thread counter-clockwise",
+            *SINGLE_CYCLES,
+        }
+    ),
     "speed": frozenset({"surface speed", "rotation speed"}),
     "absolute": frozenset({"absolute", "incremental"}),
     "feed mode": frozenset({"feed per minute", "feed per revolution"}),

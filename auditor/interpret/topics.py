@@ -8,11 +8,12 @@ from __future__ import annotations
 TOPICS: dict[str, frozenset[str]] = {
     "not-understood": frozenset({
         "syntax", "unknown-g", "unknown-m", "unsupported", "unknown-variable", "position-unknown",
-        "axis-not-modelled", "text-after-end", "encoding", "comment-unclosed", "alarm", "code-system-conflict",
+        "axis-not-modelled", "arithmetic", "text-after-end", "encoding", "comment-unclosed", "alarm",
+        "code-system-conflict",
     }),
     "speed-unclamped": frozenset({"clamp-missing", "clamp-too-high", "speed-mode-without-speed"}),
     "feed-missing": frozenset({"feed-missing", "feed-zero", "feed-mode-without-feed", "feed-implausible"}),
-    "spindle-off": frozenset({"spindle-off"}),
+    "spindle-off": frozenset({"spindle-off", "speed-missing"}),
     "tool-undeclared": frozenset({"tool-undeclared", "tool-ambiguous"}),
     "offset-missing": frozenset({"offset-cancelled", "offset-missing", "offset-foreign"}),
     "plain-number": frozenset({"plain-number", "too-many-decimals", "blank-in-number"}),
@@ -28,9 +29,9 @@ TOPICS: dict[str, frozenset[str]] = {
         "cycle-relief", "cycle-word-with-point", "cycle-shift-with-pocket", "cycle-groove-step",
     }),
     "program-flow": frozenset({
-        "end-missing", "subprogram-missing", "target-missing", "endless", "repeats-main", "number-repeated",
-        "return-through-point", "word-repeated", "code-group-repeated", "m-codes-many", "travel-limit", "spindle-left-on",
-        "coolant", "dwell", "block-skip", "stop-unattended", "preset", "work-zero-changed", "local-shift", "data-input",
+        "end-missing", "program-not-called", "subprogram-missing", "target-missing", "endless", "repeats-main",
+        "number-repeated", "return-through-point", "word-repeated", "code-group-repeated", "m-codes-many", "travel-limit",
+        "spindle-left-on", "coolant", "dwell", "block-skip", "stop-unattended", "preset", "work-zero-changed", "local-shift", "data-input",
         "home-unknown", "paren", "semicolon", "speed-in-thread", "tool-in-motion", "safe-start",
     }),
 }

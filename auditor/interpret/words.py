@@ -91,3 +91,15 @@ def length(number: Number, control: Control, *, inch: bool) -> float:
 def least_increment(control: Control, *, inch: bool) -> float:
     """The least input increment in mm: 0.001 mm or 0.0001 in unless declared otherwise."""
     return 0.0001 * INCH if inch else control.increment
+
+
+def argument_value(value: Value, control: Control, *, inch: bool) -> float:
+    """A macro argument as the number that its variable gets: in the program's own unit.
+
+    Without a point it counts like the same address elsewhere: least increments of a length where the
+    control reads whole numbers so.
+    """
+    number = value.number
+    if number.has_point or control.whole_numbers == "units" or value.letter not in LENGTH_LETTERS:
+        return number.value
+    return number.value * (0.0001 if inch else control.increment)

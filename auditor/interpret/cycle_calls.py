@@ -1,0 +1,163 @@
+"""Fixed cycles called: the block and the state become a call, the strokes of the cycle become moves."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+from auditor.declared.control_settings import SETTINGS, setting
+from auditor.declared.model import Point
+from auditor.interpret import cycles
+from auditor.interpret.cutting_conditions import check_cut
+from auditor.interpret.cycles.call import CycleCall, Expansion, Stroke
+from auditor.interpret.moves import Kind
+from auditor.interpret.profiles import Profile, carry_out_profile
+from auditor.interpret.reference import leave_compensation
+from auditor.interpret.registry import action, motion
+from auditor.interpret.run import NotUnderstood, Run
+from auditor.interpret.systems import DRILLING_CYCLES, MULTIPLE_CYCLES, PROFILE_CYCLES, SINGLE_CYCLES, code_for
+from auditor.interpret.words import BlockWords
+
+_COMPENSATED = frozenset({"finishing"})
+
+
+@motion(*SINGLE_CYCLES, *DRILLING_CYCLES)
+def modal_cycle(run: Run, words: BlockWords) -> None:
+    """A cycle that stays in force: every block with axis words repeats it."""
+    name = run.state.drilling or run.state.motion
+    assert name is not None
+    _carry_out(run, words, name, None)
+
+
+@action(*MULTIPLE_CYCLES)
+def multiple_cycle(run: Run, words: BlockWords) -> None:
+    """G70 to G76 (C: G72 to G78): the cycle and, where it has one, its profile."""
+    name = next(function for function in reversed(words.functions) if function in MULTIPLE_CYCLES)
+    if name not in PROFILE_CYCLES or not (name == "finishing" or words.has("P", "Q")):
+        _carry_out(run, words, name, None)
+        return
+    if run.state.position is None:
+        raise NotUnderstood(run.unknown_start(), "position-unknown")
+    run.settle()
+    profile = carry_out_profile(run, words, finishing=name == "finishing")
+    try:
+        _carry_out(run, words, name, profile)
+        _check_start(run, words, name)
+    finally:
+        _go_on_behind(run, name, profile)
+
+
+def _carry_out(run: Run, words: BlockWords, name: str, profile: Profile | None) -> None:
+    start = run.state.position
+    if start is None:
+        raise NotUnderstood(run.unknown_start(), "position-unknown")
+    if name not in _COMPENSATED:
+        leave_compensation(run, f"the cycle {code_for(run.system, name)}")
+    run.settle()
+    expansion = cycles.find(name)(_call(run, words, name, start, profile))
+    run.state.stored[name] = dict(expansion.stored)
+    run.cycle_remarks(expansion.remarks)
+    _note_settings(run, name, expansion)
+    _write(run, name, expansion, profile)
+
+
+def _call(run: Run, words: BlockWords, name: str, start: Point, profile: Profile | None) -> CycleCall:
+    state, tool = run.state, run.tool
+    return CycleCall(
+        name=name,
+        line=words.line,
+        start=_moved(start, state.shift, -1),
+        words=words.by_letter,
+        control=run.control,
+        inch=state.inch,
+        feed=state.feed.command(),
+        spindle=state.spindle.command(),
+        rapid_mode=profile is None or profile.rapid_mode,
+        profile=() if profile is None else tuple(_shifted(stroke, state.shift, -1) for stroke in profile.strokes),
+        profile_spans=frozenset() if profile is None else profile.spans,
+        stored=state.stored.get(name, {}),
+        absolute=run.system == "A" or state.absolute,
+        return_to_initial=state.return_to_initial,
+        nose_radius=0.0 if tool is None else tool.nose_radius,
+        tool_width=None if tool is None else tool.width,
+    )
+
+
+def _moved(point: Point, shift: Point, sign: int) -> Point:
+    return Point(point.z + sign * shift.z, point.r + sign * shift.r)
+
+
+def _shifted(stroke: Stroke, shift: Point, sign: int) -> Stroke:
+    """A stroke between program coordinates, which cycles read, and part coordinates."""
+    if shift == Point(0.0, 0.0):
+        return stroke
+    centre = None if stroke.centre is None else _moved(stroke.centre, shift, sign)
+    return replace(stroke, end=_moved(stroke.end, shift, sign), centre=centre)
+
+
+def _note_settings(run: Run, name: str, expansion: Expansion) -> None:
+    """Settings of the control that the path rests on and nobody declared."""
+    for key in expansion.leaned_on:
+        if key in run.control.settings or key not in SETTINGS:
+            continue
+        value, entry = setting(run.control, key), SETTINGS[key]
+        unit = {"length": " mm", "angle": " deg"}.get(entry.dimension or "", "")
+        text = f"{value:g}{unit}" if isinstance(value, float) else str(value)
+        run.log.assume(f"control.{key}", text, f"not declared; {name} rests on it: {entry.touches}")
+
+
+def _write(run: Run, name: str, expansion: Expansion, profile: Profile | None) -> None:
+    cuts = [stroke.kind for stroke in expansion.strokes if stroke.kind is not Kind.RAPID]
+    if cuts and name != "finishing":
+        check_cut(run, thread=Kind.THREAD in cuts)
+    run.cycle = name
+    side = run.state.compensation
+    try:
+        for number, stroke in enumerate(expansion.strokes, start=1):
+            if profile is not None and name == "finishing":
+                run.cycle_side = "off" if number == len(expansion.strokes) else profile.side
+            _one_stroke(run, stroke)
+    finally:
+        run.cycle, run.cycle_side = None, None
+        run.state.compensation = side
+
+
+def _one_stroke(run: Run, stroke: Stroke) -> None:
+    start = run.state.position
+    assert start is not None
+    run.strokes += 1
+    own = run.dressed(replace(_shifted(stroke, run.state.shift, 1), line=run.words.line, block=run.words.label))
+    if stroke.reversed_spindle and own.spindle is not None:
+        own = replace(own, spindle=replace(own.spindle, direction=-own.spindle.direction))
+    run.write(start.z, start.r, own)
+    run.state.z, run.state.r = own.end
+
+
+def _check_start(run: Run, words: BlockWords, name: str) -> None:
+    """A finishing cycle that begins elsewhere than its roughing goes home across the part."""
+    profile, here = (words.integer("P"), words.integer("Q")), run.state.position
+    if name != "finishing":
+        run.rough_starts[profile] = here
+        return
+    start = run.rough_starts.get(profile)
+    if start is not None and here is not None and start != here:
+        run.remark(
+            "cycle-start",
+            f"the finishing cycle starts at X{2 * here.r:g} Z{here.z:g}, its roughing at X{2 * start.r:g} "
+            f"Z{start.z:g}: the way back may cross the part",
+            "P",
+            "Q",
+        )
+
+
+def _go_on_behind(run: Run, name: str, profile: Profile) -> None:
+    """Behind a roughing cycle the program goes on behind its profile."""
+    frame = run.flow.frame
+    if name == "finishing":
+        return
+    if profile.first != frame.index:
+        between = frame.program.blocks[frame.index : profile.first] if profile.first > frame.index else ()
+        if any(block.words or block.statement for block in between):
+            text = "blocks stand between the cycle and its profile: most controls leave them out"
+            run.remark("cycle-profile-far", text, "P")
+    if profile.last + 1 > frame.index:
+        frame.index = profile.last + 1

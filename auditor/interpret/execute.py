@@ -1,0 +1,242 @@
+"""One block at a time: words evaluated, then each in the order in which a control lets it act."""
+
+from __future__ import annotations
+
+from auditor.declared.control_settings import amount, choice
+from auditor.interpret import calls, cycle_calls, dwell, modes, reference, speeds, toolwords, zeros  # noqa: F401
+from auditor.interpret.cycles.call import CycleFault
+from auditor.interpret.expressions import ExpressionFault
+from auditor.interpret.mcodes import WITHOUT_EFFECT, note_unknown
+from auditor.interpret.motion import has_axis_words
+from auditor.interpret.registry import ACTIONS, M_CODES, MODAL, MOTIONS, WORDS, Phase
+from auditor.interpret.run import NotUnderstood, Run
+from auditor.interpret.statements import calculator, carry_out_statement, named
+from auditor.interpret.systems import DRILLING_CYCLES, code_text, group_of, known_elsewhere
+from auditor.interpret.unreadable import skip_unreadable
+from auditor.interpret.words import LIVE_LETTERS, BlockWords, Value, least_increment, ready_words
+from auditor.parse.blocks import Block, Number
+
+# functions that turning does not follow: what they are, for the reason of a block not audited
+NOT_TURNING = {
+    "skip feed": "a feed that ends by a signal",
+    "return from reference": "a return from the reference point",
+    "circular thread clockwise": "a thread on an arc",
+    "circular thread counter-clockwise": "a thread on an arc",
+    "side drilling": "drilling from the side with a driven tool",
+    "side tapping": "tapping from the side with a driven tool",
+    "side boring": "boring from the side with a driven tool",
+}
+LIVE_MODES = {
+    "polar interpolation": "polar interpolation off",
+    "cylindrical interpolation": "cylindrical interpolation",
+    "polygon turning": "polygon turning off",
+    "opposite turret": "opposite turret off",
+}
+
+
+def carry_out(run: Run, block: Block) -> None:
+    """Carry out one block; whatever is wrong with it is written down, never raised."""
+    line, label = run.flow.place(block)
+    run.words = BlockWords(line, label, block.text, ())
+    run.called_name = block.called
+    run.block_in_doubt = False
+    if block.fault is not None:
+        skip_unreadable(run, block)
+        return
+    strokes = run.strokes
+    try:
+        if block.statement is not None:
+            carry_out_statement(run, block)
+            return
+        run.words = read_block(run, block)
+        act(run, run.words)
+    except ExpressionFault as fault:
+        _no_value(run, block, str(fault))
+    except NotUnderstood as problem:
+        _not_understood(run, problem)
+    except CycleFault as fault:
+        run.cycle_fault(fault)
+        run.not_audited(fault.message)
+    if run.strokes == strokes and run.words.values:
+        run.compensated.blank_blocks += 1
+    elif run.strokes != strokes:
+        calls.call_after_motion(run)
+
+
+def read_block(run: Run, block: Block) -> BlockWords:
+    """The words of a block with their expressions worked out; a word with a null value is left out."""
+    line, label = run.flow.place(block)
+    values = []
+    unknown: set[int] = set()
+    for word in block.words:
+        if isinstance(word.value, Number):
+            values.append(Value(word.letter, word.value, word.start, word.end))
+            continue
+        increment = least_increment(run.control, inch=run.state.inch) / (25.4 if run.state.inch else 1.0)
+        whole = choice(run.control, "round_in_word") == "integer"
+        number = calculator(run, increment=None if whole else increment).value(word.value)
+        if run.variables.unknown:
+            unknown |= run.variables.take_unknown()
+        elif number is None:
+            run.remark(
+                "unknown-variable", f"{word.letter} has a variable without a value: the word is left out", word.letter
+            )
+        else:
+            values.append(Value(word.letter, Number(number, True, f"{number:.10g}"), word.start, word.end))
+    words = ready_words(line, label, block.text, values, run.system)
+    if unknown:
+        run.words = words
+        run.remark("unknown-variable", f"the block needs {named(unknown)}, which only the control knows")
+        raise NotUnderstood(f"{named(unknown)} is not known", "unknown-variable")
+    return words
+
+
+def act(run: Run, words: BlockWords) -> None:
+    """Let every word of the block take effect, in the order of a control."""
+    if run.state.data_input and not words.calls("data input end"):
+        return
+    _check_repeats(run, words)
+    if not _takes_all_words(words):
+        for phase in (Phase.READING, Phase.FEED, Phase.SPEED, Phase.TOOL, Phase.START, Phase.MODE):
+            _take_effect(run, words, phase)
+        _check_codes(run, words)
+        _set_motion(run, words)
+    _act_once_or_move(run, words)
+    _take_effect(run, words, Phase.AFTER)
+
+
+def _takes_all_words(words: BlockWords) -> bool:
+    """Macro calls take every letter as an argument."""
+    return words.calls("macro call") or words.calls("modal macro call")
+
+
+def _take_effect(run: Run, words: BlockWords, phase: Phase) -> None:
+    for function in dict.fromkeys(words.functions):
+        entry = MODAL.get(function)
+        if entry is not None and entry[0] is phase:
+            entry[1](run, words)
+    if phase in WORDS:
+        WORDS[phase](run, words)
+    if _takes_all_words(words):
+        return
+    for code in dict.fromkeys(words.m_codes):
+        found = M_CODES.get(code)
+        if found is not None and found[0] is phase:
+            found[1](run, words)
+        elif found is None and phase is Phase.START and code not in WITHOUT_EFFECT:
+            note_unknown(run, code)
+
+
+def _check_codes(run: Run, words: BlockWords) -> None:
+    """Codes that are not followed: fatal for the block when it carries axis words, else said."""
+    for code in words.unknown_codes:
+        elsewhere = known_elsewhere(run.system, code)
+        known = "; " + ", ".join(f"in system {s} it is {name}" for s, name in elsewhere.items()) if elsewhere else ""
+        text = f"{code_text(code)} is not a code of system {run.system}{known}"
+        run.remark("unknown-g", text, "G")
+        if has_axis_words(words):
+            run.state.motion = None
+            raise NotUnderstood(text)
+    for function in words.functions:
+        if function in LIVE_MODES:
+            run.state.live_mode = None if words.integer("C") == 0 else function
+        elif function in LIVE_MODES.values():
+            run.state.live_mode = None
+        if function in NOT_TURNING:
+            run.state.motion = None
+            raise NotUnderstood(f"{NOT_TURNING[function]} is not followed", "unsupported", ("G",))
+
+
+def _set_motion(run: Run, words: BlockWords) -> None:
+    """The motion code in force; one of its group ends a drilling cycle."""
+    for function in words.functions:
+        group = group_of(function)
+        if group == "motion":
+            if function != run.state.motion:
+                run.state.stored.pop(function, None)
+            run.state.motion, run.state.drilling = function, None
+        elif group == "drilling":
+            run.state.drilling = function if function in DRILLING_CYCLES else None
+
+
+def _act_once_or_move(run: Run, words: BlockWords) -> None:
+    once = [function for function in words.functions if function in ACTIONS]
+    if once:
+        ACTIONS[once[-1]](run, words)
+        return
+    live = [value.letter for value in words.values if value.letter in LIVE_LETTERS]
+    if not has_axis_words(words) and not live:
+        return
+    if (live and run.state.drilling is None) or run.state.live_mode is not None:
+        _refuse_live(run, live)
+    motion = run.state.drilling or run.state.motion
+    if motion is None:
+        raise NotUnderstood("which motion code is in force is not known here", "position-unknown")
+    MOTIONS[motion](run, words)
+
+
+def _refuse_live(run: Run, live: list[str]) -> None:
+    if live == ["C"] and run.state.motion == "feed" and choice(run.control, "corner_words") == "comma or plain":
+        return
+    what = run.state.live_mode or "the axis of " + " and ".join(dict.fromkeys(live))
+    raise NotUnderstood(f"{what}: milling and second spindles are not followed", "axis-not-modelled", tuple(live))
+
+
+def _not_understood(run: Run, problem: NotUnderstood) -> None:
+    run.close_chain()
+    if problem.topic is not None:
+        run.remark(problem.topic, f"the block is not audited: {problem.reason}", *problem.words)
+    if not has_axis_words(run.words) and problem.topic == "unknown-variable" and not run.words.functions:
+        return
+    run.not_audited(problem.reason)
+    if problem.topic != "position-unknown":
+        _restate(run)
+
+
+def _restate(run: Run) -> None:
+    """Behind a block that was not followed only what it states in absolute words is known."""
+    from auditor.interpret.motion import millimetres, x_factor
+
+    state, words = run.state, run.words
+    plain = state.motion in ("rapid", "feed") and not words.unknown_codes
+    x, z = millimetres(run, words, "X"), millimetres(run, words, "Z")
+    absolute = plain and (run.system == "A" or state.absolute)
+    moved_r, moved_z = words.has("X", "U"), words.has("Z", "W")
+    if moved_r or not plain:
+        state.r = x * x_factor(run) + state.shift.r if absolute and x is not None else None
+    if moved_z or not plain:
+        state.z = z + state.shift.z if absolute and z is not None else None
+
+
+def _no_value(run: Run, block: Block, reason: str) -> None:
+    run.remark("arithmetic", reason)
+    if block.statement is None and block.words:
+        run.settle()
+        run.not_audited(reason)
+        run.state.forget_position()
+    else:
+        run.flow_in_doubt = True
+
+
+def _check_repeats(run: Run, words: BlockWords) -> None:
+    """Words and code groups that stand twice: the last acts, some controls refuse."""
+    if _takes_all_words(words):
+        return
+    seen: set[str] = set()
+    for value in words.values:
+        if value.letter in seen and value.letter not in "GM":
+            run.remark("word-repeated", f"{value.letter} stands twice in the block: the last one acts", value.letter)
+        seen.add(value.letter)
+    groups = [group_of(function) for function in words.functions]
+    for group in dict.fromkeys(groups):
+        if group != "one-shot" and groups.count(group) > 1:
+            run.remark("code-group-repeated", f"two codes of the {group} group in one block: the last one acts", "G")
+    most = int(amount(run.control, "m_codes_per_block"))
+    if len(words.m_codes) > most:
+        run.remark(
+            "m-codes-many",
+            f"{len(words.m_codes)} M codes in one block, the control takes {most}",
+            "M",
+            value=float(len(words.m_codes)),
+            limit=float(most),
+        )

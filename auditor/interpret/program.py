@@ -1,0 +1,107 @@
+"""A whole program carried out on paper: Blocks in, Moves out."""
+
+from __future__ import annotations
+
+from auditor.declared.model import Job
+from auditor.interpret.execute import carry_out
+from auditor.interpret.flow import EndlessError, Flow
+from auditor.interpret.library import Library
+from auditor.interpret.log import Log
+from auditor.interpret.moves import Interpretation, Remark
+from auditor.interpret.run import Run
+from auditor.interpret.speeds import check_limited
+from auditor.interpret.state import State
+from auditor.interpret.words import BlockWords
+from auditor.parse.blocks import Block, ProgramText
+
+_NOTE_TOPICS = {
+    "encoding": "encoding",
+    "control-bytes": "encoding",
+    "after-end": "text-after-end",
+    "comment": "comment-unclosed",
+    "paren": "paren",
+    "blank-in-number": "blank-in-number",
+    "semicolon": "semicolon",
+}
+
+
+def interpret(text: ProgramText, job: Job) -> Interpretation:
+    """Carry out a program as the declared control would, with what was noticed on the way.
+
+    Nothing in the program raises: what cannot be followed is listed in ``not_audited``.
+    """
+    log = Log()
+    for note in text.notes:
+        log.add_remark(Remark(_NOTE_TOPICS[note.topic], note.line, None, note.message))
+    run = _run_for(text, job, log)
+    _work_through(run)
+    _close(run)
+    return Interpretation(
+        moves=tuple(log.moves),
+        remarks=tuple(log.remarks),
+        not_audited=tuple(log.not_audited.values()),
+        motion_lines=frozenset(log.motion_lines),
+        system=run.system,
+        units="in" if run.state.inch else "mm",
+        assumptions=tuple(log.assumptions.values()),
+        dwell_time=log.dwell_time,
+        ended=run.ended,
+        tools_called=tuple(log.tools_called.items()),
+    )
+
+
+def _run_for(text: ProgramText, job: Job, log: Log) -> Run:
+    start = job.machine.tool_change
+    state = State(inch=job.control.units == "in")
+    if start is not None:
+        state.z, state.r = start
+    flow = Flow(Library(text), job.control)
+    return Run(job, job.control.system, state, log, BlockWords(1, None, "", ()), flow)
+
+
+def _work_through(run: Run) -> None:
+    main = run.flow.library.main()
+    if main is None:
+        return
+    run.flow.begin(main)
+    try:
+        while run.ended is None:
+            block = run.flow.next_block()
+            if block is None:
+                if not _end_of_text(run):
+                    break
+            elif not _skipped(run, block):
+                carry_out(run, block)
+    except EndlessError:
+        reason = "the program does not come to an end here: what lies behind was not reached"
+        run.remark("endless", reason)
+        run.log.add_not_audited(run.words.line, run.words.text, reason)
+
+
+def _end_of_text(run: Run) -> bool:
+    """A program that ends without M30, M2 or M99; True when its caller goes on."""
+    run.settle()
+    run.remark("end-missing", f"{run.flow.frame.program.title} ends without M30, M2 or M99")
+    if len(run.flow.frames) == 1:
+        return False
+    if run.flow.frame.macro:
+        run.variables.leave()
+    run.flow.back(drop_repeats=True)
+    return True
+
+
+def _skipped(run: Run, block: Block) -> bool:
+    """Whether block skip leaves the block out."""
+    if block.skip is None:
+        return False
+    out = run.control.block_skip
+    if run.log.first_time("block-skip"):
+        how = "left out" if out else "carried out"
+        run.log.add_remark(Remark("block-skip", block.line, block.label, f"blocks that begin with / are {how} here"))
+    return out
+
+
+def _close(run: Run) -> None:
+    """What is only known at the end."""
+    run.settle()
+    check_limited(run)
