@@ -85,8 +85,8 @@ def answer(task: Task, views: Views) -> Answer:
 
 
 def _audit(task: Task) -> Outcome:
-    if task.fault is not None:
-        return Unreadable(str(task.program), (task.fault,))
+    if task.faults:
+        return Unreadable(str(task.program), task.faults)
     from auditor.audit import audit_program
 
     try:

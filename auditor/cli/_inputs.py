@@ -4,16 +4,14 @@ from __future__ import annotations
 
 import os
 import re
-import tomllib
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 
-from auditor.errors import Fault, UsageError
+from auditor.declared.jobs import JOB_SUFFIX, PROGRAM_SUFFIXES, job_beside, program_of
+from auditor.errors import DeclarationError, Fault, UsageError
 
-JOB_SUFFIX = ".job.toml"
 SHOP_FILE = "shop.toml"
-PROGRAM_SUFFIXES = (".nc", ".cnc", ".tap", ".txt")
 
 # A .txt may be anything: it counts as a program when one of its first lines looks like a block.
 _BLOCK = re.compile(rb"^\s*(%\s*$|[O:]\d+|/?\s*(N\d+\s*)?[GMTSXZ][-+.]?\d)", re.IGNORECASE | re.MULTILINE)
@@ -22,11 +20,11 @@ _LOOK_AT = 2048
 
 @dataclass(frozen=True, slots=True)
 class Task:
-    """One program to audit; ``fault`` says why that is impossible, if it is."""
+    """One program to audit; ``faults`` say why that is impossible, if it is."""
 
     program: Path
     job: Path | None = None
-    fault: Fault | None = None
+    faults: tuple[Fault, ...] = ()
 
     def files(self) -> Iterator[Path]:
         """Every file the audit may read: none of them may be overwritten."""
@@ -60,30 +58,50 @@ def _tasks_of(path: Path, job: Path | None) -> list[Task]:
         return _folder(path)
     if not path.exists():
         missing = Fault("no such file", file=str(path), wanted="a program, a job file or a folder")
-        return [Task(path, fault=missing)]
+        return [Task(path, faults=(missing,))]
     if is_job:
-        return [Task(program_of(path), path)]
-    return [_declared(path, job if job is not None else job_of(path))]
+        return [_of_job(path)]
+    return [_declared(path, job or job_beside(path) or _job_naming(path))]
+
+
+def _of_job(job: Path) -> Task:
+    """The program a job file is about; where the file does not tell, the one of its stem, and why it does not."""
+    try:
+        return Task(program_of(job), job)
+    except DeclarationError as problem:
+        beside = (job.with_name(job.name.removesuffix(JOB_SUFFIX) + suffix) for suffix in PROGRAM_SUFFIXES)
+        return Task(next((path for path in beside if path.is_file()), job), job, problem.faults)
+
+
+def _job_naming(program: Path) -> Path | None:
+    """The job file of another stem in the same folder that names the program."""
+
+    def names(job: Path) -> bool:
+        try:
+            return program_of(job).samefile(program)
+        except (DeclarationError, OSError):
+            return False
+
+    return next(filter(names, sorted(program.parent.glob(f"*{JOB_SUFFIX}"))), None)
 
 
 def _declared(program: Path, job: Path | None) -> Task:
     if job is not None:
         return Task(program, job)
     beside = program.stem + JOB_SUFFIX
-    return Task(program, fault=Fault(
-        "not declared: there is no job file for this program", file=str(program),
-        wanted=f"{beside} beside it, or --job FILE; `turnaudit draft {program.name}` writes one to fill in",
-    ))
+    wanted = f"{beside} beside it, or --job FILE; `turnaudit draft {program.name}` writes one to fill in"
+    missing = Fault("not declared: there is no job file for this program", file=str(program), wanted=wanted)
+    return Task(program, faults=(missing,))
 
 
 def _folder(folder: Path) -> list[Task]:
     files = sorted(_files_below(folder))
-    declared = [Task(program_of(path), path) for path in files if path.name.endswith(JOB_SUFFIX)]
+    declared = [_of_job(path) for path in files if path.name.endswith(JOB_SUFFIX)]
     known = {os.path.realpath(task.program) for task in declared}
     others = [_declared(path, None) for path in files if _is_program(path) and os.path.realpath(path) not in known]
     if not declared and not others:
         wanted = f"a job file, or a file ending in {', '.join(PROGRAM_SUFFIXES)}"
-        return [Task(folder, fault=Fault("no program in this folder", file=str(folder), wanted=wanted))]
+        return [Task(folder, faults=(Fault("no program in this folder", file=str(folder), wanted=wanted),))]
     return sorted(declared + others, key=lambda task: (task.program.parent, task.program.name))
 
 
@@ -103,37 +121,6 @@ def _is_program(path: Path) -> bool:
         except OSError:
             return False
     return suffix in PROGRAM_SUFFIXES
-
-
-def job_of(program: Path) -> Path | None:
-    """The job file beside a program: its own stem, else the one that names it."""
-    beside = program.with_name(program.stem + JOB_SUFFIX)
-    if beside.is_file():
-        return beside
-    naming = (path for path in sorted(program.parent.glob(f"*{JOB_SUFFIX}")) if _named(path) == program.name)
-    return next(naming, None)
-
-
-def program_of(job: Path) -> Path:
-    """The program a job file is about: the one it names, else the file of its stem beside it.
-
-    A file that does not exist is named all the same; reading it will say so.
-    """
-    named = _named(job)
-    if named is not None:
-        return job.parent / named
-    stem = job.name.removesuffix(JOB_SUFFIX)
-    candidates = [job.with_name(stem + suffix) for suffix in PROGRAM_SUFFIXES]
-    return next((path for path in candidates if path.is_file()), candidates[0])
-
-
-def _named(job: Path) -> str | None:
-    """The ``program`` entry of a job file; None when there is none or the file cannot be read as such."""
-    try:
-        named = tomllib.loads(job.read_text(encoding="utf-8")).get("program")
-    except (OSError, ValueError):
-        return None
-    return named if isinstance(named, str) else None
 
 
 def shard(found: Sequence[Task], part: tuple[int, int]) -> list[Task]:

@@ -11,7 +11,7 @@ import click
 from auditor.cli._talk import tell
 
 if TYPE_CHECKING:
-    from auditor.declared.materials import Entry, Figure
+    from auditor.declared.material_files import Entry, Figure
     from auditor.declared.model import Material
 
 _WIDTH = 80

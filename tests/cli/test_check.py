@@ -24,8 +24,8 @@ Check = Callable[..., Result]
 
 def outcome_of(task: Task) -> Outcome:
     """An audit made by hand, by the program's name."""
-    if task.fault is not None:
-        return Unreadable(str(task.program), (task.fault,))
+    if task.faults:
+        return Unreadable(str(task.program), task.faults)
     path, name = str(task.program), task.program.stem
     if name.startswith("broken"):
         fault = Fault("negative", file=str(task.job), key="workpiece.diameter", found="-1 mm", wanted="more than 0 mm")
@@ -163,6 +163,22 @@ def test_program_finds_the_job_file_that_names_it(check: Check) -> None:
     declare("stop.nc", program="stop.nc")
     Path("stop.job.toml").rename("other.job.toml")
     assert verdicts(check("stop.nc", "--format", "json")) == [("stop.nc", "stop")]
+
+
+def test_broken_job_file_is_told_once_with_its_program(check: Check) -> None:
+    declare("f/stop.nc")
+    Path("f/stop.job.toml").write_text("machine = = 3\n", encoding="utf-8")
+    for path in ("f", "f/stop.job.toml"):
+        result = check(path, "--format", "json")
+        assert verdicts(result) == [("stop.nc", "unreadable")]
+        assert "stop.job.toml" in result.stderr
+
+
+def test_job_file_without_a_program_is_told(check: Check) -> None:
+    declare("gone.nc")
+    Path("gone.nc").unlink()
+    result = check("gone.job.toml", "--format", "json")
+    assert (result.exit_code, verdicts(result)) == (2, [("gone.job.toml", "unreadable")])
 
 
 def test_same_program_named_twice_is_audited_once(check: Check) -> None:
