@@ -297,8 +297,9 @@ def rapid_time(distance: ArrayLike, rapid: ArrayLike, acceleration: ArrayLike = 
     a = np.asarray(acceleration, dtype=np.float64)
     if np.any(a <= 0.0):
         raise ValueError("acceleration must be greater than zero")
-    full = d * a >= v**2
-    return np.asarray(np.where(d == 0.0, 0.0, np.where(full, d / v + v / a, 2.0 * np.sqrt(d / a))))
+    travel = np.where(d == 0.0, 1.0, d)
+    full = travel * a >= v**2
+    return np.asarray(np.where(d == 0.0, 0.0, np.where(full, travel / v + v / a, 2.0 * np.sqrt(travel / a))))
 
 
 def surface_speed_acceleration(vc: ArrayLike, feed: ArrayLike, radius: ArrayLike) -> Floats:

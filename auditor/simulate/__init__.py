@@ -1,1 +1,5 @@
 """Moves to Samples: the tool's outline, the remaining stock, engagement."""
+
+from auditor.simulate.follow import simulate
+
+__all__ = ["simulate"]

@@ -115,9 +115,14 @@ class Follower:
             number = self._edge_number(edge)
             self.parts.append(
                 Stretch(
-                    move.index, number, piece,
-                    stretches.position, stretches.low, stretches.high, stretches.stretch,
-                )  # fmt: skip
+                    move=move.index,
+                    edge=number,
+                    piece=piece,
+                    position=stretches.position,
+                    low=stretches.low,
+                    high=stretches.high,
+                    stretch=stretches.stretch,
+                )
             )
             deepest = max(deepest, float((stretches.high - stretches.low).max()))
             nodes = outline.nodes(piece.direction)[0]

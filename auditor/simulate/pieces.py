@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 from dataclasses import dataclass
+from itertools import pairwise
 
 from auditor.declared.model import Point
 from auditor.interpret.moves import Move
@@ -35,7 +36,7 @@ def pieces(move: Move) -> Iterator[Piece]:
         return
     points = [start, *_arc_points(move, start, end), end] if move.centre is not None else [start, end]
     offset = 0.0
-    for begin, finish in zip(points[:-1], points[1:], strict=True):
+    for begin, finish in pairwise(points):
         piece = straight(begin, finish, offset)
         if piece is not None:
             offset += piece.length

@@ -1,0 +1,71 @@
+"""How far the remaining, stepped stock gives way at the cut."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+import numpy as np
+from shapely.geometry.base import BaseGeometry
+
+from auditor.declared.model import Job, Workholding
+from auditor.mechanics.bending import Supports, stepped_compliance
+from auditor.predict.loads import Floats
+from auditor.simulate.samples import Samples
+from auditor.simulate.stock import boundary_segments
+
+SLICES = 8  # per stretch between two nodes of the outline: a cone is taken as that many steps
+SHORTEST = 1e-6  # mm
+
+
+def compliances(samples: Samples, stock_before: Mapping[int, BaseGeometry], job: Job) -> Floats:
+    """Radial give of the work at every stretch, mm/N, from the stock that stood before each move; shape (m,)."""
+    give = np.zeros(len(samples.move))
+    supports = _supports(job.workholding)
+    moves, first = np.unique(samples.move, return_index=True)
+    for move, rows in zip(moves, np.split(np.arange(len(give)), first[1:]), strict=True):
+        stock = stock_before.get(int(move))
+        sections = None if stock is None else sections_of(stock, -job.workholding.stick_out)
+        if sections is None:
+            continue
+        ends, moments = sections
+        at = np.clip(samples.z[rows] + job.workholding.stick_out, 0.0, ends[-1])
+        give[rows] = stepped_compliance(ends, moments * job.workpiece.material.modulus, at, supports)
+    return give
+
+
+def _supports(workholding: Workholding) -> Supports:
+    return Supports("chuck" if workholding.kind == "collet" else workholding.kind)
+
+
+def sections_of(stock: BaseGeometry, jaw_face: float) -> tuple[Floats, Floats] | None:
+    """Ends of the sections from the jaw face, mm, and their second moments of area, mm4; None when nothing stands out.
+
+    Cones and curves are cut into steps of equal length; bores and undercuts count as what is missing.
+    """
+    begin, end = boundary_segments(stock)
+    nodes = np.unique(np.concatenate(([jaw_face], begin[:, 0])))
+    nodes = nodes[nodes >= jaw_face]
+    nodes = nodes[np.append(True, np.diff(nodes) > SHORTEST)]
+    if len(nodes) < 2:
+        return None
+    steps = np.linspace(0.0, 1.0, SLICES, endpoint=False)
+    ends = np.append((nodes[:-1, None] + np.diff(nodes)[:, None] * steps).ravel(), nodes[-1])
+    middle = 0.5 * (ends[:-1] + ends[1:])
+    moments = _second_moments(begin, end, middle)
+    solid = moments > 0.0
+    if not solid.any():
+        return None
+    return ends[1:][solid] - jaw_face, moments[solid]
+
+
+def _second_moments(begin: Floats, end: Floats, z: Floats) -> Floats:
+    """Second moment of area of the ring section at each z: sides facing outwards add, those facing inwards take."""
+    left, right = np.minimum(begin[:, 0], end[:, 0]), np.maximum(begin[:, 0], end[:, 0])
+    crossed = (left < z[:, None]) & (z[:, None] < right)
+    width = end[:, 0] - begin[:, 0]
+    share = (z[:, None] - begin[:, 0]) / np.where(width == 0.0, 1.0, width)
+    radius = begin[:, 1] + share * (end[:, 1] - begin[:, 1])
+    # counter-clockwise: the outer surface runs towards -z
+    sign = np.where(width < 0.0, 1.0, -1.0)
+    moments: Floats = np.pi / 4.0 * np.sum(np.where(crossed, sign * radius**4, 0.0), axis=1)
+    return moments
