@@ -7,6 +7,7 @@ import shutil
 import pytest
 
 from auditor.declared import materials
+from auditor.declared.material_files import GROUPS, PROVENANCES, Entry, Figure
 from auditor.errors import DeclarationError
 from tests.declared.published import by_id, rows
 
@@ -18,10 +19,10 @@ WITH_PAIR = [item for item in ENTRIES if item.material.kc11 is not None]
 
 
 def name_of(item: object) -> str:
-    return item.material.name if isinstance(item, materials.Entry) else ""
+    return item.material.name if isinstance(item, Entry) else ""
 
 
-def figure(item: materials.Entry, key: str) -> materials.Figure:
+def figure(item: Entry, key: str) -> Figure:
     (found,) = [figure for figure in item.figures if figure.key == key]
     return found
 
@@ -72,7 +73,7 @@ def pairs_of(row: str) -> set[tuple[float, float]]:
     return own | others
 
 
-def is_carbide_row(item: materials.Entry, row: str) -> bool:
+def is_carbide_row(item: Entry, row: str) -> bool:
     return item.material.kf11 is not None and figure(item, "kc11").row == row
 
 
@@ -129,7 +130,7 @@ def test_scatter_and_reference_rake_follow_the_kind_of_source(item):
 
 
 def test_every_group_of_iso_513_is_there():
-    assert {item.material.group for item in ENTRIES} == set(materials.GROUPS)
+    assert {item.material.group for item in ENTRIES} == set(GROUPS)
     assert len(ENTRIES) >= 60
 
 
@@ -138,7 +139,7 @@ def test_every_figure_has_a_source(item):
     assert {"modulus", "density", "chips"} <= {figure.key for figure in item.figures}
     for part in (*item.figures, *item.others):
         assert part.source.strip()
-        assert part.provenance in materials.PROVENANCES
+        assert part.provenance in PROVENANCES
 
 
 # ---- names
@@ -181,7 +182,7 @@ def test_suggestions_are_few_and_exist():
 def test_names_are_unique_and_sorted_by_group():
     names = materials.names()
     assert len(set(names)) == len(names)
-    groups = [materials.GROUPS.index(item.material.group) for item in ENTRIES]
+    groups = [GROUPS.index(item.material.group) for item in ENTRIES]
     assert groups == sorted(groups)
 
 
@@ -226,6 +227,7 @@ def test_a_name_used_twice_is_an_error(folder):
     [
         ('"1659 N/mm^2"', '"1659 MPa"', "kc11"),
         ('"1659 N/mm^2"', "1659", "kc11"),
+        ('"1659 N/mm^2"', '"16590 N/mm^2"', "the range of metals"),
         ("mc = 0.21", "mc = 0.79", "1 - mc"),
         ("mc = 0.21\n", "", "pair"),
         ("mc = 0.21", 'mc = "0.21"', "number expected"),
@@ -240,6 +242,8 @@ def test_a_name_used_twice_is_an_error(folder):
         ('provenance = "confirmed"', 'provenance = "hearsay"', "provenance"),
         ('["15 m/min", "80 m/min"]', '["80 m/min", "15 m/min"]', "built_up_edge"),
         ('at = "0.2 mm"\n', "", "disagreements"),
+        ('group = "P"', 'group = "P"\nwork_hardening = "no"', "work_hardening"),
+        ("[[disagreements]]", "[[weights]]", "unknown key"),
         ('name = "C45"', "name = ", "c45.toml"),
     ],
 )
@@ -256,3 +260,9 @@ def test_all_faults_of_a_file_are_told_at_once(folder):
     text = faults_of(folder)
     assert "kc11" in text
     assert "chips" in text
+
+
+def test_sources_that_are_no_tables(folder):
+    text = (folder / "c45.toml").read_text(encoding="utf-8").partition("[[sources]]")[0]
+    (folder / "c45.toml").write_text(text + "sources = 3\n", encoding="utf-8")
+    assert "tables expected" in faults_of(folder)
