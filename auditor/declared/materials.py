@@ -7,7 +7,6 @@ folder is read for lists, suggestions and the test that no two materials share a
 
 from __future__ import annotations
 
-import difflib
 import re
 from functools import lru_cache
 from pathlib import Path
@@ -59,11 +58,13 @@ def nearest(name: str) -> tuple[str, ...]:
     >>> nearest("42CrMo5")[0]
     '42CrMo4'
     """
+    from difflib import get_close_matches  # only after a slip of the pen
+
     wanted = key_of(name)
     owners = {key: item.material.name for item in entries() for key in _keys(item)}
     numbers = set(re.findall(r"\d{3,}", name))  # "brand name 718" means Alloy 718
     alike = [owner for key, owner in owners.items() if numbers & set(re.findall(r"\d{3,}", key))]
-    alike += [owners[key] for key in difflib.get_close_matches(wanted, owners, n=8, cutoff=0.6)]
+    alike += [owners[key] for key in get_close_matches(wanted, owners, n=8, cutoff=0.6)]
     alike += [owner for key, owner in owners.items() if len(wanted) > 2 and wanted in key]
     return tuple(dict.fromkeys(alike))[:5]
 
