@@ -13,10 +13,12 @@ from auditor.checks._judging import cutting_moves, rows_of
 from auditor.declared.model import Tool, ToolKind
 from auditor.findings import Run
 from auditor.interpret.moves import Kind, Move
+from auditor.mechanics.bending import diameter_error as bent_diameter
 
 Floats = NDArray[np.float64]
 
 SPRING_PASS = 0.02  # mm; a cut shallower than this takes off what an earlier one left standing, no chip is meant
+SMALLEST_DIAMETER = 1.0  # mm; bending at the axis itself makes no diameter
 SIDEWAYS: tuple[ToolKind, ...] = ("turning", "boring")
 
 
@@ -110,6 +112,9 @@ def tolerance_third(run: Run) -> float | None:
 def diameter_error(run: Run, cut: Cut) -> float:
     """Diameter the work comes out larger by, mm: 2y + 2 y_t^2/d, with y the push-off and y_t the bend downwards."""
     loads = run.prediction.loads
-    with np.errstate(divide="ignore", invalid="ignore"):
-        down = np.where(loads.r != 0.0, loads.bend_tangential**2 / np.abs(loads.r), 0.0)
-    return cut.largest(2.0 * loads.bend + down)
+    aside, down = loads.bend[cut.rows], loads.bend_tangential[cut.rows]
+    known = np.isfinite(aside) & np.isfinite(down)
+    if not known.any():
+        return math.nan
+    across = np.maximum(2.0 * np.abs(loads.r[cut.rows]), SMALLEST_DIAMETER)
+    return float(bent_diameter(aside[known], down[known], across[known]).max())

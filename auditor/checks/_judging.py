@@ -181,7 +181,7 @@ def origin(run: Run, limits: Sequence[Limit]) -> str:
     told = []
     for limit in limits:
         value = threshold(run, limit)
-        source = limit.provenance if value == limit.default else "set in this job"
+        source = "set in this job" if limit.name in run.job.limits else limit.provenance
         unit = f" {limit.unit}" if limit.unit else ""
         told.append(f"{limit.meaning} {value:g}{unit} ({source})")
     return f"Threshold: {'; '.join(told)}."

@@ -61,8 +61,9 @@ def _rubbing(run: Run, cut: Cut) -> Finding | None:
     least = threshold(run, LIMITS[0]) * rounding
     row = cut.row_of_largest(loads.chip_max)
     if thickest < least:
-        message = f"The edge rubs instead of cutting: the thickest chip is {figure(thickest * 1000)} um, the smallest " \
-                  f"a {figure(rounding * 1000)} um edge can form {figure(least * 1000)} um. {origin(run, LIMITS)}"
+        message = f"The edge rubs instead of cutting: the thickest chip is {figure(thickest * 1000)} um, and an edge " \
+                  f"rounded by {figure(rounding * 1000)} um forms none under {figure(least * 1000)} um. " \
+                  f"{origin(run, LIMITS)}"
         return finding_at(run, CHECK, Level.REVIEW, row, message, value=thickest, limit=least, unit="mm",
                           words=("F",), remedy="More feed or depth, or a sharper edge.")
     equivalent = cut.largest(loads.chip_equivalent)
@@ -81,6 +82,6 @@ def _on_land(run: Run, cut: Cut) -> Finding | None:
     assumed = any(item.about == f"tools.{tool.number}.land_width" for item in run.job.assumptions)
     level = Level.REVIEW if tool.breaker_declared and not assumed else Level.NOTE
     message = f"The chip never leaves the land: the thickest is {figure(thickest, 3)} mm, the land " \
-              f"{figure(tool.land_width, 2)} mm wide, so the chip-breaker is not reached in any cut of {tool.name} (model)."
+              f"{figure(tool.land_width, 2)} mm wide, so no cut of {tool.name} reaches the chip-breaker (model)."
     return finding_at(run, CHECK, level, cut.row_of_largest(loads.chip_max), message, value=thickest, limit=least,
                       unit="mm", words=("F",), remedy=f"A chip of at least {figure(least, 3)} mm, or a narrower land.")

@@ -28,6 +28,7 @@ from auditor.checks._words import x_word
 from auditor.declared.model import Workholding
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Move
+from auditor.mechanics.clamping import permitted_speed
 
 CHECK = "spindle-speed"
 LIMITS = (
@@ -57,8 +58,9 @@ def permitted_by_grip(holding: Workholding, share: float) -> float | None:
     """The speed, rpm, at which flying jaws have taken ``share`` of the grip; None without the declarations."""
     if holding.grip_inside or holding.grip_force is None or holding.jaw_mass is None or holding.jaw_radius is None:
         return None
-    inertia = holding.jaws * holding.jaw_mass * holding.jaw_radius / 1000.0  # kg m
-    return math.sqrt(share * holding.grip_force / inertia) * 30.0 / math.pi if inertia else None
+    return float(
+        permitted_speed(holding.grip_force, 0.0, holding.jaw_mass, holding.jaw_radius, holding.jaws, safety=1.0 / share)
+    )
 
 
 def _speed(run: Run, move: Move) -> float | None:

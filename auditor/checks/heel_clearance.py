@@ -1,0 +1,175 @@
+"""Heel clearance: does the flank below the edge rub on the work?
+
+What
+    Works out the clearance that is left under the edge in each cut: the insert's own, plus what the tilt of the
+    pocket gives, less what the feed, an edge off centre height and a bore's curvature take.
+
+Why
+    Without clearance the flank stands on the work. The tool is pushed away, squeals and burns; it wears in
+    minutes, and no feed or speed cures it. The classic cases: an insert without clearance in a pocket that does
+    not tilt, and a thick insert in a small bore.
+
+Formula and source
+    Normal clearance = insert letter (ISO 1832) less pocket rake (ISO 3002-1: wedge, rake and clearance of one plane
+    add up to 90 degrees). The feed turns the cutting direction by atan(f / pi d), which the main edge loses; an
+    edge above centre loses asin(2 e / d) outside and gains it in a bore. In a bore of radius R an insert of
+    thickness v needs atan((R - sqrt(R^2 - v^2)) / v), or its heel touches. Stop: nothing left. Review: under
+    least_clearance (common practice). Near the centre, where feeding inwards takes all clearance, nothing is
+    judged. Where the tilt of the pocket is not known no stop rests on it.
+
+Remedy
+    An insert with clearance (letters B, C, P, D), a pocket that tilts more, the edge on centre height, or for a
+    bore a thinner insert.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+import numpy as np
+from numpy.typing import NDArray
+
+from auditor.checks._cuts import Cut, cuts
+from auditor.checks._judging import origin, threshold
+from auditor.checks._words import figure, finding_at
+from auditor.declared.iso_inserts import decode_insert
+from auditor.declared.model import Tool, ToolKind
+from auditor.errors import TurnauditError
+from auditor.findings import Finding, Level, Limit, NotJudged, Run
+from auditor.mechanics.clearance import (
+    bore_heel_clearance,
+    feed_angle,
+    height_effect,
+    normal_clearance,
+    orthogonal_clearance,
+)
+from auditor.mechanics.rake import normal_rake
+
+CHECK = "heel-clearance"
+LIMITS = (Limit("least_clearance", 3.0, "deg", "common practice", "working clearance under"),)
+KINDS: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "parting")
+CENTRE = 5.0  # mm of diameter within which a tool that feeds to the centre is not judged
+
+Floats = NDArray[np.float64]
+
+
+@dataclass(frozen=True, slots=True)
+class Left:
+    """Clearance left at the worst place of a cut, and what was taken from it there; deg."""
+
+    row: int
+    angle: float
+    by_insert: float
+    by_pocket: float
+    by_feed: float
+    by_height: float
+
+
+def judge(run: Run) -> Iterator[Finding | NotJudged]:
+    """Cuts whose flank rubs or nearly does."""
+    for cut in cuts(run, KINDS):
+        left = _left(run, cut)
+        if left is not None and left.angle < threshold(run, LIMITS[0]):
+            yield _finding(run, cut, left)
+        elif cut.tool.kind == "boring":
+            finding = _judge_heel(run, cut)
+            if finding is not None:
+                yield finding
+
+
+def _left(run: Run, cut: Cut) -> Left | None:
+    """The worst place of the cut; None when all of it lies in the centre."""
+    loads, tool = run.prediction.loads, cut.tool
+    pocket = float(normal_rake(tool.pocket_rake, tool.pocket_inclination))
+    normal = float(normal_clearance(tool.insert_clearance, pocket))
+    own = float(orthogonal_clearance(normal, tool.pocket_inclination))
+    diameter = 2.0 * np.abs(loads.r[cut.rows])
+    judged = loads.depth[cut.rows] > 0.0
+    if _to_centre(cut):
+        judged &= diameter >= CENTRE
+    if not judged.any():
+        return None
+    by_feed, by_height = _taken(cut, np.nan_to_num(loads.feed[cut.rows]), diameter)
+    left = np.where(judged, own - by_feed - by_height, np.inf)
+    worst = int(np.argmin(left))
+    return Left(cut.rows.start + worst, float(left[worst]), tool.insert_clearance, own - tool.insert_clearance,
+                float(by_feed[worst]), float(by_height[worst]))
+
+
+def _to_centre(cut: Cut) -> bool:
+    return cut.move.end is not None and abs(cut.move.end.r) < CENTRE / 2.0 and _crosses(cut)
+
+
+def _crosses(cut: Cut) -> bool:
+    """Whether the tool travels along X rather than along Z."""
+    start, end = cut.move.start, cut.move.end
+    return start is not None and end is not None and abs(end.r - start.r) > abs(end.z - start.z)
+
+
+def _taken(cut: Cut, feed: Floats, diameter: Floats) -> tuple[Floats, Floats]:
+    """What feed and height take, deg: the feed acts on the main edge, the height in the plane across the axis."""
+    tool = cut.tool
+    _, gained = height_effect(tool.centre_height, diameter, internal=tool.kind == "boring")
+    by_height = -np.asarray(gained)
+    square = np.sin(np.radians(tool.cutting_edge_angle if tool.kind in ("turning", "boring") else 90.0))
+    by_feed = np.asarray(feed_angle(feed, diameter)) * square
+    if _crosses(cut):
+        return by_feed, by_height * square
+    # along Z the feed acts on the main edge and the height at the tip: the worse of the two places
+    at_tip = by_height > by_feed
+    return np.where(at_tip, 0.0, by_feed), np.where(at_tip, by_height, 0.0)
+
+
+def _finding(run: Run, cut: Cut, left: Left) -> Finding:
+    assumed = any(item.about == f"tools.{cut.tool.number}.clearance_angle" for item in run.job.assumptions)
+    certain = cut.tool.pocket_known and not assumed
+    level = Level.STOP if left.angle <= 0.0 and certain else Level.REVIEW
+    shares = f"insert {figure(left.by_insert)}, pocket {left.by_pocket:+.1f}, feed {-left.by_feed:+.1f}, height " \
+             f"{-left.by_height:+.1f} deg"
+    fate = "The flank rubs on the work" if left.angle <= 0.0 else "The flank nearly rubs on the work"
+    message = f"{fate}: {figure(left.angle)} deg of working clearance are left ({shares}). {origin(run, LIMITS)}"
+    if not certain:
+        message += " The tilt of the pocket is assumed."
+    return finding_at(run, CHECK, level, left.row, message, value=left.angle, limit=threshold(run, LIMITS[0]),
+                      unit="deg", remedy=_remedy(cut.tool))
+
+
+def _remedy(tool: Tool) -> str:
+    if tool.centre_height:
+        return "Set the edge on centre height."
+    if tool.insert_clearance == 0.0:
+        return "An insert with clearance (letters B, C, P, D), or a pocket tilted to about -6 deg."
+    return "An insert with more clearance."
+
+
+def _judge_heel(run: Run, cut: Cut) -> Finding | None:
+    """A flat flank, as deep as the insert is thick, inside the bore it cuts."""
+    loads, tool = run.prediction.loads, cut.tool
+    thick = thickness(tool)
+    radii = np.abs(loads.r[cut.rows])[loads.depth[cut.rows] > 0.0]
+    if thick is None or _crosses(cut) or not len(radii) or radii.min() <= thick:
+        return None
+    radius = float(radii.min())
+    pocket = float(normal_rake(tool.pocket_rake, tool.pocket_inclination))
+    has = float(normal_clearance(tool.insert_clearance, pocket))
+    needs = float(bore_heel_clearance(radius, thick))
+    if has >= needs:
+        return None
+    message = f"The heel of the {figure(thick, 2)} mm thick insert touches the bore of {figure(2 * radius)} mm: it " \
+              f"needs {figure(needs)} deg of clearance and has {figure(has)} (geometry)."
+    level = Level.STOP if tool.pocket_known else Level.NOTE if tool.insert_clearance else Level.REVIEW
+    if not tool.pocket_known:
+        message += " The tilt of the bar's pocket is not declared; small bars tilt to buy this clearance."
+    return finding_at(run, CHECK, level, cut.row_of_largest(loads.depth), message, value=has, limit=needs, unit="deg",
+                      remedy="An insert with more clearance or less thickness.")
+
+
+def thickness(tool: Tool) -> float | None:
+    """Thickness of the insert, mm, from its code; None when there is none."""
+    if tool.insert is None:
+        return None
+    try:
+        return decode_insert(tool.insert).thickness
+    except TurnauditError:
+        return None

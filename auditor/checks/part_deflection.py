@@ -1,0 +1,104 @@
+"""Part deflection: how far does the work bend away from the tool?
+
+What
+    Works out how far the tool pushes the work aside, on what is left of the stock at that moment, as the error of
+    the diameter that stays: on finishing moves against the tolerance, on roughing moves against the allowance
+    left for finishing.
+
+Why
+    Work that stands out far gives way. It comes back behind the tool and comes out thick, most at its free end;
+    measuring at the chuck shows nothing. In roughing the bend takes the finishing allowance away on one side.
+
+Formula and source
+    Stepped beam in chuck, chuck and tailstock, or between centres (Roark); error of the diameter 2y + 2 y_t^2 / d
+    with y by the passive and y_t by the cutting force. The passive force is known to 50 %. Stop: the expected
+    error is over the tolerance, or over 2 x part_bend where the job sets it. Review: the band is, or the expected
+    error is over bend_share of the tolerance (common practice: a third). Bending is judged however small the
+    force, but never below 2 um, where no figure means anything (common practice).
+
+Remedy
+    The feed or depth at which the same law meets the tolerance; a smaller nose radius; a tailstock.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+import numpy as np
+
+from auditor.checks._cuts import Cut, cuts, diameter_error
+from auditor.checks._judging import THRUST_SCATTER, threshold
+from auditor.checks._words import finding_at, micro
+from auditor.findings import Finding, Level, Limit, NotJudged, Run
+from auditor.mechanics.bending import CERTAINTY
+
+CHECK = "part-deflection"
+LIMITS = (
+    Limit("part_bend", 0.05, "mm", "common practice", "push-off of the work"),
+    Limit("bend_share", 1.0 / 3.0, "", "common practice", "share of the tolerance that bending may take"),
+)
+
+
+def judge(run: Run) -> Iterator[Finding | NotJudged]:
+    """Cuts that bend the work too far."""
+    allowed = allowed_error(run)
+    if allowed is None:
+        yield NotJudged(CHECK, "neither workpiece.diameter_tolerance nor limits.part_bend is declared")
+        return
+    for cut in cuts(run):
+        error = diameter_error(run, cut)
+        if not error > CERTAINTY:
+            continue
+        if run.simulation.final_surface[cut.move.index]:
+            finding = _finishing(run, cut, error, allowed)
+        else:
+            finding = _roughing(run, cut, error)
+        if finding is not None:
+            yield finding
+
+
+def allowed_error(run: Run) -> float | None:
+    """Error of the diameter that the job allows, mm: its own part_bend on the radius, else the tolerance."""
+    if "part_bend" in run.job.limits:
+        return 2.0 * threshold(run, LIMITS[0])
+    return run.job.workpiece.diameter_tolerance
+
+
+def _finishing(run: Run, cut: Cut, error: float, allowed: float) -> Finding | None:
+    low, high = run.prediction.band(error, THRUST_SCATTER)
+    share = threshold(run, LIMITS[1]) * allowed
+    if error > allowed:
+        level, limit = Level.STOP, allowed
+    elif high > allowed or error > share:
+        level, limit = Level.REVIEW, allowed if high > allowed else share
+    else:
+        return None
+    message = f"The work bends away and comes out {micro(error)} too large ({micro(low)} to {micro(high)}); " \
+              f"{micro(allowed)} is allowed on the diameter, and bending should take a third of it at most."
+    row = cut.row_of_largest(run.prediction.loads.bend)
+    return finding_at(run, CHECK, level, row, message, value=error, band=(low, high), limit=limit, unit="mm",
+                      remedy="A smaller nose radius, less depth, a freer-cutting edge or a tailstock.")
+
+
+def _roughing(run: Run, cut: Cut, error: float) -> Finding | None:
+    """Whether the bend of an outside roughing cut is larger than what it leaves for finishing."""
+    loads = run.prediction.loads
+    row = cut.row_of_largest(loads.bend)
+    left = float(loads.r[row]) - _final_radius(run, float(loads.z[row]))
+    if cut.tool.kind != "turning" or not 0.0 < 2.0 * left < error:
+        return None
+    message = f"The work bends away by {micro(error)} on the diameter while roughing; only {micro(2.0 * left)} is " \
+              "left on it for finishing."
+    return finding_at(run, CHECK, Level.REVIEW, row, message, value=error, limit=2.0 * left, unit="mm",
+                      remedy="More allowance, or less depth in the last roughing cut.")
+
+
+def _final_radius(run: Run, z: float) -> float:
+    """Outer radius of the part as the program leaves it, at a length; infinite where there is none."""
+    import shapely
+
+    final = run.simulation.final
+    if final.is_empty:
+        return np.inf
+    across = final.intersection(shapely.LineString([(z, 0.0), (z, final.bounds[3] + 1.0)]))
+    return float(across.bounds[3]) if not across.is_empty else np.inf

@@ -1,0 +1,80 @@
+"""Rake too blunt: does a negative edge bend slender work out of tolerance?
+
+What
+    Looks at the moves that leave the finished surface on slender work, thin walls and long boring bars, where the
+    chip meets a negative effective rake and the predicted bending takes more than a third of the tolerance.
+
+Why
+    A negative edge pushes. On a stiff part that only costs power; on a slender one, or at the end of a long bar,
+    it bends the work or the bar away, and the part comes out thick, tapered or chattered.
+
+Formula and source
+    Effective rake: land and chip-breaker face weighted by their share of the contact (model, about 3 degrees
+    uncertain). Bending: the beam formulas on what is left of the stock, plus the bar's own. The thrust falls about
+    4.5 % for each degree of rake (Klocke, 4 to 5 %). Slender: stick-out over diameter above slender_chuck, with
+    tailstock or centres above slender_tailstock; bar overhang over diameter above long_bar; wall over diameter
+    under thin_wall. Common practice. Review.
+
+Remedy
+    The effective rake at which the same law brings the bending to a third of the tolerance.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from auditor.checks._bending import bar_push_off, slenderness, wall_share
+from auditor.checks._cuts import Cut, cuts, diameter_error, tolerance_third
+from auditor.checks._judging import threshold
+from auditor.checks._words import angle, figure, finding_at, micro
+from auditor.findings import Finding, Level, Limit, NotJudged, Run
+
+CHECK = "rake-too-blunt"
+LIMITS = (
+    Limit("slender_chuck", 3.0, "", "common practice", "length over diameter in the chuck alone"),
+    Limit("slender_tailstock", 8.0, "", "common practice", "length over diameter with tailstock or centres"),
+    Limit("long_bar", 3.0, "", "common practice", "overhang over diameter of a boring bar"),
+    Limit("thin_wall", 0.1, "", "common practice", "wall over diameter"),
+)
+THRUST_PER_DEGREE = 0.045
+
+
+def judge(run: Run) -> Iterator[Finding | NotJudged]:
+    """Finishing cuts whose blunt rake costs the tolerance."""
+    third = tolerance_third(run)
+    if third is None:
+        yield NotJudged(CHECK, "workpiece.diameter_tolerance is not declared")
+        return
+    for cut in cuts(run):
+        if not run.simulation.final_surface[cut.move.index]:
+            continue
+        row = cut.row_of_largest(run.prediction.loads.bend)
+        rake = float(run.prediction.loads.rake[row])
+        weak = _weakness(run, cut, row)
+        error = diameter_error(run, cut) + 2.0 * bar_push_off(run, cut)
+        if rake < 0.0 and weak is not None and error > third:
+            yield _finding(run, row, rake, weak, error, third)
+
+
+def _weakness(run: Run, cut: Cut, row: int) -> str | None:
+    """What makes this cut soft, in words; None when it is stiff."""
+    chuck, tailstock, bar, wall = (threshold(run, limit) for limit in LIMITS)
+    ratio = slenderness(run, row)
+    held_both = run.job.workholding.kind in ("chuck+tailstock", "centres")
+    if ratio > (tailstock if held_both else chuck):
+        return f"the work stands out {figure(ratio)} diameters"
+    tool = cut.tool
+    if tool.kind == "boring" and tool.overhang and tool.bar_diameter and tool.overhang / tool.bar_diameter > bar:
+        return f"the bar stands out {figure(tool.overhang / tool.bar_diameter)} diameters"
+    share = wall_share(run, cut, row)
+    if share is not None and share < wall:
+        return f"the wall is {figure(share, 2)} of the diameter"
+    return None
+
+
+def _finding(run: Run, row: int, rake: float, weak: str, error: float, third: float) -> Finding:
+    steps = (1.0 - third / error) / THRUST_PER_DEGREE
+    message = f"The blunt edge (effective rake {angle(rake)}) pushes where it matters: {weak}, and the diameter " \
+              f"comes out {micro(error)} too large, more than a third of the tolerance (common practice)."
+    return finding_at(run, CHECK, Level.REVIEW, row, message, value=error, limit=third, unit="mm",
+                      remedy=f"A freer-cutting edge with about {angle(rake + steps)} of effective rake.")
