@@ -112,6 +112,24 @@ def test_figure_band_limit_and_way_out_are_told() -> None:
     assert "Way out: Within the limit at F0.22" in text
 
 
+def test_figure_and_unit_stay_on_one_line() -> None:
+    for length in range(60, 76):
+        told = "x" * length + " needs 4460 N and 15.7 kW at 250 m/min"
+        lines = shown(builders.audit([builders.power_finding(message=told)])).splitlines()
+        assert not [line for line in lines if line.strip().startswith(("N ", "kW", "m/min"))]
+        assert "4460 N" in "".join(lines)
+
+
+def test_only_a_figure_with_a_band_is_called_predicted() -> None:
+    text = shown(builders.audit([builders.power_finding(value=0.45, band=None, limit=0.4, unit="mm/rev")]))
+    assert "    0.45 mm/rev, limit 0.40 mm/rev" in text
+
+
+def test_reasons_for_not_judging_are_gathered_by_check() -> None:
+    items = [NotJudged("axis-thrust", "machine.thrust.x is not declared"), NotJudged("axis-thrust", "nor is z")]
+    assert "axis-thrust: machine.thrust.x is not declared; nor is z" in shown(builders.audit(not_judged=items))
+
+
 def test_equal_notes_come_once_with_all_their_lines() -> None:
     notes = [builders.note_finding(line=line) for line in (6, 8, 9)]
     text = shown(builders.audit(notes))

@@ -96,13 +96,13 @@ def _underline(quoted: str, marked: tuple[Span, ...], sign: str) -> str:
 
 
 def _figure(paper: Paper, finding: Finding) -> None:
-    """The predicted figure, its band, its limit, the gauge and the share."""
+    """The figure, its band where it is a prediction, its limit, the gauge and the share."""
     if finding.value is None:
         return
-    words = f"predicted {figure(finding.value, finding.unit)}"
+    words = figure(finding.value, finding.unit)
     if finding.band is not None:
         low, high = (_bare(edge, finding.unit) for edge in finding.band)
-        words += f" ({low} to {high})"
+        words = f"predicted {words} ({low} to {high})"
     if finding.limit is None:
         paper.paragraph(words, margin=_MARGIN)
         return

@@ -69,8 +69,11 @@ def _not_judged(paper: Paper, items: Sequence[NotJudged]) -> None:
     if not items:
         return
     _title(paper, "Not judged")
+    reasons: dict[str, list[str]] = {}
     for item in by_weight(items):
-        paper.paragraph(f"{item.check}: {item.why}", margin=2, hang=4)
+        reasons.setdefault(item.check, []).append(item.why)
+    for check, whys in reasons.items():
+        paper.paragraph(f"{check}: {'; '.join(whys)}", margin=2, hang=4)
 
 
 def _assumptions(paper: Paper, assumptions: Sequence[Assumption]) -> None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from io import StringIO
 
 from rich.cells import cell_len, set_cell_size
@@ -22,6 +23,10 @@ COLOURS = {
     "stop": "bold red", "incomplete": "bold magenta", "review": "bold yellow", "note": "cyan", "clear": "bold green",
     "unreadable": "bold red",
 }
+
+# A figure and its unit stay on one line: the blank between them is held by a sign that no clean text contains.
+_UNIT = re.compile(r"(?<=\d) (?=(?:N m|N|kN|kW|mm|um|m|m/min|mm/rev|rpm|deg|min|s|%)(?![\w/]))")
+_HELD = "\ue000"
 
 
 def signs() -> str:
@@ -60,11 +65,12 @@ class Paper:
         text = Text()
         for piece in pieces:
             words, style = (piece, "") if isinstance(piece, str) else piece
-            text.append(self.clean(words), style=style)
+            text.append(_UNIT.sub(_HELD, self.clean(words)), style=style)
         further = margin if hang is None else hang
         lines = text.wrap(self._console, self.view.width - max(margin, further))
         for number, line in enumerate(lines):
             line.rstrip()
+            line.plain = line.plain.replace(_HELD, " ")
             self._write(Text(" " * (further if number else margin)) + line)
 
     def row(self, *pieces: Piece) -> None:
