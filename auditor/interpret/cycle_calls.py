@@ -8,7 +8,7 @@ from auditor.declared.control_settings import SETTINGS, setting
 from auditor.declared.model import Point
 from auditor.interpret import cycles
 from auditor.interpret.cutting_conditions import check_cut
-from auditor.interpret.cycles.call import CycleCall, Expansion, Stroke
+from auditor.interpret.cycles.call import CycleCall, CycleFault, Expansion, Stroke
 from auditor.interpret.moves import Kind
 from auditor.interpret.profiles import Profile, carry_out_profile
 from auditor.interpret.reference import leave_compensation
@@ -38,7 +38,11 @@ def multiple_cycle(run: Run, words: BlockWords) -> None:
     if run.state.position is None:
         raise NotUnderstood(run.unknown_start(), "position-unknown")
     run.settle()
-    profile = carry_out_profile(run, words, finishing=name == "finishing")
+    try:
+        profile = carry_out_profile(run, words, finishing=name == "finishing")
+    except CycleFault:
+        _leave_profile_out(run, words, name)
+        raise
     try:
         _carry_out(run, words, name, profile)
         _check_start(run, words, name)
@@ -124,7 +128,7 @@ def _write(run: Run, name: str, expansion: Expansion, profile: Profile | None) -
 def _one_stroke(run: Run, stroke: Stroke) -> None:
     start = run.state.position
     assert start is not None
-    run.strokes += 1
+    run.begin_stroke()
     own = run.dressed(replace(_shifted(stroke, run.state.shift, 1), line=run.words.line, block=run.words.label))
     if stroke.reversed_spindle and own.spindle is not None:
         own = replace(own, spindle=replace(own.spindle, direction=-own.spindle.direction))
@@ -147,6 +151,16 @@ def _check_start(run: Run, words: BlockWords, name: str) -> None:
             "P",
             "Q",
         )
+
+
+def _leave_profile_out(run: Run, words: BlockWords, name: str) -> None:
+    """A roughing cycle that fails leaves its profile behind: at full depth it is no move of the program."""
+    if name == "finishing":
+        return
+    frame = run.flow.frame
+    numbers = (words.integer("P"), words.integer("Q"))
+    places = [place for number in numbers if number is not None for place in frame.program.places.get(number, ())]
+    frame.index = max([frame.index, *(place + 1 for place in places)])
 
 
 def _go_on_behind(run: Run, name: str, profile: Profile) -> None:

@@ -8,6 +8,7 @@ from auditor.interpret.cycles.call import CycleFault
 from auditor.interpret.expressions import ExpressionFault
 from auditor.interpret.mcodes import WITHOUT_EFFECT, note_unknown
 from auditor.interpret.motion import has_axis_words
+from auditor.interpret.numbers import check_numbers
 from auditor.interpret.registry import ACTIONS, M_CODES, MODAL, MOTIONS, WORDS, Phase
 from auditor.interpret.run import NotUnderstood, Run
 from auditor.interpret.statements import calculator, carry_out_statement, named
@@ -26,6 +27,7 @@ NOT_TURNING = {
     "side tapping": "tapping from the side with a driven tool",
     "side boring": "boring from the side with a driven tool",
 }
+ARC_MOTIONS = frozenset({"arc clockwise", "arc counter-clockwise"})
 LIVE_MODES = {
     "polar interpolation": "polar interpolation off",
     "cylindrical interpolation": "cylindrical interpolation",
@@ -82,7 +84,7 @@ def read_block(run: Run, block: Block) -> BlockWords:
                 "unknown-variable", f"{word.letter} has a variable without a value: the word is left out", word.letter
             )
         else:
-            values.append(Value(word.letter, Number(number, True, f"{number:.10g}"), word.start, word.end))
+            values.append(Value(word.letter, Number(number, True, f"{number:.10g}"), word.start, word.end, True))
     words = ready_words(line, label, block.text, values, run.system)
     if unknown:
         run.words = words
@@ -96,6 +98,7 @@ def act(run: Run, words: BlockWords) -> None:
     if run.state.data_input and not words.calls("data input end"):
         return
     _check_repeats(run, words)
+    check_numbers(run, words)
     if not _takes_all_words(words):
         for phase in (Phase.READING, Phase.FEED, Phase.SPEED, Phase.TOOL, Phase.START, Phase.MODE):
             _take_effect(run, words, phase)
@@ -165,7 +168,8 @@ def _act_once_or_move(run: Run, words: BlockWords) -> None:
         ACTIONS[once[-1]](run, words)
         return
     live = [value.letter for value in words.values if value.letter in LIVE_LETTERS]
-    if not has_axis_words(words) and not live:
+    circle = run.state.motion in ARC_MOTIONS and words.has("I", "K")
+    if not has_axis_words(words) and not live and not circle:
         return
     if (live and run.state.drilling is None) or run.state.live_mode is not None:
         _refuse_live(run, live)

@@ -49,7 +49,7 @@ class Flow:
         self.library = library
         self.frames: list[Frame] = []
         self.modal_call: ModalCall | None = None
-        self.called: set[int] = set()  # id-free: indices of programs of the file that ran
+        self.started: list[Program] = []
         self._from_start = choice(control, "sequence_search") == "from start"
         self._jumps = 0
         self._steps = 0
@@ -62,6 +62,7 @@ class Flow:
     def begin(self, program: Program) -> None:
         """Start with the main program."""
         self.frames.append(Frame(program))
+        self.started.append(program)
 
     def next_block(self) -> Block | None:
         """The next block of the running program, None at its textual end."""
@@ -118,6 +119,8 @@ class Flow:
             raise EndlessError
         self._count()
         line, label = place
+        if program not in self.started:
+            self.started.append(program)
         self.frames.append(Frame(program, first, repeats, first, macro, line, label))
 
     def back(self, *, to: int | None = None, drop_repeats: bool = False) -> bool:

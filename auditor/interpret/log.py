@@ -41,6 +41,10 @@ class Log:
         self.said.add(key)
         return True
 
+    def has_been(self, *key: object) -> bool:
+        """Whether ``first_time`` was asked before."""
+        return key in self.said
+
     def add_not_audited(self, line: int, text: str, reason: str) -> None:
         """Count a motion block as not audited; a line that runs again keeps its first reason."""
         self.motion_lines.add(line)

@@ -2,7 +2,12 @@
 
 from __future__ import annotations
 
-from auditor.declared.model import Job
+from collections.abc import Sequence
+from dataclasses import replace
+
+from auditor.declared.model import Control, Job
+from auditor.interpret.control_values import known_control_values
+from auditor.interpret.detection import Mark, against, detect, marks_of
 from auditor.interpret.execute import carry_out
 from auditor.interpret.flow import EndlessError, Flow
 from auditor.interpret.library import Library
@@ -55,8 +60,33 @@ def _run_for(text: ProgramText, job: Job, log: Log) -> Run:
     state = State(inch=job.control.units == "in")
     if start is not None:
         state.z, state.r = start
-    flow = Flow(Library(text), job.control)
-    return Run(job, job.control.system, state, log, BlockWords(1, None, "", ()), flow)
+    job = replace(job, control=_with_system(text, job.control, log))
+    run = Run(job, job.control.system, state, log, BlockWords(1, None, "", ()), Flow(Library(text), job.control))
+    run.variables.control_values = known_control_values(run)
+    return run
+
+
+def _with_system(text: ProgramText, control: Control, log: Log) -> Control:
+    """The control with the code system that the program is read in."""
+    marks = marks_of(text.blocks)
+    if control.system_declared:
+        foreign = [mark for mark in against(marks, control.system)]
+        if foreign:
+            message = f"{_listed(foreign)}: marks of another code system than the declared {control.system}"
+            log.add_remark(Remark("code-systems-mixed", foreign[0].line, None, message, ("G",)))
+        return control
+    found = detect(marks, control.system)
+    log.assume("control.system", found.system, found.why)
+    if found.conflict:
+        message = f"read as system {found.system}, but {_listed(found.conflict)} belong to another code system"
+        remedy = "declare control.system"
+        log.add_remark(Remark("code-system-conflict", found.conflict[0].line, None, message, ("G",), remedy=remedy))
+    return replace(control, system=found.system)
+
+
+def _listed(marks: Sequence[Mark]) -> str:
+    texts = dict.fromkeys(f"{mark.text} (line {mark.line})" for mark in marks)
+    return ", ".join(list(texts)[:4])
 
 
 def _work_through(run: Run) -> None:
@@ -105,3 +135,27 @@ def _close(run: Run) -> None:
     """What is only known at the end."""
     run.settle()
     check_limited(run)
+    _check_arc_sense(run)
+    _note_uncalled(run)
+
+
+def _check_arc_sense(run: Run) -> None:
+    """Arcs by centre that mostly turn the long way round: the control may swap G2 and G3."""
+    sweeps = run.log.arc_sweeps
+    long_ones = sum(sweep > 180.0 + 1e-6 for sweep in sweeps)
+    if len(sweeps) >= 2 and 2 * long_ones > len(sweeps):
+        run.remark(
+            "arc-sense-suspect",
+            f"{long_ones} of {len(sweeps)} arcs turn through more than half a circle",
+            remedy='some controls swap G2 and G3: control.arcs = "mirrored"',
+        )
+
+
+def _note_uncalled(run: Run) -> None:
+    """Programs in the file that nothing called."""
+    uncalled = [program for program in run.flow.library.programs if program not in run.flow.started]
+    for program in uncalled:
+        if any(block.words for block in program.blocks):
+            first = program.blocks[0]
+            message = f"{program.title} in this file was not called and is not audited"
+            run.log.add_remark(Remark("program-not-called", first.line, first.label, message))

@@ -166,7 +166,7 @@ class Run:
         start = self.state.position
         if start is None:
             raise NotUnderstood(self.unknown_start(), "position-unknown")
-        self.strokes += 1
+        self.begin_stroke()
         stroke = self.dressed(stroke)
         run = self.compensated
         if self.state.compensation != "off" and stroke.kind is not Kind.THREAD:
@@ -179,10 +179,19 @@ class Run:
             run.tip = None
         self.state.z, self.state.r = stroke.end
 
+    def begin_stroke(self) -> None:
+        """A motion begins: what has to be settled before the first, and counted for each."""
+        self.strokes += 1
+        if self.collected is None:
+            self.log.motion_lines.add(self.words.line)
+        if not self.units_said and self.control.units is None and self.log.first_time("units-missing"):
+            self.remark("units-missing", "neither the program nor the job says mm or inch: read as mm")
+            self.log.assume("control.units", "mm", "not declared, and no unit code before the first motion")
+
     def rapid_partly_known(self, end_z: float | None, end_r: float | None) -> None:
         """A rapid whose start or end is not wholly known: written axis by axis."""
         self.settle()
-        self.strokes += 1
+        self.begin_stroke()
         stroke = self.dressed(Stroke(Kind.RAPID, Point(end_z or 0.0, end_r or 0.0)), end_r)
         self.write(self.state.z, self.state.r, stroke, (end_z, end_r))
         self.state.z, self.state.r = end_z, end_r

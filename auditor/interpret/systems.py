@@ -187,7 +187,7 @@ def function_of(system: System, code: float) -> str | None:
     Example
     -------
     >>> function_of("A", 90), function_of("B", 90), function_of("A", 95)
-    ('single turning', 'absolute', None)
+    ('turning cycle', 'absolute', None)
     """
     return SYSTEMS[system].get(canonical_code(code))
 

@@ -30,8 +30,9 @@ TOPICS: dict[str, frozenset[str]] = {
     }),
     "program-flow": frozenset({
         "end-missing", "program-not-called", "subprogram-missing", "target-missing", "endless", "repeats-main",
-        "number-repeated", "return-through-point", "word-repeated", "code-group-repeated", "m-codes-many", "travel-limit",
-        "spindle-left-on", "coolant", "dwell", "block-skip", "stop-unattended", "preset", "work-zero-changed", "local-shift", "data-input",
-        "home-unknown", "paren", "semicolon", "speed-in-thread", "tool-in-motion", "safe-start",
+        "number-repeated", "return-through-point", "word-repeated", "code-group-repeated", "m-codes-many",
+        "travel-limit", "spindle-left-on", "coolant", "dwell", "block-skip", "stop-unattended", "preset",
+        "work-zero-changed", "local-shift", "data-input", "home-unknown", "paren", "semicolon", "speed-in-thread",
+        "tool-in-motion", "safe-start",
     }),
 }

@@ -5,11 +5,13 @@ from __future__ import annotations
 import re
 
 from auditor.interpret.run import Run
+from auditor.interpret.systems import function_of, group_of
 from auditor.parse.blocks import Block
 
-_COMMENT = re.compile(r"\([^)]*\)")
-_MAY_MOVE = re.compile(r"[XZUWYVCHB]|M0*1?98|G0*6[56]", re.IGNORECASE)
-_MAY_CHANGE = re.compile(r"[FSTGM]", re.IGNORECASE)
+_COMMENT = re.compile(r"\([^)]*\)?")
+_MAY_MOVE = re.compile(r"[XZUWYVCHB]|M0*1?98|G0*6[56]")
+_MAY_CHANGE = re.compile(r"[FSTM]")
+_CODE = re.compile(r"G(?=(?P<code>[0-9]{1,3}(?:\.[0-9])?)?)")
 
 
 def skip_unreadable(run: Run, block: Block) -> None:
@@ -18,12 +20,28 @@ def skip_unreadable(run: Run, block: Block) -> None:
     assert fault is not None
     hint = f" ({fault.hint})" if fault.hint else ""
     run.settle()
-    topic = "comment-unclosed" if "comment" in fault.message and "(" in block.text else "syntax"
-    run.remark(topic, f"{fault.message}{hint}")
+    unclosed = "never closed" in fault.message and "comment" in fault.message
+    run.remark("comment-unclosed" if unclosed else "syntax", f"{fault.message}{hint}")
     run.log.add_not_audited(run.words.line, block.text, f"the block cannot be read: {fault.message}")
-    text = _COMMENT.sub("", block.text)
+    text = _COMMENT.sub("", block.text).upper()
+    state = run.state
+    state.motion = _motion_behind(run, text)
     if _MAY_MOVE.search(text):
-        run.state.forget_position()
-        run.stock_in_doubt = True
+        state.forget_position()
+        run.stock_in_doubt = run.stock_in_doubt or state.motion != "rapid"
     if _MAY_CHANGE.search(text):
-        run.state.forget_readings()
+        state.spindle.certain = state.feed.certain = state.tool.certain = False
+
+
+def _motion_behind(run: Run, text: str) -> str | None:
+    """The motion code in force behind the block, when all its G codes can still be made out."""
+    motion = run.state.motion
+    for found in _CODE.finditer(text):
+        function = None if found["code"] is None else function_of(run.system, float(found["code"]))
+        if function is None:
+            return None
+        if group_of(function) == "motion":
+            motion = function
+        elif group_of(function) == "drilling":
+            return None
+    return motion

@@ -22,6 +22,7 @@ class Value:
     number: Number
     start: int
     end: int
+    computed: bool = False  # from an expression, not written as a number
 
 
 @dataclass(frozen=True, slots=True)
