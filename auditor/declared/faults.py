@@ -112,13 +112,15 @@ def explain_unknown(key: str, value: object, model: type[BaseModel], place: Plac
         message = f"a {own_kind} tool has no use for this key" if own_kind != "stop" else "a bar stop cuts nothing"
         return place.fault(message, key, found=shown(value), wanted=f"only with kind {_either(kinds)}")
     close = nearest(key, model.model_fields)
-    if close is not None:
-        return place.fault("unknown key", key, found=key, wanted=close)
+    if close is not None and isinstance(value, dict):
+        return place.fault("unknown table", key, found=f"[{key}]", wanted=f"[{close}]")
     owners = [f"[{name}]" for name, other in _OWNERS.items() if key in other.model_fields]
     if kinds:
         owners.append("[tools.N]")
-    if owners and place.prefix:
+    if owners:
         return place.fault("unknown key here", key, found=key, wanted=f"{key} in {' or '.join(owners)}")
+    if close is not None:
+        return place.fault("unknown key", key, found=key, wanted=close)
     return place.fault("unknown key", key, found=key, wanted="one of " + ", ".join(sorted(model.model_fields)))
 
 

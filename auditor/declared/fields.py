@@ -83,7 +83,7 @@ class ReadsPair:
     def wanted(self) -> str:
         """What a person should write."""
         one, two = units.EXAMPLE[self.first.dimension], units.EXAMPLE[self.second.dimension]
-        return f'["{one}", "{two}"]' if one != two else "two of them in square brackets, the smaller first"
+        return f'a pair like ["{one}", "{two}"]'
 
     def read(self, value: object) -> tuple[float, float]:
         """Both values in the program's units."""

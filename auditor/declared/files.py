@@ -56,7 +56,7 @@ class _ShopFile(Table):
 
 def job_schema() -> JsonSchemaValue:
     """The JSON Schema of a job file: a name of a shop entry may stand where a table may."""
-    schema = _JobFile.model_json_schema()
+    schema = _tidy(_JobFile.model_json_schema())
     properties = schema["properties"]
     for key in ("control", "machine", "workholding"):
         properties[key] = {"anyOf": [_NAME, properties[key]]}
@@ -73,4 +73,21 @@ def job_schema() -> JsonSchemaValue:
 
 def shop_schema() -> JsonSchemaValue:
     """The JSON Schema of a shop file."""
-    return {"$schema": _DIALECT, **_ShopFile.model_json_schema(), "title": "turnaudit shop file"}
+    return {"$schema": _DIALECT, **_tidy(_ShopFile.model_json_schema()), "title": "turnaudit shop file"}
+
+
+def _tidy(schema: Any) -> Any:
+    """Without the null that TOML has not, and without titles that only repeat the key."""
+    if isinstance(schema, list):
+        return [_tidy(part) for part in schema]
+    if not isinstance(schema, dict):
+        return schema
+    choices = [part for part in schema.get("anyOf", ()) if part != {"type": "null"}]
+    if len(choices) == 1:
+        kept = {key: part for key, part in schema.items() if key not in ("anyOf", "default", "title")}
+        return _tidy({**choices[0], **kept})
+    return {
+        key: {name: _tidy(part) for name, part in value.items()} if key in ("properties", "$defs") else _tidy(value)
+        for key, value in schema.items()
+        if not (key == "title" and isinstance(value, str)) and (key, value) != ("default", None)
+    }

@@ -34,6 +34,7 @@ from auditor.errors import DeclarationError, Fault
 Row = TypeVar("Row", bound=BaseModel)
 
 _TOOL_NUMBER = re.compile(r"[1-9][0-9]{0,3}")
+_LARGEST_LIMIT = 1e12
 _LIMIT_DIMENSIONS = ("length", "angle", "force", "power", "speed", "rotation", "time")
 
 
@@ -206,7 +207,7 @@ class JobReader:
     def _limit(self, value: object, place: Place) -> LimitValue | None:
         wanted = 'a number, or a quantity like "0.02 mm"'
         if isinstance(value, int | float) and not isinstance(value, bool):
-            if 0 <= value < float("inf"):
+            if 0 <= value < _LARGEST_LIMIT:
                 return LimitValue(float(value), "number", shown(value))
             self.faults.append(place.fault("out of bounds", found=shown(value), wanted="a number not below zero"))
             return None

@@ -15,8 +15,8 @@ JOB_SUFFIX = ".job.toml"
 PROGRAM_SUFFIXES = (".nc", ".cnc", ".tap", ".txt")
 
 
-def load_job(path: str | Path) -> Job:
-    """Read a job file and the shop entries it names.
+def load_job(path: str | Path, program: str | Path | None = None) -> Job:
+    """Read a job file and the shop entries it names; ``program`` stands over the one the job file means.
 
     Raises
     ------
@@ -26,7 +26,7 @@ def load_job(path: str | Path) -> Job:
     from auditor.declared.job_reader import JobReader  # pydantic is woken only when there is a file to read
 
     toml = read_toml(Path(path))
-    return JobReader(toml).job(str(path), _program(toml))
+    return JobReader(toml).job(str(path), Path(program) if program is not None else _program(toml))
 
 
 def job_beside(program_path: str | Path) -> Path | None:

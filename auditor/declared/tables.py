@@ -6,7 +6,7 @@ import datetime
 from itertools import pairwise
 from typing import Annotated, Any, Literal
 
-from pydantic import Field, create_model, model_validator
+from pydantic import ConfigDict, Field, create_model, model_validator
 
 from auditor.declared.control_settings import SETTINGS, ControlSetting
 from auditor.declared.fields import (
@@ -90,6 +90,8 @@ class RapidTable(Table):
 
 class MachineTable(Table):
     """[machine]: spindle, axes, reference points."""
+
+    model_config = ConfigDict(json_schema_extra={"anyOf": [{"required": ["power"]}, {"required": ["power_curve"]}]})
 
     speed_limit: Rotation
     power: Power | None = None
@@ -191,6 +193,8 @@ class MaterialTable(Table):
 
 class WorkpieceTable(Table):
     """[workpiece]: the raw stock and what is asked of the part."""
+
+    model_config = ConfigDict(json_schema_extra={"anyOf": [{"required": ["diameter"]}, {"required": ["profile"]}]})
 
     material: MaterialTable | None = None  # a name is looked up before this table is read
     diameter: Length | None = None

@@ -14,8 +14,9 @@ from auditor.errors import DeclarationError, Fault
 
 _PART = r"""(?:[A-Za-z0-9_-]+|"[^"\n]*"|'[^'\n]*')"""
 _DOTTED = rf"{_PART}(?:\s*\.\s*{_PART})*"
-_HEADER = re.compile(rf"\s*\[\[?\s*({_DOTTED})\s*\]\]?")
+_HEADER = re.compile(rf"\s*\[\[?\s*({_DOTTED})\s*\]\]?\s*(?:#.*)?$")
 _KEY = re.compile(rf"\s*({_DOTTED})\s*=")
+_DEEPEST = 5  # tables inside tables that a job or shop file can have
 _PLACE_IN_MESSAGE = re.compile(r" \(at line (\d+), column \d+\)")
 
 
@@ -46,7 +47,7 @@ def read_toml(path: Path) -> TomlFile:
     text = _decoded(data, path)
     try:
         content = tomllib.loads(text)
-    except tomllib.TOMLDecodeError as error:
+    except ValueError as error:  # TOMLDecodeError, and what a number of thousands of digits raises
         raise DeclarationError(_syntax_fault(str(error), path, text)) from None
     except RecursionError:
         raise DeclarationError(Fault("nested too deeply", file=str(path))) from None
@@ -59,7 +60,7 @@ def key_lines(text: str) -> dict[str, int]:
     Example
     -------
     >>> key_lines('batch = 2\\n[tools.1]\\nkind = "turning"\\n')
-    {'batch': 1, 'tools.1': 2, 'tools.1.kind': 3}
+    {'batch': 1, 'tools': 2, 'tools.1': 2, 'tools.1.kind': 3}
     """
     lines: dict[str, int] = {}
     prefix = ""
@@ -68,7 +69,9 @@ def key_lines(text: str) -> dict[str, int]:
         key = None if header else _KEY.match(line)
         if header:
             prefix = _joined(header[1])
-            lines.setdefault(prefix, number)
+            parts = prefix.split(".")
+            for depth in range(1, min(len(parts), _DEEPEST) + 1):
+                lines.setdefault(".".join(parts[:depth]), number)
         elif key:
             name = _joined(key[1])
             lines.setdefault(f"{prefix}.{name}" if prefix else name, number)
@@ -102,7 +105,7 @@ def _decoded(data: bytes, path: Path) -> str:
 
 def _syntax_fault(message: str, path: Path, text: str) -> Fault:
     place = _PLACE_IN_MESSAGE.search(message)
-    line = int(place[1]) if place else text.count("\n") + 1
+    line = int(place[1]) if place else text.rstrip().count("\n") + 1
     lines = text.splitlines()
     found = lines[line - 1].strip()[:60] if 0 < line <= len(lines) else None
     what = _PLACE_IN_MESSAGE.sub("", message).replace(" (at end of document)", "")

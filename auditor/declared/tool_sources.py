@@ -16,6 +16,7 @@ from auditor.errors import Fault
 Word = TypeVar("Word", bound=str)
 
 _CODES = {"nose_radius": "an insert code", "included_angle": "an insert code", "cutting_edge_angle": "a holder code"}
+_HOLDER_KINDS = {"bar": "a boring bar", "external": "an outside holder"}
 _SHANKS = (("shank_height", "shank_width"), ("bar_diameter",))
 
 
@@ -77,7 +78,7 @@ class Sources:
         by_code, code = said
         if declared is not None:
             if by_code is not None and abs(declared - by_code) > 1e-6:
-                self.notes.add(key, show(declared, unit), f"declared; {code} says {show(by_code, unit)}")
+                self._note_contradiction(key, show(declared, unit), code, show(by_code, unit))
             return declared
         if by_code is not None:
             return by_code
@@ -98,7 +99,7 @@ class Sources:
         by_code, code = said
         if declared is not None:
             if by_code is not None and declared != by_code:
-                self.notes.add(key, declared, f"declared; {code} says {by_code}")
+                self._note_contradiction(key, declared, code, by_code)
             return declared
         return by_code if by_code is not None else self.notes.other(key, None, usual, why)
 
@@ -157,9 +158,17 @@ class Sources:
             )
         )
 
+    def _note_contradiction(self, key: str, declared: str, code: str, by_code: str) -> None:
+        """Listed under the code, for the declared value itself is no assumption."""
+        room = "insert" if code == getattr(self.table, "insert", None) else "holder"
+        self.notes.add(room, code, f"says {key} {by_code}; the declared {declared} is used")
+
     def _note_misfit(self, codes: Codes) -> None:
-        """An insert that the holder is not made for; the insert's own figures are used."""
+        """An insert or a kind of work that the holder is not made for; the insert's own figures are used."""
         insert, holder = codes.insert, codes.holder
+        kind = getattr(self.table, "kind", "")
+        if holder is not None and (holder.kind, kind) in (("bar", "turning"), ("external", "boring")):
+            self.notes.add("holder", holder.code, f"{_HOLDER_KINDS[holder.kind]} on a {kind} tool")
         if insert is None or holder is None:
             return
         if insert.shape != holder.insert_shape:
