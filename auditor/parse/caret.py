@@ -13,7 +13,7 @@ def caret(block: Block) -> str:
 
     >>> from auditor.parse import parse_text
     >>> print(caret(parse_text("N10 G0 X10,5").blocks[0]))
-    line 1, column 8: X10,5: a comma inside a number (decimal comma? a decimal point is wanted)
+    line 1, column 8: X10,5 has a comma inside its number (decimal comma? a decimal point is wanted)
         N10 G0 X10,5
                ^^^^^
     """

@@ -117,7 +117,7 @@ def _cache_file(name: str) -> str | None:
     if sys.platform == "win32":
         root = os.environ.get("LOCALAPPDATA")
     else:
-        root = os.environ.get("XDG_CACHE_HOME") or str(Path("~/.cache").expanduser())
+        root = os.environ.get("XDG_CACHE_HOME") or os.path.expanduser("~/.cache")  # noqa: PTH111 - never raises
     if not root or not Path(root).is_absolute():
         return None
     folder = Path(root) / "turnaudit"
