@@ -23,7 +23,7 @@ def complaint(message: str, wanted: str) -> PydanticCustomError:
 class Table(BaseModel):
     """A table of a job or shop file: nothing converted, nothing unknown, nothing infinite."""
 
-    model_config = ConfigDict(extra="forbid", strict=True, frozen=True, allow_inf_nan=False)
+    model_config = ConfigDict(extra="forbid", strict=True, frozen=True, allow_inf_nan=False, defer_build=True)
 
 
 @dataclass(frozen=True, slots=True)

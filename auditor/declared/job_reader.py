@@ -10,7 +10,6 @@ from pydantic import BaseModel
 
 from auditor.declared import materials, tables, units
 from auditor.declared.faults import Place, explain_unknown, nearest, read_table, shown
-from auditor.declared.files import JobHead
 from auditor.declared.machines import control_of, machine_of, model_of, workholding_of
 from auditor.declared.model import (
     Acceptance,
@@ -89,14 +88,14 @@ class JobReader:
     def _place(self, key: str) -> Place:
         return Place(self.top.file, key, self.top.lines)
 
-    def _head(self) -> JobHead | None:
+    def _head(self) -> tables.JobHead | None:
         """The keys above the first header; whatever else stands at the top is known or a fault."""
-        known = JobHead.model_fields
+        known = tables.JobHead.model_fields
         for key, value in self.toml.content.items():
             if key not in known:
-                self.faults.append(explain_unknown(key, value, JobHead, self.top))
+                self.faults.append(explain_unknown(key, value, tables.JobHead, self.top))
         plain = {key: self.toml.content[key] for key in ("program", "batch", "unattended") if key in self.toml.content}
-        return read_table(JobHead, plain, self.top, self.faults)
+        return read_table(tables.JobHead, plain, self.top, self.faults)
 
     def _written(self, key: str, section: str) -> Written | None:
         """A required table or the shop entry named in its place."""

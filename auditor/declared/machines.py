@@ -17,7 +17,7 @@ WORN = 1.3  # force of an edge at the end of its life against a sharp one
 
 def control_of(table: tables.ControlCore | None, notes: Notes) -> Control:
     """How the program text is to be read."""
-    given = table if table is not None else tables.ControlTable()
+    given = table or tables.ControlCore()
     usual = "the usual setting of lathe controls"
     return Control(
         system=given.system or "A",

@@ -37,6 +37,22 @@ from auditor.declared.fields import (
 )
 
 
+class JobHead(Table):
+    """The keys of a job file; tables are read one by one, so that every fault is found."""
+
+    program: Text | None = None
+    batch: Annotated[int, Field(ge=1)] | None = None
+    unattended: bool | None = None
+    control: Any = None
+    machine: Any = None
+    workholding: Any = None
+    workpiece: Any = None
+    tools: Any = None
+    limits: Any = None
+    model: Any = None
+    accepted: Any = None
+
+
 class ControlCore(Table):
     """[control]: how the program text is to be read, the keys every job may need."""
 
@@ -50,7 +66,8 @@ class ControlCore(Table):
 
     def settings(self) -> dict[str, str | float | bool]:
         """The points on which controls differ that this table settles."""
-        return {name: getattr(self, name) for name in SETTINGS if getattr(self, name) is not None}
+        declared = {name: getattr(self, name, None) for name in SETTINGS}
+        return {name: value for name, value in declared.items() if value is not None}
 
 
 def _type_of(entry: ControlSetting) -> Any:

@@ -7,7 +7,7 @@ import re
 
 import pytest
 
-from auditor.declared.files import job_schema, shop_schema
+from auditor.declared.schemas import job_schema, shop_schema
 from auditor.declared.units import EXAMPLE
 
 # The keys promised to users, written down from the promise and not from the code.

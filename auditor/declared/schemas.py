@@ -1,37 +1,21 @@
-"""Job file and shop file as a whole, and their JSON Schema for editors."""
+"""The JSON Schema of job and shop file, for editors; made from the tables the reader uses."""
 
 from __future__ import annotations
 
-from typing import Annotated, Any
+from typing import Any
 
 from pydantic import Field
 from pydantic.json_schema import JsonSchemaValue
 
 from auditor.declared import tables, units
-from auditor.declared.fields import Table, Text
+from auditor.declared.fields import Table
 from auditor.declared.tool_tables import ToolTable
 
 _DIALECT = "https://json-schema.org/draft/2020-12/schema"
 _NAME = {"type": "string", "description": "the name of an entry in the nearest shop.toml"}
 
 
-class JobHead(Table):
-    """The keys of a job file; tables are read one by one, so that every fault is found."""
-
-    program: Text | None = None
-    batch: Annotated[int, Field(ge=1)] | None = None
-    unattended: bool | None = None
-    control: Any = None
-    machine: Any = None
-    workholding: Any = None
-    workpiece: Any = None
-    tools: Any = None
-    limits: Any = None
-    model: Any = None
-    accepted: Any = None
-
-
-class _JobFile(JobHead):
+class _JobFile(tables.JobHead):
     """PART.job.toml"""
 
     control: tables.ControlTable | None = None
