@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 
 from auditor.declared.control_settings import choice
 from auditor.declared.model import Control, Point, Tool
-from auditor.interpret.compensation import OffsetPath, Side, offset_path
-from auditor.interpret.cycles.call import Stroke
+from auditor.interpret.compensation import TIP_VECTORS, OffsetPath, Side, offset_path
+from auditor.interpret.cycles.call import CycleRemark, Stroke
+from auditor.interpret.moves import Kind
 
 
 @dataclass(slots=True)
@@ -47,6 +48,7 @@ class CompensatedRun:
         self.forget()
         if tool is None or tool.nose_radius <= 0.0:
             return OffsetPath(strokes)
+        doubts = _side_remarks(start, strokes[:-1] if cancelled else strokes, side, tool)
         path = offset_path(
             start,
             strokes,
@@ -60,7 +62,7 @@ class CompensatedRun:
         )
         if not cancelled and path.strokes:
             self.tip = path.strokes[-1].end
-        return path
+        return replace(path, remarks=(*doubts, *path.remarks))
 
     def forget(self) -> None:
         """Drop what is held back."""
@@ -76,3 +78,24 @@ def joined(start: Point, strokes: tuple[Stroke, ...]) -> Iterator[tuple[Point, S
     for stroke in strokes:
         yield start, stroke
         start = stroke.end
+
+
+def _side_remarks(start: Point, strokes: tuple[Stroke, ...], side: Side, tool: Tool) -> tuple[CycleRemark, ...]:
+    """Whether the tip points away from the work: with the right side it points from the nose to the contour."""
+    tip = TIP_VECTORS[tool.tip]
+    away, first = 0.0, None
+    for point, stroke in joined(start, strokes):
+        if stroke is strokes[0] or stroke.kind is Kind.RAPID:
+            continue
+        first = first or stroke
+        dz, dr = stroke.end.z - point.z, stroke.end.r - point.r
+        to_nose = Point(-dr, dz) if side == "left" else Point(dr, -dz)
+        away += to_nose.z * tip.z + to_nose.r * tip.r
+    if away <= 0.0 or first is None:
+        return ()
+    code, other = ("G41", "G42") if side == "left" else ("G42", "G41")
+    message = (
+        f"{code} puts the nose where the tip of tool {tool.number} (tip number {tool.tip}) does not point: "
+        f"{other} fits it; on the wrong side the part is off by two nose radii"
+    )
+    return (CycleRemark("compensation-side", message, ("G",), first.line),)

@@ -40,7 +40,8 @@ def plane(run: Run, words: BlockWords) -> None:
 def compensation_on(run: Run, words: BlockWords) -> None:
     """G41 and G42: the next move with motion starts the compensated path."""
     run.close_chain()
-    side = "left" if words.calls("compensation left") else "right"
+    left = words.calls("compensation left") != (run.control.arcs == "mirrored")
+    side = "left" if left else "right"
     state = run.state
     if state.compensation not in ("off", side):
         run.remark(

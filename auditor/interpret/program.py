@@ -62,8 +62,18 @@ def _run_for(text: ProgramText, job: Job, log: Log) -> Run:
         state.z, state.r = start
     job = replace(job, control=_with_system(text, job.control, log))
     run = Run(job, job.control.system, state, log, BlockWords(1, None, "", ()), Flow(Library(text), job.control))
+    _take_only_tool(run, text)
     run.variables.control_values = known_control_values(run)
     return run
+
+
+def _take_only_tool(run: Run, text: ProgramText) -> None:
+    """A program that calls no tool at all runs with the only one declared."""
+    if len(run.job.tools) != 1 or any(word.letter == "T" for block in text.blocks for word in block.words):
+        return
+    number = next(iter(run.job.tools))
+    run.state.tool.number = number
+    run.log.assume("tools", f"tool {number}", "the program calls no tool; the only declared one is taken")
 
 
 def _with_system(text: ProgramText, control: Control, log: Log) -> Control:
