@@ -45,8 +45,7 @@ def audit_program(path: str | Path, job_path: str | Path | None = None) -> Audit
     declared = Path(job_path) if job_path is not None else job_beside(path)
     if declared is None:
         raise DeclarationError(_no_job(path))
-    job = load_job(declared)
-    return audit(replace(job, program=str(path)))
+    return audit(load_job(declared, program=path))
 
 
 def audit(job: Job, today: datetime.date | None = None) -> Audit:
