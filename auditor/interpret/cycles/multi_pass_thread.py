@@ -186,7 +186,7 @@ def _flank_shift(thread: _Thread, number: int, depth: float) -> float:
 def _pass(thread: _Thread, strokes: list[Stroke], number: int, depth: float) -> None:
     """Shift, infeed, thread, off, back."""
     travel = thread.end.z - thread.start.z
-    start_z = thread.start.z + math.copysign(_flank_shift(thread, number, depth), travel)
+    start_z = thread.start.z + math.copysign(1.0, travel) * _flank_shift(thread, number, depth)
     end = Point(thread.end.z, thread.end.r + thread.outwards * (thread.infeed.height - depth))
     # the taper keeps its slope over the programmed length whatever the shift
     start = Point(start_z, end.r + thread.taper * (thread.end.z - start_z) / travel)

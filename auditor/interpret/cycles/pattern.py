@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 
 from auditor.declared.control_settings import choice
 from auditor.declared.model import Point
-from auditor.interpret.cycles.call import CycleCall, CycleFault, Expansion, Stroke
+from auditor.interpret.cycles.call import CycleCall, CycleFault, CycleRemark, Expansion, Stroke
 from auditor.interpret.cycles.profile import allowance, cut_strokes, shifted
 from auditor.interpret.cycles.readings import count_word
 from auditor.interpret.moves import Kind
@@ -44,7 +44,21 @@ def expand(call: CycleCall) -> Expansion:
         ]
         strokes += [replace(stroke, cycle_pass=number) for stroke in one_pass]
     strokes.append(Stroke(Kind.RAPID, call.start, cycle_pass=repeats.passes))
-    return Expansion(tuple(strokes), stored=stored, leaned_on=("pattern_first_pass",))
+    return Expansion(tuple(strokes), _sign_remarks(call, repeats), stored, ("pattern_first_pass",))
+
+
+def _sign_remarks(call: CycleCall, repeats: _Repeats) -> tuple[CycleRemark, ...]:
+    """Shift and allowance along X have to lead from the profile towards the start point."""
+    out = call.start.r - call.profile[0].end.r
+    shift = CycleRemark(
+        "cycle-allowance-sign",
+        "the roughing shift along X points into the part: the first passes lie deeper than the last one",
+    )
+    left = CycleRemark(
+        "cycle-allowance-sign", "the allowance U points into the part: it cuts past the finished size", ("U",)
+    )
+    wrong = ((repeats.shift.r, shift), (allowance(call).r, left))
+    return tuple(remark for value, remark in wrong if value * out < 0.0)
 
 
 def _stored(call: CycleCall, along_x: str, along_z: str, count: str) -> dict[str, float]:
