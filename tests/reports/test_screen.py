@@ -75,8 +75,8 @@ def test_colour_changes_no_letter() -> None:
 
 def test_findings_stand_in_program_order_with_their_line_marked() -> None:
     lines = shown(builders.faulty(), plain=True).splitlines()
-    order = [index for index, line in enumerate(lines) if re.match(r"[-#^] N\d0  line", line)]
-    assert [lines[index].split()[1] for index in order] == ["N40", "N50", "N60"]
+    order = [index for index, line in enumerate(lines) if re.match(r"[-#^] line \d", line)]
+    assert [lines[index].split()[3] for index in order] == ["N40", "N50", "N60"]
     marked, below = lines[order[1]], lines[order[1] + 1]
     start, end = below.index("~"), below.rindex("~") + 1
     assert marked[start:end] == "F0.3"
@@ -181,7 +181,7 @@ def test_same_assumption_about_several_tools_is_said_once() -> None:
     "{0}%s",
 ])
 def test_hostile_text_is_shown_and_not_obeyed(hostile: str) -> None:
-    finding = builders.power_finding(line=1, message=hostile, remedy=hostile, block=hostile)
+    finding = builders.power_finding(line=1, message=hostile, remedy=hostile)
     for plain in (True, False):
         text = shown(builders.audit([finding], source=f"G1 ({hostile}) F1.", path=hostile), plain=plain)
         assert "\x1b" not in text

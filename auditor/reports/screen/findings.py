@@ -59,8 +59,7 @@ def _also(others: Sequence[Finding]) -> str:
 def _quote(paper: Paper, audit: Audit, finding: Finding) -> None:
     """The program's line with the words at fault underlined, and the name of the check."""
     block = block_at(audit.run.text, finding.line)
-    label = f"{paper.clean(finding.block)}  " if finding.block else ""
-    lead = f"{label}line {finding.line}    "
+    lead = f"line {finding.line}   "
     room = paper.view.width - len(lead) - 2
     source, marked = _window(block.text if block else "", spans(finding, block), room)
     quoted = paper.quote(source)
