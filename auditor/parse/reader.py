@@ -6,9 +6,9 @@ import hashlib
 import re
 from bisect import bisect_right
 from collections.abc import Iterator
-from dataclasses import dataclass
 from os import PathLike, fspath
 from pathlib import Path
+from typing import NamedTuple
 
 from auditor.errors import Fault, ProgramError
 from auditor.parse import faults
@@ -127,8 +127,7 @@ class _Reader:
         )
 
 
-@dataclass(frozen=True, slots=True)
-class _Head:
+class _Head(NamedTuple):
     """What stands in front of the words: ``/n O N /n``, and the length of it."""
 
     length: int = 0
@@ -137,8 +136,7 @@ class _Head:
     number: int | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class _Content:
+class _Content(NamedTuple):
     """What the rest of the block says."""
 
     words: tuple[Word, ...] = ()
@@ -147,8 +145,7 @@ class _Content:
     fault: SyntaxFault | None = None
 
 
-@dataclass(frozen=True, slots=True)
-class _Reading:
+class _Reading(NamedTuple):
     """What a piece of a line reads as, on whichever line it stands."""
 
     code: CleanCode
@@ -201,7 +198,9 @@ def _read_content(code: CleanCode, line: str) -> _Content:
             return _Content(statement=read_statement(code.text))
         return _Content(_words(code), called=called)
     except UnreadableError as stopped:
-        return _Content(fault=faults.fault_at(code, stopped.position))
+        from auditor.parse.diagnosis import fault_at  # most programs have no fault
+
+        return _Content(fault=fault_at(code, stopped.position))
 
 
 def _words(code: CleanCode) -> tuple[Word, ...]:
