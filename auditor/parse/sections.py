@@ -12,7 +12,7 @@ from auditor.parse.clean import without_gaps
 
 _COMMENT = re.compile(r"\([^)]*\)?|;.*")
 _PROGRAM_HEAD = re.compile(r"/?(?:[O:][0-9]+|<[^<>]+>)")
-_PROGRAM_END = re.compile(r"M0*(?:2|30|99)(?![0-9.])")
+_PROGRAM_END = re.compile(r"/?(?:N[0-9]+)?M0*(?:2|30|99)")
 _LOOKS_LIKE_CODE = re.compile(r"(?<![A-Z])[GXZUW][+-]?\.?[0-9]")
 
 
@@ -76,7 +76,7 @@ class _Sorting:
     def _before_first(self, part: range) -> bool:
         """Whether a program stands before the first %, which then ends it; else it is leader text."""
         code = [bare(self.lines[index]) for index in self._filled(part)]
-        is_program = any(_PROGRAM_HEAD.match(text) or _PROGRAM_END.search(text) for text in code)
+        is_program = any(_PROGRAM_END.fullmatch(text) for text in code) or any(map(_PROGRAM_HEAD.match, code[:1]))
         if is_program or (code and not any(self._filled(range(self.bounds[0] + 1, len(self.lines)), marks=False))):
             self.data.extend(part)
             return True

@@ -87,6 +87,8 @@ def test_files_without_a_block(data: bytes | str) -> None:
         ("%O1\nM30\n%", [1, 2]),
         ("%\n%\nO1\nM30\n%", [3, 4]),  # opened twice
         ("O1\nM30\n%\nG0 X5.", [1, 2]),  # an end mark only
+        ("BOLT 1 M30\nORDER\n:45 MATERIAL 16CRM2\n%\nO1\nM30", [5, 6]),  # leader
+        ("N5 G0 X1.\nN6 M30\n%\nG0 X5.", [1, 2]),
         ("G0 X1.\n%\n\n", [1]),
         ("  %\nG0 X1.\n  %", [2]),
         ("NC PROGRAM OF TODAY\n%\nG0 X1.", [3]),
