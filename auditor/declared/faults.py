@@ -97,15 +97,25 @@ def nearest(name: str, known: typing.Iterable[str]) -> str | None:
     return by_lower[matches[0]] if matches else None
 
 
+def is_stray(key: str, place: Place) -> bool:
+    """Whether a key that belongs above the first header stands in a table."""
+    return key in TOP_KEYS and bool(place.prefix)
+
+
+def explain_stray(key: str, value: object, place: Place) -> Fault:
+    """TOML gives every key to the header above it; say so."""
+    return place.fault(
+        f"{key} stands after the header [{place.prefix}] and so belongs to that table",
+        key,
+        found=shown(value),
+        wanted=f"{key} above the first header of the file",
+    )
+
+
 def explain_unknown(key: str, value: object, model: type[BaseModel], place: Place) -> Fault:
     """Say why a key is not known where it stands, and where it may belong."""
-    if key in TOP_KEYS and place.prefix:
-        return place.fault(
-            f"{key} stands after the header [{place.prefix}] and so belongs to that table",
-            key,
-            found=shown(value),
-            wanted=f"{key} above the first header of the file",
-        )
+    if is_stray(key, place):
+        return explain_stray(key, value, place)
     kinds = [kind for kind, other in KINDS.items() if key in other.model_fields]
     own_kind = next((kind for kind, other in KINDS.items() if other is model), None)
     if own_kind is not None and kinds:

@@ -9,7 +9,7 @@ from typing import TypeVar
 from pydantic import BaseModel
 
 from auditor.declared import materials, tables, units
-from auditor.declared.faults import Place, explain_unknown, nearest, read_table, shown
+from auditor.declared.faults import Place, explain_stray, explain_unknown, is_stray, nearest, read_table, shown
 from auditor.declared.machines import control_of, machine_of, model_of, workholding_of
 from auditor.declared.model import (
     Acceptance,
@@ -179,6 +179,9 @@ class JobReader:
         tools: dict[int, Tool] = {}
         for key, raw in entries.items():
             place = self._place(f"tools.{key}")
+            if is_stray(key, self._place("tools")):
+                self.faults.append(explain_stray(key, raw, self._place("tools")))
+                continue
             if not _TOOL_NUMBER.fullmatch(key):
                 wanted = "the number of the T word, like [tools.1]"
                 self.faults.append(place.fault("not a tool number", found=key, wanted=wanted))
@@ -200,7 +203,11 @@ class JobReader:
         if not isinstance(entries, dict):
             self.faults.append(self.top.fault("not a table", "limits", found=shown(entries), wanted="a table [limits]"))
             return {}
-        limits = {key: self._limit(value, self._place(f"limits.{key}")) for key, value in entries.items()}
+        table = self._place("limits")
+        strays = [key for key in entries if is_stray(key, table)]
+        self.faults.extend(explain_stray(key, entries[key], table) for key in strays)
+        named = {key: value for key, value in entries.items() if key not in strays}
+        limits = {key: self._limit(value, self._place(f"limits.{key}")) for key, value in named.items()}
         return {key: limit for key, limit in limits.items() if limit is not None}
 
     def _limit(self, value: object, place: Place) -> LimitValue | None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 from typing import Literal
 
@@ -60,6 +61,8 @@ def tool_of(
         tool = _drill(number, table, name, sources)
     else:
         tool = _insert_tool(number, table, name, sources)
+        if not sources.faults:
+            _check_corner(tool, sources)
     faults.extend(sources.faults)
     return None if sources.faults else tool
 
@@ -234,6 +237,21 @@ def _land_width(codes: Codes, form: EdgeForm, sources: Sources) -> float:
 def _land_rake(codes: Codes, form: EdgeForm, sources: Sources) -> float:
     chamfer, code = codes.of_insert("chamfer_angle")
     return sources.number("land_rake", (None if chamfer is None else -chamfer, code), "deg", 0.0, form.why)
+
+
+def _check_corner(tool: Tool, sources: Sources) -> None:
+    """The corner must fit on the edges it rounds: tangent length r / tan(epsilon / 2)."""
+    if tool.shape == "R":
+        return
+    room, what = tool.edge_length, "edge"
+    reach = tool.nose_radius / math.tan(math.radians(tool.included_angle) / 2.0)
+    if tool.width is not None:
+        room, what, reach = tool.width, "width", 2.0 * tool.nose_radius
+    if room is not None and reach > room + 1e-9:
+        message = f"the corner does not fit on the {what} of the insert, {room:.4g} mm"
+        wanted = f"at most {tool.nose_radius * room / reach:.4g} mm"
+        fault = sources.place.fault(message, "nose_radius", found=f"{tool.nose_radius:g} mm", wanted=wanted)
+        sources.faults.append(fault)
 
 
 def _width(table: rows.InsertTool, sources: Sources) -> float | None:

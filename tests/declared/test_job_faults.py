@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import contextlib
+import datetime
 import time
 from pathlib import Path
 
@@ -10,6 +12,7 @@ import pytest
 from auditor.declared.jobs import load_job
 from auditor.errors import DeclarationError
 from tests.declared.job_files import (
+    EVERYTHING,
     MACHINE,
     SOUND,
     TOOL,
@@ -120,6 +123,13 @@ def test_a_top_key_that_landed_under_a_header_is_explained(tmp_path: Path, line:
     assert fault.key == f"tools.1.{key}"
     assert "after the header [tools.1]" in fault.message
     assert "above the first header" in (fault.wanted or "")
+
+
+@pytest.mark.parametrize("header", ["limits", "tools", "model", "control"])
+def test_that_is_explained_under_every_header(tmp_path: Path, header: str) -> None:
+    fault = only_fault(tmp_path, SOUND + f"[{header}]\nbatch = 3\n")
+    assert (fault.key, fault.found) == (f"{header}.batch", "3")
+    assert f"after the header [{header}]" in fault.message
 
 
 def test_that_is_explained_in_a_tool_of_unknown_kind_too(tmp_path: Path) -> None:
@@ -301,3 +311,36 @@ def test_a_material_that_is_not_whole(tmp_path: Path, material: str, message: st
 def test_angles_that_leave_no_minor_edge(tmp_path: Path) -> None:
     text = SOUND.replace("CNMG 120408", "SNMG 120408")
     assert "no angle for the minor edge" in only_fault(tmp_path, text).message
+
+
+@pytest.mark.parametrize(
+    ("text", "room"),
+    [
+        ('[tools.2]\nkind = "boring"\ninsert = "CCMT 060204"\nholder = "A16R-SCLCR 06"\nnose_radius="6 mm"\n', "edge"),
+        ('[tools.2]\nkind = "grooving"\nwidth = "3 mm"\nnose_radius = "1.6 mm"\n', "width"),
+    ],
+)
+def test_a_corner_larger_than_the_insert(tmp_path: Path, text: str, room: str) -> None:
+    fault = only_fault(tmp_path, SOUND + text)
+    assert fault.key == "tools.2.nose_radius"
+    assert f"does not fit on the {room}" in fault.message
+
+
+ODD = (
+    "-1", "0", "1.5", "1e300", "nan", "inf", "9999999999999999999999", "true", '""', '" "', '"x"', '"5 mm"', '"-5 mm"',
+    '"9**9**9 mm"', "[]", "[[]]", "[1, 2]", '["1 mm"]', '["5 mm", "1 mm"]', "{}", "{ x = 1 }", "2027-06-30",
+    "2027-06-30T10:00:00", "10:00:00",
+)  # fmt: skip
+
+
+@pytest.mark.parametrize("odd", ODD)
+def test_an_odd_value_anywhere_is_read_or_refused_in_words(tmp_path: Path, odd: str) -> None:
+    lines = EVERYTHING.splitlines()
+    for index, line in enumerate(lines):
+        key, equals, _ = line.partition(" = ")
+        if not equals:
+            continue
+        path = write(tmp_path, "\n".join([*lines[:index], f"{key} = {odd}", *lines[index + 1 :]]))
+        with contextlib.suppress(DeclarationError):
+            job = load_job(path)
+            assert all(type(entry.until) in (datetime.date, type(None)) for entry in job.accepted)
