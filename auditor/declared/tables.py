@@ -178,7 +178,7 @@ class WorkholdingTable(Table):
 
 
 class MaterialTable(Table):
-    """A material of the shop's own or of one job (contract of the catalogue: force per mm2 and where it comes from)."""
+    """A material of the shop's own or of one job: force per area of cut, and where it comes from."""
 
     group: Literal["P", "M", "K", "N", "S", "H", "O"]
     kc11: Pressure | None = None

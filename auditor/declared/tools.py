@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from auditor.declared import tool_tables as rows
@@ -86,43 +86,48 @@ def tip_of(kind: ToolKind, hand: Hand, inside: bool) -> int:
     return 3  # grooving and parting are programmed with the corner nearer the chuck
 
 
+def _common(number: int, kind: ToolKind, name: str, hand: Hand, table: rows.AnyTool, notes: Notes) -> Tool:
+    """What every cutting tool has."""
+    return Tool(
+        number=number,
+        name=name,
+        kind=kind,
+        substrate=notes.other("substrate", table.substrate, "coated carbide", "the usual cutting material"),
+        speed=table.speed,
+        taylor=(table.taylor.speed, table.taylor.exponent) if table.taylor else None,
+        force_limit=table.force_limit,
+        overhang=table.overhang,
+        hand=hand,
+        centre_height=notes.number("centre_height", table.centre_height, 0.0, "mm", "on centre"),
+    )
+
+
 def _drill(number: int, table: rows.DrillingTool, name: str | None, sources: Sources) -> Tool:
     notes = sources.notes
     if table.diameter is None:
         sources.missing("diameter")
-    return Tool(
-        number=number,
-        name=name or f"T{number} drill {table.diameter or 0.0:g} mm",
-        kind="drilling",
+    called = name or f"T{number} drill {table.diameter or 0.0:g} mm"
+    hand: Hand = notes.other("hand", table.hand, "right", "the usual hand")
+    return replace(
+        _common(number, "drilling", called, hand, table, notes),
         edge_radius=notes.number("edge_radius", table.edge_radius, PLAIN.edge_radius, "mm", "usual for a drill"),
-        substrate=notes.other("substrate", table.substrate, "coated carbide", "the usual cutting material"),
-        speed=table.speed,
-        taylor=_taylor(table),
-        force_limit=table.force_limit,
-        overhang=table.overhang,
         point_angle=notes.number("point_angle", table.point_angle, POINT_ANGLE, "deg", "the common twist drill"),
         diameter=table.diameter,
         flutes=notes.other("flutes", table.flutes, 2, "the common twist drill"),
-        hand=notes.other("hand", table.hand, "right", "the usual hand"),
-        centre_height=notes.number("centre_height", table.centre_height, 0.0, "mm", "on centre"),
         tip=notes.other("tip", table.tip, tip_of("drilling", "right", inside=False), "the point of the drill"),
     )
 
 
 def _insert_tool(number: int, table: rows.EdgeTool, name: str | None, sources: Sources) -> Tool:
     codes = sources.codes()
-    notes = sources.notes
-    kind = table.kind
-    form = _form(codes)
-    pocket = _pocket(kind, codes, sources)
-    included = _included(kind, codes, sources)
-    insert, holder = codes.insert, codes.holder
+    kind, holder = table.kind, codes.holder
+    called = f"T{number} {table.insert or name or kind}"
     hand: Hand = sources.word("hand", codes.of_holder("hand"), "right", "the usual hand")
     inside = kind == "boring" or (holder is not None and holder.kind == "bar")
-    return Tool(
-        number=number,
-        name=f"T{number} {table.insert or name or kind}",
-        kind=kind,
+    pocket = _pocket(kind, codes, sources)
+    included = _included(kind, codes, sources)
+    tool = replace(
+        _common(number, kind, called, hand, table, sources.notes),
         insert=table.insert,
         holder=table.holder,
         shape=_shape(codes),
@@ -130,37 +135,43 @@ def _insert_tool(number: int, table: rows.EdgeTool, name: str | None, sources: S
         cutting_edge_angle=_edge_angle(kind, codes, included, sources),
         edge_faces_end=holder.end_style if holder else kind in ("grooving", "parting"),
         included_angle=included,
-        edge_length=insert.edge_length if insert else None,
+        edge_length=codes.of_insert("edge_length")[0],
         insert_clearance=pocket.clearance,
         pocket_rake=pocket.rake,
         pocket_inclination=pocket.inclination,
         pocket_known=pocket.known,
+        width=_width(table, sources),
+        insert_faces=table.insert_faces,
+        tip=sources.notes.other("tip", table.tip, tip_of(kind, hand, inside), "by kind, hand and holder"),
+    )
+    return _with_shank(_with_edge(tool, table, codes, sources), codes, sources)
+
+
+def _with_edge(tool: Tool, table: rows.EdgeTool, codes: Codes, sources: Sources) -> Tool:
+    """Rake face, land and edge: by letter 4 of the insert code unless written."""
+    form = _form(codes)
+    chamfer, code = codes.of_insert("chamfer_angle")
+    sloping = (None if chamfer is None else -chamfer, code)
+    return replace(
+        tool,
         face_rake=sources.number("face_rake", NOTHING, "deg", form.face_rake, form.why),
-        land_width=_land_width(codes, form, sources),
-        land_rake=_land_rake(codes, form, sources),
+        land_width=sources.number("land_width", codes.of_insert("chamfer_width"), "mm", form.land_width, form.why),
+        land_rake=sources.number("land_rake", sloping, "deg", 0.0, form.why),
         edge_radius=sources.number("edge_radius", NOTHING, "mm", form.edge_radius, form.why),
         breaker_declared=form is WITH_BREAKER or table.breaker_feed is not None or table.breaker_depth is not None,
         breaker_feed=table.breaker_feed,
         breaker_depth=table.breaker_depth,
-        substrate=notes.other("substrate", table.substrate, "coated carbide", "the usual cutting material"),
-        speed=table.speed,
-        taylor=_taylor(table),
-        force_limit=table.force_limit,
-        overhang=table.overhang,
+    )
+
+
+def _with_shank(tool: Tool, codes: Codes, sources: Sources) -> Tool:
+    return replace(
+        tool,
         bar_diameter=sources.optional("bar_diameter", codes.of_holder("bar_diameter"), "mm"),
         shank_height=sources.optional("shank_height", codes.of_holder("shank_height"), "mm"),
         shank_width=sources.optional("shank_width", codes.of_holder("shank_width"), "mm"),
         bar_material=sources.word("bar_material", codes.of_holder("bar_material"), "steel", "the usual shank"),
-        width=_width(table, sources),
-        hand=hand,
-        insert_faces=table.insert_faces,
-        centre_height=notes.number("centre_height", table.centre_height, 0.0, "mm", "on centre"),
-        tip=notes.other("tip", table.tip, tip_of(kind, hand, inside), "by kind, hand and holder"),
     )
-
-
-def _taylor(table: rows.AnyTool) -> tuple[float, float] | None:
-    return (table.taylor.speed, table.taylor.exponent) if table.taylor else None
 
 
 def _shape(codes: Codes) -> str | None:
@@ -228,15 +239,6 @@ def _pocket(kind: ToolKind, codes: Codes, sources: Sources) -> Pocket:
         inclination=sources.number("pocket_inclination", NOTHING, "deg", tilt, why),
         known=not guessed and (kind != "boring" or len(tilted) == 2),
     )
-
-
-def _land_width(codes: Codes, form: EdgeForm, sources: Sources) -> float:
-    return sources.number("land_width", codes.of_insert("chamfer_width"), "mm", form.land_width, form.why)
-
-
-def _land_rake(codes: Codes, form: EdgeForm, sources: Sources) -> float:
-    chamfer, code = codes.of_insert("chamfer_angle")
-    return sources.number("land_rake", (None if chamfer is None else -chamfer, code), "deg", 0.0, form.why)
 
 
 def _check_corner(tool: Tool, sources: Sources) -> None:
