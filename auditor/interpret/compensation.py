@@ -15,17 +15,14 @@ from typing import Literal
 from auditor.declared.model import Point
 from auditor.interpret.cycles.call import CycleRemark, Stroke
 from auditor.interpret.moves import Kind
-from auditor.interpret.plane import Circle, Line, along, between, cross, crossings, dot, left_of, sweep, unit
-
-Side = Literal["left", "right"]
+from auditor.interpret.nose import SMALL, Element, Joint, Nose, Side, joint_of, outside
+from auditor.interpret.plane import between, dot, sweep
 
 # from the nose centre to the imaginary tip, in nose radii, by tip number
 TIP_VECTORS: dict[int, Point] = {
     0: Point(0, 0), 1: Point(1, 1), 2: Point(-1, 1), 3: Point(-1, -1), 4: Point(1, -1),
     5: Point(1, 0), 6: Point(0, 1), 7: Point(-1, 0), 8: Point(0, -1), 9: Point(0, 0),
 }
-SMALL = 1e-6  # mm; shorter motions are none
-SAME_DIRECTION = 1e-7  # sine of the angle up to which a joint is tangent
 REVERSED = 1e-5  # mm; by so much an element may run backwards before it counts as reversed
 
 
@@ -35,71 +32,6 @@ class OffsetPath:
 
     strokes: tuple[Stroke, ...]
     remarks: tuple[CycleRemark, ...] = ()
-
-
-@dataclass(frozen=True, slots=True)
-class _Nose:
-    """The rounded nose on its side of the contour."""
-
-    radius: float
-    side: Side
-    tip: Point  # nose centre to imaginary tip, mm
-    corner: Literal["line", "arc"]
-
-    def normal(self, tangent: Point) -> Point:
-        """Unit direction from the contour to the nose centre."""
-        left = left_of(tangent)
-        return left if self.side == "left" else Point(-left.z, -left.r)
-
-    def centre(self, point: Point, tangent: Point) -> Point:
-        """Nose centre that touches the contour at ``point``."""
-        return along(point, self.normal(tangent), self.radius)
-
-
-@dataclass(frozen=True, slots=True)
-class _Element:
-    """A contour stroke with its start point and its place in the run."""
-
-    stroke: Stroke
-    start: Point
-    blind: bool = False  # the control could not look ahead to it
-
-    @property
-    def end(self) -> Point:
-        return self.stroke.end
-
-    @property
-    def radius(self) -> float:
-        assert self.stroke.centre is not None
-        return math.dist(self.stroke.centre, self.stroke.end)
-
-    def tangent(self, point: Point) -> Point:
-        """Direction of motion at the start or end point."""
-        if self.stroke.centre is None:
-            return unit(between(self.start, self.end))
-        outwards = unit(between(self.stroke.centre, point))
-        left = left_of(outwards)
-        return Point(-left.z, -left.r) if self.stroke.clockwise else left
-
-    def offset_radius(self, nose: _Nose) -> float:
-        """Radius of the nose centre's arc; zero or less when the nose does not fit in."""
-        tool_outside = (nose.side == "left") == bool(self.stroke.clockwise)
-        return self.radius + nose.radius if tool_outside else self.radius - nose.radius
-
-    def carrier(self, nose: _Nose) -> Line | Circle:
-        """The endless line or circle on which the nose centre runs."""
-        if self.stroke.centre is None:
-            direction = self.tangent(self.start)
-            return Line(nose.centre(self.start, direction), direction)
-        return Circle(self.stroke.centre, self.offset_radius(nose))
-
-
-@dataclass(frozen=True, slots=True)
-class _Joint:
-    """How the centre path goes from one element to the next: end of the first, links, start of the second."""
-
-    points: tuple[Point, ...]
-    arc_centre: Point | None = None  # the single link is an arc round the corner
 
 
 def offset_path(
@@ -156,7 +88,7 @@ def offset_path(
     [(-0.8, 10.0), (-20.8, 10.0)]
     """
     direction = TIP_VECTORS[tip]
-    nose = _Nose(nose_radius, side, Point(direction.z * nose_radius, direction.r * nose_radius), acute)
+    nose = Nose(nose_radius, side, Point(direction.z * nose_radius, direction.r * nose_radius), acute)
     elements = _elements(start, contour, blind)
     if not elements:
         return OffsetPath(())
@@ -169,17 +101,17 @@ def offset_path(
     return OffsetPath(_tip_strokes(run, joints, nose, cancelled), (*remarks, *small, *blank))
 
 
-def _elements(start: Point, contour: Sequence[Stroke], blind: frozenset[int]) -> list[_Element]:
-    elements: list[_Element] = []
+def _elements(start: Point, contour: Sequence[Stroke], blind: frozenset[int]) -> list[Element]:
+    elements: list[Element] = []
     here = start
     for index, stroke in enumerate(contour):
         if math.dist(here, stroke.end) > SMALL or stroke.centre is not None:
-            elements.append(_Element(stroke, here, index in blind))
+            elements.append(Element(stroke, here, index in blind))
             here = stroke.end
     return elements
 
 
-def _arc_remarks(elements: Sequence[_Element], cancelled: bool) -> tuple[CycleRemark, ...]:
+def _arc_remarks(elements: Sequence[Element], cancelled: bool) -> tuple[CycleRemark, ...]:
     ends = {"start-up": elements[0].stroke}
     if cancelled:
         ends["cancel"] = elements[-1].stroke
@@ -191,7 +123,7 @@ def _arc_remarks(elements: Sequence[_Element], cancelled: bool) -> tuple[CycleRe
     )
 
 
-def _blank_remark(element: _Element) -> CycleRemark:
+def _blank_remark(element: Element) -> CycleRemark:
     return CycleRemark(
         "compensation-blank-blocks",
         "two or more blocks without motion before this one under nose-radius compensation:"
@@ -200,7 +132,7 @@ def _blank_remark(element: _Element) -> CycleRemark:
     )
 
 
-def _fitting(elements: list[_Element], nose: _Nose) -> tuple[list[_Element], tuple[CycleRemark, ...]]:
+def _fitting(elements: list[Element], nose: Nose) -> tuple[list[Element], tuple[CycleRemark, ...]]:
     """The elements the nose can reach, and a remark for each that it cannot."""
     remarks: list[CycleRemark] = []
     kept = []
@@ -221,11 +153,11 @@ def _fitting(elements: list[_Element], nose: _Nose) -> tuple[list[_Element], tup
     return kept, tuple(remarks)
 
 
-def _small(element: _Element, message: str) -> CycleRemark:
+def _small(element: Element, message: str) -> CycleRemark:
     return CycleRemark("compensation-too-small", message, line=element.stroke.line)
 
 
-def _reversed(elements: Sequence[_Element], nose: _Nose) -> int | None:
+def _reversed(elements: Sequence[Element], nose: Nose) -> int | None:
     """Index of the element that the offset turns round most, None when all keep their sense."""
     joints = _joints(elements, nose, cancelled=False, startup=None)
     worst, where = -REVERSED, None
@@ -237,7 +169,7 @@ def _reversed(elements: Sequence[_Element], nose: _Nose) -> int | None:
     return where
 
 
-def _signed_length(element: _Element, first: Point, last: Point, nose: _Nose) -> float:
+def _signed_length(element: Element, first: Point, last: Point, nose: Nose) -> float:
     """Length of an offset element in its own sense; below zero when it runs backwards."""
     if element.stroke.centre is None:
         return dot(between(first, last), element.tangent(element.start))
@@ -250,78 +182,31 @@ def _signed_length(element: _Element, first: Point, last: Point, nose: _Nose) ->
 
 
 def _joints(
-    run: Sequence[_Element],
-    nose: _Nose,
+    run: Sequence[Element],
+    nose: Nose,
     cancelled: bool,
     startup: Literal["perpendicular", "intersection"] | None,
-) -> list[_Joint]:
+) -> list[Joint]:
     """Joint behind every element; ``startup`` None: the run begins with an ordinary element."""
-    joints: list[_Joint] = []
+    joints: list[Joint] = []
     for index, element in enumerate(run):
         if index + 1 == len(run):
-            joints.append(_Joint((nose.centre(element.end, element.tangent(element.end)),)))
+            joints.append(Joint((nose.centre(element.end, element.tangent(element.end)),)))
             continue
         following = run[index + 1]
         at_start = startup is not None and index == 0
         at_cancel = cancelled and index + 2 == len(run)
-        if (at_start or at_cancel) and (startup != "intersection" or not _outside(element, following, nose)):
+        if (at_start or at_cancel) and (startup != "intersection" or not outside(element, following, nose)):
             touching = following if at_start else element
             point = following.start if at_start else element.end
-            joints.append(_Joint((nose.centre(point, touching.tangent(point)),)))
+            joints.append(Joint((nose.centre(point, touching.tangent(point)),)))
         else:
-            joints.append(_joint(element, following, nose))
+            joints.append(joint_of(element, following, nose))
     return joints
 
 
-def _outside(element: _Element, following: _Element, nose: _Nose) -> bool:
-    """Whether the contour turns away from the tool."""
-    before, after = element.tangent(element.end), following.tangent(following.start)
-    turn = cross(before, after)
-    if abs(turn) < SAME_DIRECTION:
-        return dot(before, after) < 0
-    return (turn > 0) == (nose.side == "right")
-
-
-def _joint(element: _Element, following: _Element, nose: _Nose) -> _Joint:
-    before, after = element.tangent(element.end), following.tangent(following.start)
-    square_end = nose.centre(element.end, before)
-    square_start = nose.centre(following.start, after)
-    if following.blind:
-        return _Joint((square_end, square_start) if following.stroke.centre is not None else (square_end,))
-    if math.dist(square_end, square_start) < SMALL:
-        return _Joint((square_end,))
-    if math.dist(element.end, following.start) < SMALL and _outside(element, following, nose):
-        return _outside_joint(element, following, nose)
-    found = crossings(element.carrier(nose), following.carrier(nose))
-    if not found:  # nowhere to turn: the fault is told where the neighbours were dropped
-        return _Joint((square_end, square_start))
-    return _Joint((min(found, key=lambda point: math.dist(point, element.end)),))
-
-
-def _outside_joint(element: _Element, following: _Element, nose: _Nose) -> _Joint:
-    corner = element.end
-    before, after = element.tangent(corner), following.tangent(corner)
-    leave, arrive = nose.centre(corner, before), nose.centre(corner, after)
-    if dot(before, after) < -SAME_DIRECTION:
-        if nose.corner == "arc":
-            return _Joint((leave, arrive), arc_centre=corner)
-        points = [along(leave, before, nose.radius), along(arrive, after, -nose.radius)]
-    else:
-        for point in crossings(element.carrier(nose), following.carrier(nose)):
-            ahead = dot(between(leave, point), before) > 0 > dot(between(arrive, point), after)
-            if ahead and math.dist(point, corner) < 2 * nose.radius:
-                return _Joint((point,))
-        points = crossings(Line(leave, before), Line(arrive, after))
-    # an arc is not extended itself: straight pieces lead from its end and to its start
-    if element.stroke.centre is not None:
-        points.insert(0, leave)
-    if following.stroke.centre is not None:
-        points.append(arrive)
-    return _Joint(tuple(points))
-
-
 def _tip_strokes(
-    run: Sequence[_Element], joints: Sequence[_Joint], nose: _Nose, cancelled: bool
+    run: Sequence[Element], joints: Sequence[Joint], nose: Nose, cancelled: bool
 ) -> tuple[Stroke, ...]:
     """Strokes of the imaginary tip: the centre path moved by the tip vector."""
     strokes: list[Stroke] = []

@@ -13,10 +13,14 @@ from auditor.interpret.cycles.call import CycleFault, Stroke
 from auditor.interpret.moves import Feed, Kind
 from auditor.interpret.registry import motion
 from auditor.interpret.run import CornerChain, NotUnderstood, Run
+from auditor.interpret.variable_lead import mean_lead
 from auditor.interpret.words import BlockWords, length
 
 AXIS_LETTERS = ("X", "Z", "U", "W")
 HARMLESS = frozenset({"F", "S", "T", "D", "E", "L", "P", "Q"})  # no effect on where a motion goes
+
+
+PLAIN_MOTION = frozenset(AXIS_LETTERS) | HARMLESS
 
 
 def has_axis_words(words: BlockWords) -> bool:
@@ -39,38 +43,39 @@ def end_point(run: Run, words: BlockWords) -> tuple[float | None, float | None]:
     """Where the axis words lead, (z, r); None where that is not known."""
     state = run.state
     incremental = run.system != "A" and not state.absolute
-    if run.system != "A" and words.has("U", "W"):
-        raise NotUnderstood("U and W are words of other axes in this code system", "axis-not-modelled", ("U", "W"))
-    z = _coordinate(state.z, millimetres(run, words, "Z"), millimetres(run, words, "W"), incremental, state.shift.z)
+    z = millimetres(run, words, "Z")
+    r = millimetres(run, words, "X")
     half = x_factor(run)
-    x, u = millimetres(run, words, "X"), millimetres(run, words, "U")
-    r = _coordinate(
-        state.r, None if x is None else x * half, None if u is None else u * half, incremental, state.shift.r
-    )
+    z = state.z if z is None else _added(state.z, z) if incremental else z + state.shift.z
+    r = state.r if r is None else _added(state.r, r * half) if incremental else r * half + state.shift.r
+    return _with_increments(run, words, z, r, half) if words.has("U", "W") else (z, r)
+
+
+def _with_increments(
+    run: Run, words: BlockWords, z: float | None, r: float | None, half: float
+) -> tuple[float | None, float | None]:
+    """U and W, which are distances in system A."""
+    if run.system != "A":
+        raise NotUnderstood("U and W are words of other axes in this code system", "axis-not-modelled", ("U", "W"))
     for absolute, other in (("X", "U"), ("Z", "W")):
         if words.has(absolute) and words.has(other):
             run.remark("word-repeated", f"{absolute} and {other} in one block name the same axis", absolute, other)
+    u, w = millimetres(run, words, "U"), millimetres(run, words, "W")
+    z = z if w is None or words.has("Z") else _added(run.state.z, w)
+    r = r if u is None or words.has("X") else _added(run.state.r, u * half)
     return z, r
 
 
-def _coordinate(
-    here: float | None, word: float | None, increment: float | None, incremental: bool, shift: float
-) -> float | None:
-    if incremental and word is not None:
-        word, increment = None, word
-    if word is not None:
-        return word + shift
-    if increment is not None:
-        return None if here is None else here + increment
-    return here
+def _added(here: float | None, distance: float) -> float | None:
+    return None if here is None else here + distance
 
 
 def refuse_letters(words: BlockWords, allowed: frozenset[str]) -> None:
     """Words that have no meaning with this motion make the block something else than it seems."""
-    strange = [value.letter for value in words.values if value.letter not in allowed | HARMLESS | set("GMNO")]
+    strange = words.by_letter.keys() - allowed - HARMLESS
     if strange:
-        letters = " and ".join(dict.fromkeys(strange))
-        raise NotUnderstood(f"{letters} is not understood in this block", "unsupported", tuple(strange))
+        letters = " and ".join(sorted(strange))
+        raise NotUnderstood(f"{letters} is not understood in this block", "unsupported", tuple(sorted(strange)))
 
 
 def known_start(run: Run, end: tuple[float | None, float | None]) -> Point:
@@ -87,7 +92,7 @@ def known_start(run: Run, end: tuple[float | None, float | None]) -> Point:
 def rapid(run: Run, words: BlockWords) -> None:
     """G0: both axes at their own rates to the end point."""
     run.close_chain()
-    refuse_letters(words, frozenset(AXIS_LETTERS))
+    refuse_letters(words, PLAIN_MOTION)
     z, r = end_point(run, words)
     if run.state.position is None or z is None or r is None:
         run.rapid_partly_known(z, r)
@@ -98,13 +103,13 @@ def rapid(run: Run, words: BlockWords) -> None:
 @motion("feed")
 def straight(run: Run, words: BlockWords) -> None:
     """G1, with corner and angle words where the block carries them."""
-    leg = read_leg(run, words)
-    if run.chain is None and not leg.needs_following and leg.angle is None:
+    if run.chain is None and words.by_letter.keys() <= PLAIN_MOTION:
         end = end_point(run, words)
         known_start(run, end)
         check_cut(run)
         run.travel(Stroke(Kind.FEED, Point(*_both(end))))
         return
+    leg = read_leg(run, words)
     if run.chain is None:
         run.chain = CornerChain(known_start(run, (run.state.z, run.state.r)))
     run.chain.legs.append(leg)
@@ -131,6 +136,9 @@ def read_leg(run: Run, words: BlockWords) -> Leg:
     allowed = frozenset((*AXIS_LETTERS, ",C", ",R", ",A", *("C", "R", "A", "I", "K") * plain))
     refuse_letters(words, allowed)
     z, r = end_point(run, words)
+    if (words.has("W") and z is None) or (words.has("U") and r is None):
+        text = "a distance from a corner that is known by its angle only: give the point"
+        raise CycleFault("cycle-corner", text, ("U", "W"))
     chamfer, rounding, turn = _corner_words(run, words)
     angle = words.number(",A") or (words.number("A") if plain else None)
     return Leg(
@@ -217,8 +225,12 @@ def thread_stroke(run: Run, words: BlockWords) -> None:
     run.close_chain()
     refuse_letters(words, frozenset((*AXIS_LETTERS, *("K",) * (run.state.motion == "variable thread"))))
     end = end_point(run, words)
-    known_start(run, end)
+    start = known_start(run, end)
     lead = millimetres(run, words, "E") or run.state.feed.value
     check_cut(run, thread=True)
+    change, target = millimetres(run, words, "K"), Point(*_both(end))
+    travel = max(abs(target.z - start.z), abs(target.r - start.r))
+    if lead and change and travel:
+        lead = mean_lead(travel, lead, change)
     feed = Feed("rev", lead) if lead else None
-    run.travel(Stroke(Kind.THREAD, Point(*_both(end)), feed=feed, lead=lead or None))
+    run.travel(Stroke(Kind.THREAD, target, feed=feed, lead=lead or None))

@@ -244,3 +244,32 @@ def test_every_element_is_touched(contour: list[Stroke], radius: float) -> None:
     for before, stroke in itertools.pairwise(contour):
         gap = LineString(sampled(before.end, stroke)).distance(centres)
         assert gap == pytest.approx(radius, abs=2e-3)
+
+
+def rounded(contour: list[Stroke]) -> list[Stroke]:
+    """The contour as a program writes it: three decimals, arcs by R, so that joints are not quite tangent."""
+    made: list[Stroke] = []
+    for stroke in contour:
+        end = Point(round(stroke.end.z, 3), round(2 * stroke.end.r, 3) / 2)
+        if stroke.centre is None:
+            made.append(Stroke(Kind.FEED, end))
+            continue
+        start, radius = made[-1].end, round(math.dist(stroke.centre, stroke.end), 3)
+        dz, dr = end.z - start.z, end.r - start.r
+        chord = math.hypot(dz, dr)
+        height = math.sqrt(radius**2 - chord**2 / 4) * (-1 if stroke.clockwise else 1)
+        centre = Point(start.z + dz / 2 - dr / chord * height, start.r + dr / 2 + dz / chord * height)
+        made.append(Stroke(Kind.ARC, end, centre=centre, clockwise=stroke.clockwise))
+    return made
+
+
+@settings(deadline=None, max_examples=60)
+@given(contour=staircases(), radius=st.sampled_from([0.4, 0.8, 1.2]))
+def test_rounding_of_the_words_raises_no_fault(contour: list[Stroke], radius: float) -> None:
+    start = Point(contour[0].end.z + 3.0, contour[0].end.r)
+    exact = offset_path(start, contour, "right", radius, 9, cancelled=False)
+    written = rounded(contour)
+    path = offset_path(start, written, "right", radius, 9, cancelled=False)
+    assert len(path.remarks) == len(exact.remarks)
+    if not path.remarks:
+        assert least_distance(written, path, radius, 9) >= radius - 1e-3
