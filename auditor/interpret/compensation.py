@@ -15,7 +15,8 @@ from typing import Literal
 from auditor.declared.model import Point
 from auditor.interpret.cycles.call import CycleRemark, Stroke
 from auditor.interpret.moves import Kind
-from auditor.interpret.nose import SMALL, Element, Joint, Nose, Side, joint_of, outside
+from auditor.interpret.nose import SMALL, Element, Joint, Nose, joint_of, outside
+from auditor.interpret.nose import Side as Side
 from auditor.interpret.plane import between, dot, sweep
 
 # from the nose centre to the imaginary tip, in nose radii, by tip number

@@ -32,7 +32,7 @@ class Stroke:
 
 
 @dataclass(frozen=True, slots=True)
-class CycleFault(Exception):
+class CycleFault(Exception):  # noqa: N818 - a fault of the program, not of ours
     """The cycle cannot be carried out as written; becomes a remark, the block is not audited."""
 
     topic: str
