@@ -7,7 +7,7 @@ from typing import Final
 import numpy as np
 from numpy.typing import ArrayLike
 
-from auditor.mechanics.validity import Floats, ValidRange, not_negative, positive
+from auditor.mechanics.validity import Floats, ValidRange, finite, not_negative, positive
 
 GRIP_SAFETY: Final = 1.5  # S_z and S_sp, smallest (VDI 3106)
 CENTRIFUGAL_SHARE: Final = 0.67  # of the static grip the jaws may lose (EN 1550)
@@ -100,7 +100,7 @@ def grip_for_cut(
         * not_negative("cut diameter", "mm", cut_diameter)
         / positive("grip diameter", "mm", grip_diameter)
     )
-    slip = np.hypot(turning, np.asarray(axial, dtype=np.float64))
+    slip = np.hypot(turning, finite("axial force", "N", axial))
     return np.asarray(slip / positive("friction", "", friction))
 
 

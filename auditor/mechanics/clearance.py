@@ -244,7 +244,8 @@ def height_angle(height: ArrayLike, diameter: ArrayLike) -> Floats:
 
     References
     ----------
-    Plane geometry normal to the spindle axis; accepted range of the height, see `HEIGHT_ERROR`.
+    Plane geometry normal to the spindle axis, eq. sin theta = 2 e / d; accepted range of the height, see
+    `HEIGHT_ERROR`.
     """
     e, d = finite("height error", "mm", height), not_negative("diameter", "mm", diameter)
     reaches = 2.0 * np.abs(e) >= d

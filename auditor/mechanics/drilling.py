@@ -101,7 +101,8 @@ def drill_torque(kc: ArrayLike, feed: ArrayLike, diameter: ArrayLike, pilot: Arr
 
     References
     ----------
-    Tschaetsch, Praxis der Zerspantechnik, drilling: force of a lip kc d f / 4 at d / 4 from the axis; from memory.
+    Tschaetsch, Praxis der Zerspantechnik, ch. on drilling: force of a lip kc d f / 4 at d / 4 from the axis; from
+    memory.
     """
     return np.asarray(_ring(kc, feed, diameter, pilot) / 8000.0)
 

@@ -73,8 +73,9 @@ def spindle_speed(vc: ArrayLike, diameter: ArrayLike, rpm_limit: ArrayLike) -> F
     """
     v, limit = not_negative("surface speed", "m/min", vc), positive("speed limit", "rpm", rpm_limit)
     around = np.pi * np.abs(finite("diameter", "mm", diameter))
-    asked = ratio(1000.0 * v, around)
-    return np.asarray(np.where(around == 0.0, np.where(v == 0.0, 0.0, limit), np.minimum(asked, limit)))
+    clamped = around * limit <= 1000.0 * v
+    free = ratio(1000.0 * v, around)
+    return np.asarray(np.where(v == 0.0, 0.0, np.where(clamped, limit, free)))
 
 
 def clamp_diameter(vc: ArrayLike, rpm_limit: ArrayLike) -> Floats:

@@ -7,7 +7,7 @@ from typing import Final, NamedTuple
 import numpy as np
 from numpy.typing import ArrayLike
 
-from auditor.mechanics.validity import Floats, ValidRange, angle, not_negative, positive
+from auditor.mechanics.validity import Floats, ValidRange, angle, finite, not_negative, positive
 
 LIFE: Final = ValidRange("edge life", "min", 5.0, 120.0, "ISO 3685 tests; three laboratories differ by up to 2 (AIST)")
 FLANK_WEAR_LIMIT: Final = 0.3  # mm, regular flank wear VB_B, carbide and ceramic (ISO 3685, from memory)
@@ -220,9 +220,7 @@ def extended_taylor_life(
     Kronenberg, Machining Science and Application (extended Taylor equation); Kosilova and Meshcheryakov, Spravochnik
     tekhnologa-mashinostroitelya, vol. 2 (1986), table 17 (form Cv / (T^m t^x S^y)).
     """
-    section = positive("feed", "mm/rev", feed) ** np.asarray(feed_exponent) * positive(
-        "depth of cut", "mm", depth
-    ) ** np.asarray(depth_exponent)
+    section = _section(feed, depth, feed_exponent, depth_exponent)
     slowed = positive("C", "m/min", C) / (positive("cutting speed", "m/min", vc) * section)
     return np.asarray(slowed ** (1.0 / _exponent(n)))
 
@@ -274,9 +272,7 @@ def extended_taylor_speed(
     ----------
     Kosilova and Meshcheryakov, Spravochnik tekhnologa-mashinostroitelya, vol. 2 (1986), table 17; range see `LIFE`.
     """
-    section = positive("feed", "mm/rev", feed) ** np.asarray(feed_exponent) * positive(
-        "depth of cut", "mm", depth
-    ) ** np.asarray(depth_exponent)
+    section = _section(feed, depth, feed_exponent, depth_exponent)
     return np.asarray(positive("C", "m/min", C) / (positive("life", "min", life) ** _exponent(n) * section))
 
 
@@ -347,3 +343,8 @@ def _exponent(n: ArrayLike) -> Floats:
     if np.any(x >= 1.0):
         raise ValueError("Taylor exponent must be below 1")
     return x
+
+
+def _section(feed: ArrayLike, depth: ArrayLike, feed_exponent: ArrayLike, depth_exponent: ArrayLike) -> Floats:
+    y, x = finite("feed exponent", "", feed_exponent), finite("depth exponent", "", depth_exponent)
+    return np.asarray(positive("feed", "mm/rev", feed) ** y * positive("depth of cut", "mm", depth) ** x)

@@ -2,14 +2,10 @@
 
 from __future__ import annotations
 
-from typing import Final
-
 import numpy as np
 from numpy.typing import ArrayLike
 
 from auditor.mechanics.validity import Floats, between, not_negative, positive, ratio
-
-HORSEPOWER_PER_CUBIC_INCH_MINUTE: Final = 2.73  # W s/mm3 per hp/(in3/min), rounded as textbooks do
 
 
 def cutting_power(Fc: ArrayLike, vc: ArrayLike) -> Floats:

@@ -243,7 +243,7 @@ def effective_rake(
     face, land = finite("face rake", "deg", face_rake), finite("land rake", "deg", land_rake)
     width = not_negative("land width", "mm", land_width)
     contact = positive("contact ratio", "", contact_ratio) * not_negative("chip thickness", "mm", h)
-    on_land = np.where(width == 0.0, 0.0, np.where(contact == 0.0, 1.0, np.minimum(ratio(width, contact), 1.0)))
+    on_land = np.where(width == 0.0, 0.0, np.where(contact <= width, 1.0, ratio(width, contact)))
     return np.asarray(pocket + on_land * land + (1.0 - on_land) * face)
 
 

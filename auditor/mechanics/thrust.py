@@ -47,7 +47,7 @@ def thrust_rake_factor(effective_rake: ArrayLike, reference_rake: ArrayLike) -> 
 
     References
     ----------
-    Klocke, Fertigungsverfahren 1, correction of feed force (5 %/deg) and passive force (4 %/deg), from memory.
+    Klocke, Fertigungsverfahren 1, table of corrections: feed force (5 %/deg) and passive force (4 %/deg), from memory.
     """
     g, reference = finite("effective rake", "deg", effective_rake), finite("reference rake", "deg", reference_rake)
     return np.asarray(np.maximum(1.0 - RAKE_SLOPE * (g - reference) / 100.0, 0.0))

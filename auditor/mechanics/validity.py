@@ -93,8 +93,7 @@ def angle(name: str, degrees: ArrayLike, low: float = -90.0, high: float = 90.0)
 
 
 def ratio(numerator: Floats, denominator: Floats) -> Floats:
-    """Numerator over denominator, NaN where the denominator is zero."""
-    top, bottom = np.broadcast_arrays(numerator, denominator)
-    out = np.full(top.shape, np.nan)
-    np.divide(top, bottom, out=out, where=bottom != 0.0)
-    return out
+    """Numerator over denominator, NaN where the denominator is zero or too small to divide by."""
+    with np.errstate(divide="ignore", invalid="ignore", over="ignore"):
+        out = np.divide(numerator, denominator)
+    return np.asarray(np.where(np.isinf(out), np.nan, out))
