@@ -119,7 +119,8 @@ def test_groove_plunge() -> None:
     assert simulation.removed[0] == pytest.approx(math.pi * (900.0 - 484.0) * 3.0, rel=1e-9)
     # the programmed corner is the one nearer the chuck: the groove lies in front of it
     groove = np.array([[z, r] for z, r in simulation.final.exterior.coords if abs(r - 22.0) < 1e-9])
-    assert groove[:, 0].min() == pytest.approx(-20.0) and groove[:, 0].max() == pytest.approx(-17.0)
+    assert groove[:, 0].min() == pytest.approx(-20.0)
+    assert groove[:, 0].max() == pytest.approx(-17.0)
 
 
 def test_rounded_groove_corners() -> None:
