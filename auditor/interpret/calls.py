@@ -79,7 +79,7 @@ def program_return(run: Run, words: BlockWords) -> None:
     flow = run.flow
     if len(flow.frames) == 1:
         target = words.integer("P")
-        if target is not None:
+        if target is not None and not flow.lies_behind(target):
             run.jump(target)
             return
         run.remark("repeats-main", "the main program starts over for ever; one pass is audited", "M")

@@ -7,9 +7,10 @@ from dataclasses import dataclass, field, replace
 
 from auditor.declared.control_settings import choice
 from auditor.declared.model import Control, Point, Tool
-from auditor.interpret.compensation import TIP_VECTORS, OffsetPath, Side, offset_path
+from auditor.interpret.compensation import TIP_VECTORS, OffsetPath, offset_path
 from auditor.interpret.cycles.call import CycleRemark, Stroke
 from auditor.interpret.moves import Kind
+from auditor.interpret.nose import Side
 
 
 @dataclass(slots=True)

@@ -26,11 +26,11 @@ def _check_feed(run: Run, thread: bool) -> None:
         if run.log.first_time("feed-missing", tool_line):
             run.remark("feed-missing", "no feed has been programmed before this cut")
         return
-    if feed.value == 0:
+    if feed.value <= 0.0:
         if run.log.first_time("feed-zero", feed.line):
-            run.remark("feed-zero", "the feed is zero: the axis does not move", "F", value=0.0)
+            run.remark("feed-zero", f"a feed of {feed.value:g} moves nothing", "F", value=feed.value)
         return
-    if feed.mode_line is not None:
+    if feed.given_in != feed.mode and not thread:
         other = "per minute" if feed.mode == "rev" else "per revolution"
         run.remark(
             "feed-mode-without-feed",
@@ -39,7 +39,7 @@ def _check_feed(run: Run, thread: bool) -> None:
             unit=f"mm/{feed.mode}",
             remedy="give F again in the block that changes the feed mode",
         )
-        feed.mode_line = None
+        feed.given_in = feed.mode
     implausible = (feed.mode == "rev" and feed.value > COARSE_FEED) or (feed.mode == "min" and feed.value < SLOW_FEED)
     if implausible and not thread and run.log.first_time("feed-implausible", feed.line, feed.mode):
         run.remark(
@@ -88,6 +88,9 @@ def _check_tool(run: Run) -> None:
     tool = run.state.tool
     if not tool.certain:
         return
+    if tool.number is not None:
+        cooled = run.log.wet_tools if run.state.coolant else run.log.dry_tools
+        cooled.setdefault(tool.number, run.words.line)
     if tool.number is None:
         if run.log.first_time("no tool"):
             run.remark("offset-missing", "no tool has been called before this cut")

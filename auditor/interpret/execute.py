@@ -27,6 +27,7 @@ NOT_TURNING = {
     "side tapping": "tapping from the side with a driven tool",
     "side boring": "boring from the side with a driven tool",
 }
+CALLS = frozenset({98, 99, 198})  # their H and other letters are no axes
 ARC_MOTIONS = frozenset({"arc clockwise", "arc counter-clockwise"})
 LIVE_MODES = {
     "polar interpolation": "polar interpolation off",
@@ -41,7 +42,6 @@ def carry_out(run: Run, block: Block) -> None:
     line, label = run.flow.place(block)
     run.words = BlockWords(line, label, block.text, ())
     run.called_name = block.called
-    run.block_in_doubt = False
     if block.fault is not None:
         skip_unreadable(run, block)
         return
@@ -99,6 +99,9 @@ def act(run: Run, words: BlockWords) -> None:
         return
     _check_repeats(run, words)
     check_numbers(run, words)
+    if words.only_moves:
+        _act_once_or_move(run, words)
+        return
     if not _takes_all_words(words):
         for phase in (Phase.READING, Phase.FEED, Phase.SPEED, Phase.TOOL, Phase.START, Phase.MODE):
             _take_effect(run, words, phase)
@@ -159,6 +162,8 @@ def _set_motion(run: Run, words: BlockWords) -> None:
                 run.state.stored.pop(function, None)
             run.state.motion, run.state.drilling = function, None
         elif group == "drilling":
+            if function != run.state.drilling:
+                run.state.stored.pop(function, None)
             run.state.drilling = function if function in DRILLING_CYCLES else None
 
 
@@ -167,7 +172,7 @@ def _act_once_or_move(run: Run, words: BlockWords) -> None:
     if once:
         ACTIONS[once[-1]](run, words)
         return
-    live = [value.letter for value in words.values if value.letter in LIVE_LETTERS]
+    live = [] if CALLS.intersection(words.m_codes) else sorted(words.by_letter.keys() & LIVE_LETTERS)
     circle = run.state.motion in ARC_MOTIONS and words.has("I", "K")
     if not has_axis_words(words) and not live and not circle:
         return
@@ -180,9 +185,10 @@ def _act_once_or_move(run: Run, words: BlockWords) -> None:
 
 
 def _refuse_live(run: Run, live: list[str]) -> None:
-    if live == ["C"] and run.state.motion == "feed" and choice(run.control, "corner_words") == "comma or plain":
+    plain_corners = choice(run.control, "corner_words") == "comma or plain"
+    if run.state.live_mode is None and set(live) <= {"A", "C"} and run.state.motion == "feed" and plain_corners:
         return
-    what = run.state.live_mode or "the axis of " + " and ".join(dict.fromkeys(live))
+    what = run.state.live_mode or "the axis of " + " and ".join(live)
     raise NotUnderstood(f"{what}: milling and second spindles are not followed", "axis-not-modelled", tuple(live))
 
 
@@ -226,11 +232,8 @@ def _check_repeats(run: Run, words: BlockWords) -> None:
     """Words and code groups that stand twice: the last acts, some controls refuse."""
     if _takes_all_words(words):
         return
-    seen: set[str] = set()
-    for value in words.values:
-        if value.letter in seen and value.letter not in "GM":
-            run.remark("word-repeated", f"{value.letter} stands twice in the block: the last one acts", value.letter)
-        seen.add(value.letter)
+    if len(words.values) > len(words.by_letter) + len(words.functions) + len(words.unknown_codes) + len(words.m_codes):
+        _note_repeated(run, words)
     groups = [group_of(function) for function in words.functions]
     for group in dict.fromkeys(groups):
         if group != "one-shot" and groups.count(group) > 1:
@@ -244,3 +247,11 @@ def _check_repeats(run: Run, words: BlockWords) -> None:
             value=float(len(words.m_codes)),
             limit=float(most),
         )
+
+
+def _note_repeated(run: Run, words: BlockWords) -> None:
+    seen: set[str] = set()
+    for value in words.values:
+        if value.letter in seen and value.letter not in "GM":
+            run.remark("word-repeated", f"{value.letter} stands twice in the block: the last one acts", value.letter)
+        seen.add(value.letter)

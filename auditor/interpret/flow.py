@@ -12,7 +12,7 @@ from auditor.parse.blocks import Block
 
 DEEPEST_CALL = 12  # programs one inside the other
 MOST_JUMPS = 20_000  # jumps back and calls in one run, beyond it a loop has no end
-MOST_STEPS = 2_000_000
+MOST_STEPS = 200_000  # blocks carried out, beside twice those of the file
 
 
 class EndlessError(Exception):
@@ -53,6 +53,7 @@ class Flow:
         self._from_start = choice(control, "sequence_search") == "from start"
         self._jumps = 0
         self._steps = 0
+        self._most_steps = MOST_STEPS + 2 * sum(len(program.blocks) for program in library.programs)
 
     @property
     def frame(self) -> Frame:
@@ -70,7 +71,7 @@ class Flow:
         if frame.index >= len(frame.program.blocks):
             return None
         self._steps += 1
-        if self._steps > MOST_STEPS:
+        if self._steps > self._most_steps:
             raise EndlessError
         block = frame.program.blocks[frame.index]
         frame.index += 1
@@ -94,6 +95,11 @@ class Flow:
             self._count()
         frame.index = place
         return True
+
+    def lies_behind(self, number: int) -> bool:
+        """Whether going on at block N``number`` repeats what ran already."""
+        place = self.frame.program.find(number, self.frame.index - 1, from_start=self._from_start)
+        return place is not None and place < self.frame.index
 
     def repeated_number(self, number: int) -> tuple[int, ...]:
         """Lines of all blocks that carry a number which stands more than once."""

@@ -18,13 +18,16 @@ class Log:
     motion_lines: set[int] = field(default_factory=set)
     assumptions: dict[str, Assumption] = field(default_factory=dict)  # by what they are about
     dwell_time: float = 0.0  # s, of which the moves carry those behind them
+    wet_tools: dict[int, int] = field(default_factory=dict)  # tool that cut with coolant -> line
+    dry_tools: dict[int, int] = field(default_factory=dict)
     arc_sweeps: list[float] = field(default_factory=list)  # degrees, of every arc
     tools_called: dict[int, int] = field(default_factory=dict)  # tool number -> line of first call
     said: set[tuple[object, ...]] = field(default_factory=set)
 
     def add_move(self, move: Move) -> None:
-        """Append a move; its index is its place in the list."""
-        self.moves.append(replace(move, index=len(self.moves)))
+        """Append a move, whose index is its place in the list."""
+        assert move.index == len(self.moves)
+        self.moves.append(move)
         self.motion_lines.add(move.line)
 
     def add_remark(self, remark: Remark) -> None:

@@ -42,5 +42,6 @@ def end_of_program(run: Run, words: BlockWords) -> None:
 
 def note_unknown(run: Run, code: int) -> None:
     """An M code that is the machine builder's choice: once per number."""
+    run.log.first_time("unknown coolant")  # it may be a coolant of the builder's own
     if run.log.first_time("unknown-m", code):
         run.remark("unknown-m", f"M{code} is the machine builder's choice: no effect on the path is assumed", "M")

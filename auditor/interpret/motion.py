@@ -111,7 +111,7 @@ def straight(run: Run, words: BlockWords) -> None:
         return
     leg = read_leg(run, words)
     if run.chain is None:
-        run.chain = CornerChain(known_start(run, (run.state.z, run.state.r)))
+        run.chain = CornerChain(run.state.position or known_start(run, (leg.end_z, leg.end_r)))
     run.chain.legs.append(leg)
     run.chain.words.append(words)
     check_cut(run)
@@ -227,10 +227,11 @@ def thread_stroke(run: Run, words: BlockWords) -> None:
     end = end_point(run, words)
     start = known_start(run, end)
     lead = millimetres(run, words, "E") or run.state.feed.value
+    lead = None if lead is None or lead <= 0.0 else lead
     check_cut(run, thread=True)
     change, target = millimetres(run, words, "K"), Point(*_both(end))
     travel = max(abs(target.z - start.z), abs(target.r - start.r))
     if lead and change and travel:
         lead = mean_lead(travel, lead, change)
     feed = Feed("rev", lead) if lead else None
-    run.travel(Stroke(Kind.THREAD, target, feed=feed, lead=lead or None))
+    run.travel(Stroke(Kind.THREAD, target, feed=feed, lead=lead))

@@ -135,10 +135,17 @@ def _skipped(run: Run, block: Block) -> bool:
     if block.skip is None:
         return False
     out = run.control.block_skip
-    if run.log.first_time("block-skip"):
-        how = "left out" if out else "carried out"
-        run.log.add_remark(Remark("block-skip", block.line, block.label, f"blocks that begin with / are {how} here"))
+    if _changes_the_path(block) and run.log.first_time("block-skip"):
+        text = f"blocks that begin with / are {'left out' if out else 'carried out'}: the path differs with the switch"
+        run.log.add_remark(Remark("block-skip", block.line, block.label, text))
     return out
+
+
+def _changes_the_path(block: Block) -> bool:
+    """Whether the way through the program or of the tool depends on the block."""
+    letters = {word.letter for word in block.words}
+    jumps = any(word.letter == "M" and getattr(word.value, "value", None) in (2, 30, 98, 99) for word in block.words)
+    return bool(letters & set("XZUWT")) or jumps or block.statement is not None or block.fault is not None
 
 
 def _close(run: Run) -> None:
@@ -146,6 +153,7 @@ def _close(run: Run) -> None:
     run.settle()
     check_limited(run)
     _check_arc_sense(run)
+    _check_coolant(run)
     _note_uncalled(run)
 
 
@@ -159,6 +167,16 @@ def _check_arc_sense(run: Run) -> None:
             f"{long_ones} of {len(sweeps)} arcs turn through more than half a circle",
             remedy='some controls swap G2 and G3: control.arcs = "mirrored"',
         )
+
+
+def _check_coolant(run: Run) -> None:
+    """Tools that cut dry in a program whose other tools have coolant."""
+    log = run.log
+    if not log.wet_tools or log.has_been("unknown coolant"):
+        return
+    for tool, line in log.dry_tools.items():
+        if tool not in log.wet_tools:
+            run.remark("coolant", f"tool {tool} cuts without coolant, other tools of the program have it", line=line)
 
 
 def _note_uncalled(run: Run) -> None:

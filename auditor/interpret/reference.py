@@ -32,7 +32,7 @@ def reference_return(run: Run, words: BlockWords) -> None:
     if home is None and run.log.first_time("home-unknown", name):
         run.remark(
             "home-unknown",
-            f"machine.{name} is not declared: the way to the reference point is not checked, "
+            f"{name} is not declared: the way to the reference point is not checked, "
             "the position is known again when X and Z are restated",
             "G",
         )
@@ -42,9 +42,9 @@ def reference_return(run: Run, words: BlockWords) -> None:
 def _reference(run: Run, words: BlockWords) -> tuple[Point | None, str]:
     machine = run.job.machine
     if words.calls("reference return"):
-        return machine.home, "home"
+        return machine.home, "machine.home"
     if (words.integer("P") or 2) == 2:
-        return machine.second_home, "second_home"
+        return machine.second_home, "machine.second_home"
     return None, f"reference point {words.integer('P')}"
 
 

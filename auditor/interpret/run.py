@@ -60,7 +60,6 @@ class Run:
     cycle: str | None = None  # the cycle whose strokes are being written
     cycle_side: Side | None = None  # compensation of these strokes
     stock_in_doubt: bool = False  # a not-audited block may have cut
-    block_in_doubt: bool = False  # this block rests on something that was not understood
     flow_in_doubt: bool = False  # the way taken depended on something not known
     moved: bool = False  # the program has moved already
     strokes: int = 0  # carried out so far
@@ -107,10 +106,9 @@ class Run:
         )
         self.log.add_remark(remark)
 
-    def not_audited(self, reason: str, words: BlockWords | None = None) -> None:
+    def not_audited(self, reason: str) -> None:
         """The block has motion that cannot be followed; it may have cut unless it was a rapid."""
-        words = words or self.words
-        self.log.add_not_audited(words.line, words.text, reason)
+        self.log.add_not_audited(self.words.line, self.words.text, reason)
         if self.state.motion != "rapid":
             self.stock_in_doubt = True
 
@@ -127,9 +125,9 @@ class Run:
         """Something unknown ran here: the block is not audited, and nothing it may have changed is known."""
         self.settle()
         self.log.add_not_audited(self.words.line, self.words.text, reason)
-        self.stock_in_doubt = True
+        self.stock_in_doubt = self.flow_in_doubt = True
         self.state.forget_position()
-        self.state.forget_readings()
+        self.state.motion = self.state.drilling = None
 
     def target_missing(self, number: int) -> None:
         """A jump or return to a block that does not exist: where the program goes on is not known."""
@@ -236,7 +234,7 @@ class Run:
         self.moved = True
         self.log.add_move(
             Move(
-                index=0,
+                index=len(self.log.moves),
                 line=stroke.line or self.words.line,
                 block=stroke.block,
                 tool=state.tool.number if state.tool.certain else None,
@@ -271,7 +269,7 @@ class Run:
         """Whether a move rests on something that was not understood."""
         state = self.state
         cut_in_doubt = kind is not Kind.RAPID and not (state.spindle.certain and state.feed.certain)
-        return cut_in_doubt or self.block_in_doubt or self.flow_in_doubt or state.foreign_zero or not state.tool.certain
+        return cut_in_doubt or self.flow_in_doubt or state.foreign_zero or not state.tool.certain
 
     def settle(self) -> None:
         """Carry out what still waits for a following move: corners, a compensated run."""
@@ -296,6 +294,7 @@ class Run:
             path = run.release(self.control, self.tool)
         except CycleFault as fault:
             self.cycle_fault(fault)
+            self.stock_in_doubt = True
             self.not_audited(fault.message)
             return
         tip, run.side = run.tip, side
@@ -314,7 +313,8 @@ class Run:
         except CycleFault as fault:
             self.cycle_fault(fault)
             for words in chain.words:
-                self.not_audited(fault.message, words)
+                self.log.add_not_audited(words.line, words.text, fault.message)
+            self.stock_in_doubt = True
             return
         self.state.z, self.state.r = chain.start
         for stroke in strokes:

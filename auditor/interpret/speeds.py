@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from typing import Literal
 
 from auditor.declared.control_settings import amount
 from auditor.interpret.cycles.call import INCH
@@ -12,16 +13,14 @@ from auditor.interpret.words import BlockWords
 from auditor.parse.blocks import Number
 
 FOOT = 0.3048  # m
+_FEED_MODES: dict[str, Literal["rev", "min"]] = {"feed per minute": "min", "feed per revolution": "rev"}
 
 
 @modal(Phase.FEED, "feed per minute", "feed per revolution")
 def feed_mode(run: Run, words: BlockWords) -> None:
     """The feed mode; a feed that is not given again keeps its number and changes its meaning."""
-    feed = run.state.feed
-    mode = "min" if "feed per minute" in words.functions else "rev"
-    if mode != feed.mode and feed.value:
-        feed.mode_line = words.line
-    feed.mode = "min" if mode == "min" else "rev"
+    mode = next(function for function in reversed(words.functions) if function in _FEED_MODES)
+    run.state.feed.mode = _FEED_MODES[mode]
 
 
 @word(Phase.FEED)
@@ -32,7 +31,7 @@ def feed_word(run: Run, words: BlockWords) -> None:
         return
     feed = run.state.feed
     feed.value = read_feed(run, number)
-    feed.line, feed.mode_line, feed.certain = words.line, None, True
+    feed.line, feed.given_in, feed.certain = words.line, feed.mode, True
 
 
 def read_feed(run: Run, number: Number) -> float:
@@ -88,15 +87,17 @@ def speed_word(run: Run, words: BlockWords) -> None:
         speed_limit(run, number.value)
         return
     spindle = run.state.spindle
-    spindle.value = number.value
-    if spindle.mode == "surface" and run.state.inch:
-        spindle.value *= FOOT
+    foot = FOOT if spindle.mode == "surface" and run.state.inch else 1.0
+    spindle.value = number.value * foot if number.value > 0.0 else None
     spindle.speed_mode_line, spindle.certain = None, True
 
 
 def speed_limit(run: Run, rpm: float) -> None:
     """The programmed limit of the spindle speed."""
     spindle = run.state.spindle
+    if rpm <= 0.0:
+        spindle.clamp = None
+        return
     spindle.clamp, spindle.unclamped_line = rpm, None
     lowest, whose = run.job.machine.speed_limit, "machine"
     chuck = run.job.workholding.speed_limit

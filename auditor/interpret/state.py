@@ -38,11 +38,11 @@ class FeedState:
     value: float | None = None  # mm/rev or mm/min
     certain: bool = True
     line: int = 0  # of the F word
-    mode_line: int | None = None  # mode changed here without F, not yet restated
+    given_in: Literal["rev", "min"] = "rev"  # the mode in which F was given
 
     def command(self) -> Feed | None:
-        """The commanded feed; None when there is none, or zero, which moves nothing."""
-        return None if not self.value else Feed(self.mode, self.value)
+        """The commanded feed; None when there is none, or one that moves nothing."""
+        return None if self.value is None or self.value <= 0.0 else Feed(self.mode, self.value)
 
 
 @dataclass(slots=True)
@@ -82,7 +82,6 @@ class State:
     data_input: bool = False  # between G10 L50 and G11
     live_mode: str | None = None  # polar or cylindrical interpolation, opposite turret …
     stored: dict[str, dict[str, float]] = field(default_factory=dict)  # per cycle: modal depths, retracts
-    cycle_words: dict[str, float] = field(default_factory=dict)
 
     @property
     def position(self) -> Point | None:
@@ -94,9 +93,3 @@ class State:
     def forget_position(self) -> None:
         """Both coordinates are unknown until they are restated."""
         self.z = self.r = None
-
-    def forget_readings(self) -> None:
-        """S, F, T and the motion code may have changed in a way that could not be read."""
-        self.spindle.certain = self.feed.certain = self.tool.certain = False
-        self.motion = None
-        self.drilling = None

@@ -21,7 +21,7 @@ def carry_out_statement(run: Run, block: Block) -> None:
         if _holds(run, statement.condition):
             _assign(run, statement.then, block)
     elif isinstance(statement, Goto):
-        if statement.condition is None or _holds(run, statement.condition):
+        if statement.condition is None or _jumps(run, statement):
             _goto(run, statement.target)
     elif isinstance(statement, Do):
         _do(run, statement)
@@ -39,14 +39,27 @@ def calculator(run: Run, *, increment: float | None = None) -> Calculator:
 
 def _holds(run: Run, condition: Expression) -> bool:
     truth = calculator(run).holds(condition)
-    unknown = run.variables.take_unknown()
-    if unknown:
-        run.flow_in_doubt = True
-        run.remark(
-            "unknown-variable",
-            f"the way taken depends on {named(unknown)}, which only the control knows; taken as empty",
-        )
+    if run.variables.unknown:
+        _doubt_way(run, "taken as empty")
     return truth
+
+
+def _doubt_way(run: Run, reading: str) -> None:
+    variables = named(run.variables.take_unknown())
+    run.flow_in_doubt = True
+    run.remark("unknown-variable", f"the way taken depends on {variables}, which only the control knows; {reading}")
+
+
+def _jumps(run: Run, statement: Goto) -> bool:
+    """Whether IF lets GOTO act; back over a value that only the control knows (a part counter), one pass is run."""
+    assert statement.condition is not None
+    truth = calculator(run).holds(statement.condition)
+    if not run.variables.unknown:
+        return truth
+    number = calculator(run).value(statement.target)
+    back = number is not None and run.flow.lies_behind(round(number))
+    _doubt_way(run, "one pass is carried out" if back else "taken as empty")
+    return truth and not back
 
 
 def named(variables: set[int]) -> str:
@@ -97,8 +110,17 @@ def _do(run: Run, statement: Do) -> None:
     if partner is None:
         run.remark("target-missing", f"DO{statement.label} has no END{statement.label}")
         run.flow_in_doubt = True
-    elif statement.condition is not None and not _holds(run, statement.condition):
+    elif statement.condition is not None and not _enters(run, statement.condition, partner):
         run.flow.go_to_index(partner + 1)
+
+
+def _enters(run: Run, condition: Expression, end: int) -> bool:
+    """Whether a loop runs (again); over a value that only the control knows it runs once."""
+    truth = calculator(run).holds(condition)
+    if not run.variables.unknown:
+        return truth
+    _doubt_way(run, "the loop is carried out once")
+    return run.log.first_time("loop", run.flow.frame.program.title, end)
 
 
 def _end(run: Run) -> None:

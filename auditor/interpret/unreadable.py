@@ -10,7 +10,7 @@ from auditor.parse.blocks import Block
 
 _COMMENT = re.compile(r"\([^)]*\)?")
 _MAY_MOVE = re.compile(r"[XZUWYVCHB]|M0*1?98|G0*6[56]")
-_MAY_CHANGE = re.compile(r"[FSTM]")
+_READINGS = {letter: re.compile(letter + r"\s*[-+.0-9#\[]") for letter in "FST"}
 _CODE = re.compile(r"G(?=(?P<code>[0-9]{1,3}(?:\.[0-9])?)?)")
 
 
@@ -29,8 +29,11 @@ def skip_unreadable(run: Run, block: Block) -> None:
     if _MAY_MOVE.search(text):
         state.forget_position()
         run.stock_in_doubt = run.stock_in_doubt or state.motion != "rapid"
-    if _MAY_CHANGE.search(text):
-        state.spindle.certain = state.feed.certain = state.tool.certain = False
+    # a comment that was never closed may hold words for the control: there the whole line counts
+    readable = block.text.upper() if unclosed else text
+    for letter, held in (("F", state.feed), ("S", state.spindle), ("T", state.tool)):
+        if _READINGS[letter].search(readable):
+            held.certain = False
 
 
 def _motion_behind(run: Run, text: str) -> str | None:

@@ -11,7 +11,7 @@ from auditor.interpret.systems import canonical_code, function_of
 from auditor.parse.blocks import Number
 
 LENGTH_LETTERS = frozenset({"X", "Z", "U", "W", "Y", "V", "I", "J", "K", "R", ",C", ",R"})
-LIVE_LETTERS = frozenset({"Y", "V", "C", "H", "B"})  # axes of milling and of second spindles
+LIVE_LETTERS = frozenset({"Y", "V", "A", "B", "C", "H"})  # axes of milling and of second spindles
 
 
 @dataclass(frozen=True, slots=True)
@@ -44,7 +44,13 @@ class BlockWords:
 
     def has(self, *letters: str) -> bool:
         """Whether any of the letters stands in the block."""
-        return any(letter in self.by_letter for letter in letters)
+        return not self.by_letter.keys().isdisjoint(letters)
+
+    @property
+    def only_moves(self) -> bool:
+        """Whether the block holds nothing but words for the motion in force."""
+        codes = self.functions or self.unknown_codes or self.m_codes
+        return not codes and self.by_letter.keys().isdisjoint("FST")
 
     def calls(self, function: str) -> bool:
         """Whether a G word of the block calls the function."""

@@ -141,9 +141,10 @@ def test_end(snippet: dict[str, Any]) -> None:
     assert interpreted(snippet).ended == snippet["ended"]
 
 
-@pytest.mark.parametrize(
-    "snippet", [s for s in SNIPPETS if s.get("moves") and not s.get("marks") and s["id"] not in DISAGREEMENTS], ids=named
-)
+UNMARKED = [s for s in SNIPPETS if s.get("moves") and not s.get("marks") and s["id"] not in DISAGREEMENTS]
+
+
+@pytest.mark.parametrize("snippet", UNMARKED, ids=named)
 def test_a_text_without_marks_is_wholly_audited(snippet: dict[str, Any]) -> None:
     assert interpreted(snippet).not_audited == ()
 
@@ -172,8 +173,8 @@ def test_offset_cancelled_is_said_at_the_cut() -> None:
 
 
 def test_compensation_starts_in_an_arc() -> None:
-    found = interpreted({"code": "T0101\nG0 X20. Z0.\nG42 G3 X30. Z-5. R5. F.1\nG1 Z-20.\nG40 G0 X50.", "preamble": True})
-    assert "compensation-in-arc" in topics(found)
+    text = "T0101\nG0 X20. Z0.\nG42 G3 X30. Z-5. R5. F.1\nG1 Z-20.\nG40 G0 X50."
+    assert "compensation-in-arc" in topics(interpreted({"code": text, "preamble": True}))
 
 
 def test_compensation_ends_in_an_arc() -> None:
