@@ -13,7 +13,8 @@ from auditor.predict.loads import Floats
 from auditor.simulate.samples import Samples
 from auditor.simulate.stock import boundary_segments
 
-SLICES = 8  # per stretch between two nodes of the outline: a cone is taken as that many steps
+STEP = 2.0  # mm: a cone between two nodes of the outline is taken as steps of this length
+MOST_STEPS = 16
 SHORTEST = 1e-6  # mm
 
 
@@ -22,9 +23,13 @@ def compliances(samples: Samples, stock_before: Mapping[int, BaseGeometry], job:
     give = np.zeros(len(samples.move))
     supports = _supports(job.workholding)
     moves, first = np.unique(samples.move, return_index=True)
+    known: BaseGeometry | None = None
+    sections: tuple[Floats, Floats] | None = None
     for move, rows in zip(moves, np.split(np.arange(len(give)), first[1:]), strict=True):
         stock = stock_before.get(int(move))
-        sections = None if stock is None else sections_of(stock, -job.workholding.stick_out)
+        if stock is not known:  # merged moves share the stock before them
+            known = stock
+            sections = None if stock is None else sections_of(stock, -job.workholding.stick_out)
         if sections is None:
             continue
         ends, moments = sections
@@ -40,7 +45,7 @@ def _supports(workholding: Workholding) -> Supports:
 def sections_of(stock: BaseGeometry, jaw_face: float) -> tuple[Floats, Floats] | None:
     """Ends of the sections from the jaw face, mm, and their second moments of area, mm4; None when nothing stands out.
 
-    Cones and curves are cut into steps of equal length; bores and undercuts count as what is missing.
+    Cones are cut into steps; bores and undercuts count as what is missing.
     """
     begin, end = boundary_segments(stock)
     nodes = np.unique(np.concatenate(([jaw_face], begin[:, 0])))
@@ -48,8 +53,10 @@ def sections_of(stock: BaseGeometry, jaw_face: float) -> tuple[Floats, Floats] |
     nodes = nodes[np.append(True, np.diff(nodes) > SHORTEST)]
     if len(nodes) < 2:
         return None
-    steps = np.linspace(0.0, 1.0, SLICES, endpoint=False)
-    ends = np.append((nodes[:-1, None] + np.diff(nodes)[:, None] * steps).ravel(), nodes[-1])
+    width = np.diff(nodes)
+    count = np.clip(np.ceil(width / STEP).astype(np.int64), 1, MOST_STEPS)
+    number = np.arange(count.sum()) - np.repeat(np.cumsum(count) - count, count)
+    ends = np.append(np.repeat(nodes[:-1], count) + number * np.repeat(width / count, count), nodes[-1])
     middle = 0.5 * (ends[:-1] + ends[1:])
     moments = _second_moments(begin, end, middle)
     solid = moments > 0.0

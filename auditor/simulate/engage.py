@@ -8,6 +8,7 @@ across such a slab, and every stretch begins and ends on straight ramps.
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -17,6 +18,7 @@ from auditor.simulate.samples import Edge, Floats, Ints
 
 SAME = 1e-6  # mm: events closer than this happen together; thinner skins of stock are dust
 THIN = 1e-8  # mm: slabs narrower than this are skipped
+BEYOND = 1e9  # mm: where stock ends that the move does not reach the end of
 
 
 @dataclass(frozen=True, slots=True)
@@ -33,6 +35,10 @@ class Stretches:
         """Whether anything is cut at all."""
         return len(self.position) > 0
 
+    def only(self, rows: NDArray[np.bool_]) -> Stretches:
+        """The rows that a mask picks."""
+        return Stretches(self.position[rows], self.low[rows], self.high[rows], self.stretch[rows])
+
 
 NOTHING = Stretches(np.empty(0), np.empty(0), np.empty(0), np.empty(0, dtype=np.int64))
 
@@ -47,7 +53,13 @@ class _Passages:
     leave: Floats  # and where it leaves it, (n, 2)
 
 
-def engagement(edge: Edge, sides: tuple[Floats, Floats], start: tuple[float, float], length: float) -> Stretches:
+def engagement(
+    edge: Edge,
+    sides: tuple[Floats, Floats],
+    start: tuple[float, float],
+    length: float,
+    marks: Sequence[float] | Floats = (),
+) -> Stretches:
     """Engaged stretches while the programmed point runs ``length`` mm from ``start`` along the edge's direction.
 
     Args:
@@ -55,11 +67,12 @@ def engagement(edge: Edge, sides: tuple[Floats, Floats], start: tuple[float, flo
         sides: starts and ends (n, 2) of the stock's sides, inside on their left.
         start: (z, r) of the programmed point.
         length: mm.
+        marks: further positions at which rows are wanted.
     """
     passages = _passages(edge, sides, start, length)
     if passages is None:
         return NOTHING
-    positions, behind = _events(passages, length)
+    positions, behind = _events(passages, length, marks)
     low, high = _intervals(passages, positions, behind)
     kept = _distinct(positions, low, high)
     return _joined(positions[kept], low[kept], high[kept])
@@ -74,7 +87,6 @@ def _passages(
     across_begin = begin[:, 1] * dz - begin[:, 0] * dr
     across_end = end[:, 1] * dz - end[:, 0] * dr
     lowest, highest = edge.across[0], edge.across[-1]
-    # Where the stock is met its boundary runs back across the feed: inside on the left, ahead of the edge.
     near = (
         (np.minimum(across_begin, across_end) < highest - THIN)
         & (np.maximum(across_begin, across_end) > lowest + THIN)
@@ -87,6 +99,11 @@ def _passages(
     along_end = end[:, 0] * dz + end[:, 1] * dr
     if max(along_begin.max(), along_end.max()) < edge.along.min():
         return None
+    # Sides beyond the end of the move matter only as "not left yet"; see _paired.
+    reached = np.minimum(along_begin, along_end) < edge.along.max() + length + SAME
+    if not reached.all():
+        along_begin, along_end = along_begin[reached], along_end[reached]
+        across_begin, across_end = across_begin[reached], across_end[reached]
     nodes = np.sort(np.concatenate((edge.across, across_begin, across_end)))
     nodes = nodes[(nodes >= lowest) & (nodes <= highest)]
     wide = np.diff(nodes) > THIN
@@ -107,6 +124,7 @@ def _passages(
         ),
         axis=1,
     )
+    # Inside on the left: where the stock is met, its boundary runs back across the feed.
     entering = (across_end < across_begin)[side]
     return _paired(slab, reach, entering, slab_low, slab_high, length)
 
@@ -114,11 +132,16 @@ def _passages(
 def _paired(
     slab: Ints, reach: Floats, entering: NDArray[np.bool_], slab_low: Floats, slab_high: Floats, length: float
 ) -> _Passages | None:
-    """Join each entry with the exit that follows it in its slab; keep what happens within the move."""
+    """Join each entry with the exit that follows it in its slab; keep what happens within the move.
+
+    An entry that is last in its slab is left beyond the move's end.
+    """
     order = np.lexsort((reach.sum(axis=1), slab))
     slab, reach, entering = slab[order], reach[order], entering[order]
-    pair = np.flatnonzero(entering[:-1] & ~entering[1:] & (slab[:-1] == slab[1:]))
-    enter, leave = reach[pair], reach[pair + 1]
+    last = np.append(slab[:-1] != slab[1:], True)
+    pair = np.flatnonzero(entering & (last | ~np.append(entering[1:], False)))
+    enter = reach[pair]
+    leave = np.where(last[pair, None], BEYOND, reach[np.minimum(pair + 1, len(reach) - 1)])
     kept = (
         (leave.max(axis=1) > SAME)
         & (enter.min(axis=1) < length - SAME)
@@ -130,12 +153,12 @@ def _paired(
     return _Passages(slab_low[slab[pair]], slab_high[slab[pair]], enter, leave)
 
 
-def _events(passages: _Passages, length: float) -> tuple[Floats, NDArray[np.bool_]]:
+def _events(passages: _Passages, length: float, marks: Sequence[float] | Floats) -> tuple[Floats, NDArray[np.bool_]]:
     """Positions at which a ramp begins or ends, each seen from before and from behind.
 
     Of events closer than SAME the state before the first and behind the last is kept.
     """
-    times = np.sort(np.concatenate((passages.enter.ravel(), passages.leave.ravel())))
+    times = np.sort(np.concatenate((passages.enter.ravel(), passages.leave.ravel(), marks)))
     times = times[(times > SAME) & (times < length - SAME)]
     gap = np.diff(times) > SAME
     firsts = times[np.concatenate(([True], gap))] if len(times) else times
@@ -154,15 +177,20 @@ def _intervals(
 ) -> tuple[Floats, Floats]:
     """Engaged interval of every slab (columns) at every position (rows); empty where low >= high."""
     width = passages.high - passages.low
-    entered = _share(passages.enter, positions, behind)
-    left = _share(passages.leave, positions, behind)
+    count = len(width)
+    share = _share(np.concatenate((passages.enter, passages.leave)), positions, behind) * np.tile(width, 2)
+    entered, left = share[:, :count], share[:, count:]
     enters_low_first = passages.enter[:, 0] <= passages.enter[:, 1]
     leaves_low_first = passages.leave[:, 0] <= passages.leave[:, 1]
-    low_enter = np.where(enters_low_first, passages.low, passages.high - entered * width)
-    high_enter = np.where(enters_low_first, passages.low + entered * width, passages.high)
-    low_leave = np.where(leaves_low_first, passages.low + left * width, passages.low)
-    high_leave = np.where(leaves_low_first, passages.high, passages.high - left * width)
-    return np.maximum(low_enter, low_leave), np.minimum(high_enter, high_leave)
+    low = np.maximum(
+        np.where(enters_low_first, passages.low, passages.high - entered),
+        np.where(leaves_low_first, passages.low + left, passages.low),
+    )
+    high = np.minimum(
+        np.where(enters_low_first, passages.low + entered, passages.high),
+        np.where(leaves_low_first, passages.high, passages.high - left),
+    )
+    return low, high
 
 
 def _distinct(positions: Floats, low: Floats, high: Floats) -> NDArray[np.bool_]:
@@ -179,8 +207,8 @@ def _distinct(positions: Floats, low: Floats, high: Floats) -> NDArray[np.bool_]
 
 def _share(ramp: Floats, positions: Floats, behind: NDArray[np.bool_]) -> Floats:
     """Share of a slab that a ramp has passed at each position, (positions, slabs)."""
-    first, last = ramp.min(axis=1), ramp.max(axis=1)
-    rise = last - first
+    first = ramp.min(axis=1)
+    rise = ramp.max(axis=1) - first
     # An edge that meets a parallel boundary jumps: nothing before, all behind. At the very start of a move
     # what lies within SAME has been reached.
     reach = positions[:, None] + np.where(behind, SAME, -SAME)[:, None]
@@ -193,23 +221,25 @@ def _share(ramp: Floats, positions: Floats, behind: NDArray[np.bool_]) -> Floats
 def _joined(positions: Floats, low: Floats, high: Floats) -> Stretches:
     """Slab intervals joined to connected stretches; a row with low == high where nothing is engaged."""
     engaged = high - low > THIN
-    if not engaged.any():
+    row = engaged.nonzero()[0]
+    if len(row) == 0:
         return NOTHING
-    row, column = np.nonzero(engaged)
-    lows, highs = low[row, column], high[row, column]
-    order = np.lexsort((lows, row))
-    row, lows, highs = row[order], lows[order], highs[order]
+    lows, highs = low[engaged], high[engaged]
+    if (lows[1:] < lows[:-1])[row[1:] == row[:-1]].any():  # two passages in one slab
+        order = np.lexsort((lows, row))
+        row, lows, highs = row[order], lows[order], highs[order]
     fresh = np.ones(len(row), dtype=bool)
     fresh[1:] = (row[1:] != row[:-1]) | (lows[1:] > highs[:-1] + SAME)
-    first = np.flatnonzero(fresh)
+    first = fresh.nonzero()[0]
     last = np.append(first[1:] - 1, len(row) - 1)
-    rows = row[first]
-    idle = np.setdiff1d(np.arange(len(positions)), rows)
-    all_rows = np.concatenate((rows, idle))
-    all_low = np.concatenate((lows[first], np.zeros(len(idle))))
-    all_high = np.concatenate((highs[last], np.zeros(len(idle))))
-    order = np.lexsort((all_low, all_rows))
-    all_rows, all_low, all_high = all_rows[order], all_low[order], all_high[order]
-    run_start = np.flatnonzero(np.concatenate(([True], all_rows[1:] != all_rows[:-1])))
-    ordinal = np.arange(len(all_rows)) - np.repeat(run_start, np.diff(np.append(run_start, len(all_rows))))
-    return Stretches(positions[all_rows], all_low, all_high, ordinal)
+    idle = np.flatnonzero(~engaged.any(axis=1))
+    nothing = np.zeros(len(idle))
+    rows = np.concatenate((row[first], idle))
+    order = rows.argsort(kind="stable")
+    rows = rows[order]
+    return Stretches(
+        positions[rows],
+        np.concatenate((lows[first], nothing))[order],
+        np.concatenate((highs[last], nothing))[order],
+        np.arange(len(rows)) - np.searchsorted(rows, rows),
+    )

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, fields
+from dataclasses import dataclass, fields, replace
 from typing import Any
 
 import numpy as np
@@ -12,16 +12,18 @@ from shapely.geometry.base import BaseGeometry
 
 from auditor.declared.model import Job, Point, Tool
 from auditor.interpret.moves import Interpretation, Kind, Move
-from auditor.simulate.engage import engagement
+from auditor.simulate.engage import Stretches, engagement
 from auditor.simulate.outline import Outline
-from auditor.simulate.pieces import Piece, pieces
+from auditor.simulate.pieces import Piece, path_length, pieces, straight
 from auditor.simulate.rapids import dogleg_contact, near_contact
+from auditor.simulate.runs import runs
 from auditor.simulate.samples import Contact, Edge, Floats, Ints, LoosePiece, Samples, Simulation
 from auditor.simulate.stock import boundary_segments, raw_stock, split_loose, swept, volume, without
 from auditor.simulate.surface import final_surface
 from auditor.simulate.threads import thread_pass
 from auditor.simulate.tool_outline import tool_outline
 
+JOINT = 2e-6  # mm: a row this close to the joint of two merged moves lies on it
 SCRATCH = 0.005  # mm: a rapid that only grazes a cut surface is no contact
 
 
@@ -85,8 +87,9 @@ class Follower:
         self.loose: list[LoosePiece] = []
         self.stock_before: dict[int, BaseGeometry] = {}
 
-    def follow(self, move: Move) -> None:
-        """Carry one move out."""
+    def follow(self, run: Sequence[Move]) -> None:
+        """Carry out one move, or a run of cuts that lie on one line."""
+        move = run[0]
         tool = self.job.tools.get(move.tool) if move.tool is not None else None
         if tool is None or tool.kind == "stop" or move.start is None or move.end is None:
             return
@@ -95,6 +98,8 @@ class Follower:
             self._rapid(move, outline)
         elif move.kind is Kind.THREAD and tool.kind == "threading":
             self._thread(move, outline)
+        elif len(run) > 1:
+            self._cut_run(run, outline)
         else:
             self._cut(move, outline)
         self._drop_loose(move)
@@ -112,22 +117,42 @@ class Follower:
             stretches = engagement(edge, self.sides, piece.start, piece.length)
             if not stretches.engaged:
                 continue
-            number = self._edge_number(edge)
-            self.parts.append(
-                Stretch(
-                    move=move.index,
-                    edge=number,
-                    piece=piece,
-                    position=stretches.position,
-                    low=stretches.low,
-                    high=stretches.high,
-                    stretch=stretches.stretch,
-                )
-            )
+            self._add(move, edge, piece, stretches)
             deepest = max(deepest, float((stretches.high - stretches.low).max()))
             nodes = outline.nodes(piece.direction)[0]
             self._remove(move, swept(nodes, piece.step, piece.start))
         return deepest
+
+    def _cut_run(self, run: Sequence[Move], outline: Outline) -> None:
+        """Cut a run of collinear moves at once; each move gets its own rows and its share of the volume."""
+        whole = straight(run[0].start, run[-1].end)
+        if whole is None:
+            return
+        bounds = np.concatenate(([0.0], np.cumsum([path_length(move) for move in run])))
+        bounds *= whole.length / bounds[-1]
+        edge = outline.edge(whole.direction)
+        stretches = engagement(edge, self.sides, whole.start, whole.length, bounds[1:-1])
+        if not stretches.engaged:
+            return
+        shares = np.zeros(len(run))
+        for number, move in enumerate(run):
+            begin, end = float(bounds[number]), float(bounds[number + 1])
+            rows = (stretches.position > begin - JOINT) & (stretches.position < end + JOINT)
+            part = self._add(move, edge, replace(whole, offset=-begin), stretches.only(rows))
+            shares[number] = _cut_area(part) * abs(move.start_r or 0.0)
+            self.stock_before[move.index] = self.stock
+        before = self.volume
+        self._remove(run[0], swept(outline.nodes(whole.direction)[0], whole.step, whole.start))
+        taken = before - self.volume
+        self.removed[[move.index for move in run]] = taken * shares / (shares.sum() or 1.0)
+
+    def _add(self, move: Move, edge: Edge, piece: Piece, stretches: Stretches) -> Stretch:
+        part = Stretch(
+            move.index, self._edge_number(edge), piece,
+            stretches.position, stretches.low, stretches.high, stretches.stretch,
+        )  # fmt: skip
+        self.parts.append(part)
+        return part
 
     def _edge_number(self, edge: Edge) -> int:
         key = (edge.tool, edge.direction)
@@ -188,11 +213,20 @@ class Follower:
         self.volume = volume(held)
 
 
+def _cut_area(part: Stretch) -> float:
+    """Area a stretch of the program cuts in the half-section, mm2."""
+    first = np.flatnonzero(part.stretch == 0)
+    if len(first) == 0:
+        return 0.0
+    depth = np.add.reduceat(part.high - part.low, first)
+    return float(np.sum(np.diff(part.position[first]) * 0.5 * (depth[1:] + depth[:-1])))
+
+
 def simulate(path: Interpretation, job: Job) -> Simulation:
     """Cut the program in the half-section."""
     follower = Follower(job, len(path.moves))
-    for move in path.moves:
-        follower.follow(move)
+    for run in runs(path.moves):
+        follower.follow(run)
     samples = _samples(follower.parts)
     edges = tuple(follower.edges)
     return Simulation(

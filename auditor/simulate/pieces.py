@@ -43,8 +43,10 @@ def pieces(move: Move) -> Iterator[Piece]:
             yield piece
 
 
-def straight(begin: Point, finish: Point, offset: float = 0.0) -> Piece | None:
-    """A straight piece between two points; None when they coincide."""
+def straight(begin: Point | None, finish: Point | None, offset: float = 0.0) -> Piece | None:
+    """A straight piece between two points; None when they coincide or one is not known."""
+    if begin is None or finish is None:
+        return None
     dz, dr = finish.z - begin.z, finish.r - begin.r
     length = math.hypot(dz, dr)
     if length < SHORTEST:

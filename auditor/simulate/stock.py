@@ -71,12 +71,9 @@ def _ring_volume(ring: BaseGeometry) -> float:
 
 def boundary_segments(stock: BaseGeometry) -> tuple[Floats, Floats]:
     """Starts and ends (n, 2) of all sides of the stock, its inside on their left."""
-    rings = shapely.get_rings(np.array(polygons(stock)))
-    if len(rings) == 0:
-        return np.empty((0, 2)), np.empty((0, 2))
-    coords, ring = shapely.get_coordinates(rings, return_index=True)
-    within = ring[:-1] == ring[1:]
-    return coords[:-1][within], coords[1:][within]
+    rings = [ring for part in polygons(stock) for ring in (part.exterior, *part.interiors)]
+    coords = [shapely.get_coordinates(ring) for ring in rings] or [np.empty((0, 2))]
+    return np.concatenate([ring[:-1] for ring in coords]), np.concatenate([ring[1:] for ring in coords])
 
 
 def split_loose(stock: BaseGeometry) -> tuple[BaseGeometry, list[Polygon]]:

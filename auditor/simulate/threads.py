@@ -38,10 +38,8 @@ class ThreadCut:
 
 def thread_pass(move: Move, outline: Outline, stock: BaseGeometry) -> ThreadCut | None:
     """What a threading pass cuts; None where it cuts air or the lead is not known."""
-    if move.start is None or move.end is None or not move.lead:
-        return None
     piece = straight(move.start, move.end)
-    if piece is None:
+    if piece is None or not move.lead:
         return None
     turns = _turns(piece, move.lead)
     sections = shapely.polygons([outline.hull() + _at(piece, turn) for turn in turns])
