@@ -222,17 +222,17 @@ def stepped_compliance(
     ei = positive("rigidity", "N mm2", rigidity)
     if ends.ndim != 1 or ends.shape != ei.shape or np.any(np.diff(ends) <= 0.0):
         raise ValueError("the ends of the sections must rise and each section needs one rigidity")
-    a = np.maximum(finite("load position", "mm", positions), 0.0)
-    if np.any(a > ends[-1] * (1.0 + 1e-9)):
+    load = np.maximum(finite("load position", "mm", positions), 0.0)
+    if np.any(load > ends[-1] * (1.0 + 1e-9)):
         raise ValueError(f"a load position lies beyond the end of the part at {ends[-1]:g} mm")
+    beam, tail = _Flexibility.of(ends, ei), np.asarray(ends[-1])
     if supports.holding == "centres":
-        return _between_centres(ends, ei, a, supports)
-    free = _overhung(ends, ei, a, a, supports)
+        return _between_centres(beam, load, tail, supports)
+    free = _overhung(beam, load, load, supports)
     if supports.holding == "chuck":
         return free
-    tail = np.asarray(ends[-1])
-    cross = _overhung(ends, ei, a, tail, supports)
-    return np.asarray(free - cross**2 / (_overhung(ends, ei, tail, tail, supports) + 1.0 / supports.tail))
+    cross = _overhung(beam, load, tail, supports)
+    return np.asarray(free - cross**2 / (_overhung(beam, tail, tail, supports) + 1.0 / supports.tail))
 
 
 def diameter_error(push_off: ArrayLike, tangential: ArrayLike, diameter: ArrayLike) -> Floats:
@@ -359,26 +359,40 @@ def _on_span(position: ArrayLike, span: ArrayLike) -> tuple[Floats, Floats, Floa
     return a, np.asarray(span_ - a), span_
 
 
-def _overhung(ends: Floats, ei: Floats, load: Floats, at: Floats, supports: Supports) -> Floats:
+@dataclass(frozen=True, slots=True)
+class _Flexibility:
+    """Running integrals of x^k / (E I) from the jaws, k = 0, 1, 2: every bending integral is made of these."""
+
+    starts: Floats
+    rigidity: Floats
+    before: tuple[Floats, ...]  # up to the start of each section
+
+    @classmethod
+    def of(cls, ends: Floats, rigidity: Floats) -> _Flexibility:
+        starts = np.concatenate(([0.0], ends[:-1]))
+        whole = [(ends**k - starts**k) / (k * rigidity) for k in (1, 2, 3)]
+        return cls(starts, rigidity, tuple(np.cumsum(part) - part for part in whole))
+
+    def up_to(self, x: Floats) -> tuple[Floats, Floats, Floats]:
+        section = np.clip(np.searchsorted(self.starts, x, side="right") - 1, 0, len(self.starts) - 1)
+        start, ei = self.starts[section], self.rigidity[section]
+        first, second, third = (
+            np.asarray(self.before[k - 1][section] + (x**k - start**k) / (k * ei)) for k in (1, 2, 3)
+        )
+        return first, second, third
+
+
+def _overhung(beam: _Flexibility, load: Floats, at: Floats, supports: Supports) -> Floats:
     """Deflection at ``at`` for a unit force at ``load`` (at >= load), the part held in the chuck alone."""
-    starts = np.concatenate(([0.0], ends[:-1]))
-    a = load[..., np.newaxis]
-    low, high = np.minimum(starts, a), np.minimum(ends, a)
-    # int (a - x)(c - x) dx = (c - a) u^2/2 + u^3/3 with u = a - x running from low to high
-    u, v = a - low, a - high
-    reach = (at - load)[..., np.newaxis]
-    bent = np.sum((reach * (u**2 - v**2) / 2.0 + (u**3 - v**3) / 3.0) / ei, axis=-1)
+    j0, j1, j2 = beam.up_to(load)
+    bent = load * at * j0 - (load + at) * j1 + j2  # int (load - x)(at - x) / EI dx
     return np.asarray(bent + 1.0 / supports.slide + load * at / supports.tilt)
 
 
-def _between_centres(ends: Floats, ei: Floats, a: Floats, supports: Supports) -> Floats:
-    span = ends[-1]
-    starts = np.concatenate(([0.0], ends[:-1]))
-    load = np.minimum(a, span)[..., np.newaxis]
-    left_low, left_high = np.minimum(starts, load), np.minimum(ends, load)
-    right_low, right_high = np.maximum(starts, load), np.maximum(ends, load)
-    left = ((span - load) / span) ** 2 * (left_high**3 - left_low**3) / 3.0
-    right = (load / span) ** 2 * ((span - right_low) ** 3 - (span - right_high) ** 3) / 3.0
-    share = a / span
-    yielding = (1.0 - share) ** 2 / supports.slide + share**2 / supports.tail
-    return np.asarray(np.sum((left + right) / ei, axis=-1) + yielding)
+def _between_centres(beam: _Flexibility, load: Floats, span: Floats, supports: Supports) -> Floats:
+    j0, j1, j2 = beam.up_to(load)
+    k0, k1, k2 = beam.up_to(span)
+    share = load / span
+    right = span**2 * (k0 - j0) - 2.0 * span * (k1 - j1) + (k2 - j2)  # int (span - x)^2 / EI dx beyond the load
+    bent = (1.0 - share) ** 2 * j2 + share**2 * right
+    return np.asarray(bent + (1.0 - share) ** 2 / supports.slide + share**2 / supports.tail)

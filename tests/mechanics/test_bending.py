@@ -81,6 +81,19 @@ def test_tailstock_that_gives_endlessly_is_no_tailstock():
     assert loose == pytest.approx(stepped_compliance(ENDS, SECTIONS, POSITIONS), rel=1e-6)
 
 
+def test_a_position_without_figure_has_no_compliance():
+    out = stepped_compliance(ENDS, SECTIONS, [np.nan, 150.0], Supports("chuck+tailstock"))
+    assert np.isnan(out[0])
+    assert out[1] == pytest.approx(0.0, abs=1e-15)
+
+
+def test_a_thin_neck_far_out_bends_as_its_own_integral_says():
+    """Nearly parted off: 2 mm neck, 3 mm wide, 190 mm from the jaws of a 40 mm bar, load just beyond (sum by hand)."""
+    thick, thin = STEEL * float(second_moment(40.0)), STEEL * float(second_moment(2.0))
+    own = ((200.0**3 - 10.0**3) / 3.0 + (7.0**3) / 3.0) / thick + (10.0**3 - 7.0**3) / 3.0 / thin
+    assert float(stepped_compliance([190.0, 193.0, 200.0], [thick, thin, thick], 200.0)) == pytest.approx(own, rel=1e-9)
+
+
 def test_load_inside_the_jaws_bends_nothing_and_beyond_the_end_is_refused():
     assert stepped_compliance(ENDS, SECTIONS, [-5.0, 0.0]).tolist() == [0.0, 0.0]
     with pytest.raises(ValueError, match="beyond the end of the part at 150 mm"):
