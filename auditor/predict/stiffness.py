@@ -67,12 +67,13 @@ def sections_of(stock: BaseGeometry, jaw_face: float) -> tuple[Floats, Floats] |
 
 def _second_moments(begin: Floats, end: Floats, z: Floats) -> Floats:
     """Second moment of area of the ring section at each z: sides facing outwards add, those facing inwards take."""
-    left, right = np.minimum(begin[:, 0], end[:, 0]), np.maximum(begin[:, 0], end[:, 0])
-    crossed = (left < z[:, None]) & (z[:, None] < right)
-    width = end[:, 0] - begin[:, 0]
-    share = (z[:, None] - begin[:, 0]) / np.where(width == 0.0, 1.0, width)
-    radius = begin[:, 1] + share * (end[:, 1] - begin[:, 1])
+    first = np.searchsorted(z, np.minimum(begin[:, 0], end[:, 0]))
+    count = np.searchsorted(z, np.maximum(begin[:, 0], end[:, 0])) - first
+    side = np.repeat(np.arange(len(begin)), count)
+    section = np.arange(len(side)) - np.repeat(np.cumsum(count) - count - first, count)
+    width = end[side, 0] - begin[side, 0]
+    share = (z[section] - begin[side, 0]) / width
+    radius = begin[side, 1] + share * (end[side, 1] - begin[side, 1])
     # counter-clockwise: the outer surface runs towards -z
-    sign = np.where(width < 0.0, 1.0, -1.0)
-    moments: Floats = np.pi / 4.0 * np.sum(np.where(crossed, sign * radius**4, 0.0), axis=1)
-    return moments
+    fourth = np.where(width < 0.0, radius**4, -(radius**4))
+    return (np.pi / 4.0 * np.bincount(section, weights=fourth, minlength=len(z))).astype(np.float64)
