@@ -62,6 +62,15 @@ def along_axis(move: Move) -> bool:
     return abs(move.end.z - move.start.z) < 1e-6 or abs(move.end.r - move.start.r) < 1e-6
 
 
+def wipes_outwards(cut: Cut) -> bool:
+    """Whether the tool only draws out of the cut along a shoulder, away from the surface it made."""
+    start, end = cut.move.start, cut.move.end
+    if start is None or end is None or abs(end.z - start.z) > 1e-6:
+        return False
+    away = end.r - start.r if cut.tool.kind == "turning" else start.r - end.r
+    return away > 0.0
+
+
 def raw_radius(run: Run, z: float) -> float:
     """Outer radius of the raw stock at a length, mm; 0 beyond its ends."""
     outline = run.job.workpiece.outline

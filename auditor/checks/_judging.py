@@ -67,7 +67,8 @@ def lasting(loads: Loads, figure: Floats, move: int) -> float:
     low, high = 0.0, float(values.max())
     if _holds(travel, level, inside, high, need):
         return high
-    while high - low > 1e-4 * high:
+    certain = 1e-4 * high
+    while high - low > certain:
         middle = 0.5 * (low + high)
         if _holds(travel, level, inside, middle, need):
             low = middle

@@ -21,8 +21,8 @@ def finding_of(check: str, level: Level, remark: Remark, message: str | None = N
     """The remark as a finding."""
     return Finding(
         check=check, level=level, line=remark.line, block=remark.block, tool=remark.tool,
-        message=message or remark.message, value=remark.value, limit=remark.limit, unit=remark.unit,
-        remedy=remark.remedy, words=remark.words,
+        message=sentence(message or remark.message), value=remark.value, limit=remark.limit, unit=remark.unit,
+        remedy=sentence(remark.remedy) if remark.remedy else None, words=remark.words,
     )
 
 
@@ -32,6 +32,17 @@ def findings_of(run: Run, check: str, levels: Mapping[str, Level]) -> Iterator[F
     for remark in remarks_of(run, check):
         by_line.setdefault(remark.line, []).append(remark)
     for remarks in by_line.values():
-        remarks.sort(key=lambda remark: _ORDER.index(levels[remark.topic]))
+        remarks.sort(key=lambda remark: _ORDER.index(_level(levels, remark)))
         messages = dict.fromkeys(remark.message for remark in remarks)
-        yield finding_of(check, levels[remarks[0].topic], remarks[0], " Also: ".join(messages))
+        yield finding_of(check, _level(levels, remarks[0]), remarks[0], "; also: ".join(messages))
+
+
+def _level(levels: Mapping[str, Level], remark: Remark) -> Level:
+    """The level a check gives the topic; a topic it does not know yet is for a person to decide."""
+    return levels.get(remark.topic, Level.REVIEW)
+
+
+def sentence(text: str) -> str:
+    """A remark's half-sentence as a sentence."""
+    text = text if text.endswith((".", "?", "!")) else f"{text}."
+    return f"{text[0].upper()}{text[1:]}"

@@ -9,7 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from auditor.checks._judging import Excess, lasting, rows_of
-from auditor.checks._words import INCH, depth, feed, figure
+from auditor.checks._words import INCH, feed, figure
 from auditor.findings import Run
 from auditor.interpret.moves import Kind, Move
 from auditor.predict.loads import Loads
@@ -19,6 +19,8 @@ Figure = Callable[[Loads], Floats]
 
 FEED_STEP = 0.005  # mm/rev
 DEPTH_STEP = 0.05  # mm
+LEAST_FEED = 0.05  # mm/rev; what is slower rubs and is no way out (common practice)
+LEAST_DEPTH = 0.2  # mm, likewise
 
 
 def feed_within(run: Run, move: Move, figure: Figure, limit: float) -> float | None:
@@ -34,7 +36,7 @@ def feed_within(run: Run, move: Move, figure: Figure, limit: float) -> float | N
         return lasting(loads, figure(loads), move.index)
 
     steps = _last_within(value, math.ceil(now / FEED_STEP - 1e-9) - 1, limit)
-    return steps * FEED_STEP if steps else None
+    return steps * FEED_STEP if steps * FEED_STEP >= LEAST_FEED else None
 
 
 def depth_within(run: Run, move: Move, figure: Figure, limit: float) -> float | None:
@@ -42,7 +44,8 @@ def depth_within(run: Run, move: Move, figure: Figure, limit: float) -> float | 
     from auditor.predict.what_if import at_depth
 
     now = _largest(run.prediction.loads.depth, run, move)
-    if now is None:
+    tool = run.job.tools.get(move.tool) if move.tool is not None else None
+    if now is None or tool is None or tool.kind not in ("turning", "boring") or move.kind is Kind.THREAD:
         return None
 
     def value(steps: int) -> float:
@@ -50,7 +53,7 @@ def depth_within(run: Run, move: Move, figure: Figure, limit: float) -> float | 
         return lasting(loads, figure(loads), move.index)
 
     steps = _last_within(value, math.ceil(now / DEPTH_STEP - 1e-9) - 1, limit)
-    return steps * DEPTH_STEP if steps else None
+    return steps * DEPTH_STEP if steps * DEPTH_STEP >= LEAST_DEPTH else None
 
 
 def _largest(column: Floats, run: Run, move: Move) -> float | None:
@@ -71,7 +74,7 @@ def _last_within(value: Callable[[int], float], most: int, limit: float) -> int:
     return low
 
 
-def cure(run: Run, excess: Excess, share: Figure, *, depth_helps: bool = True) -> str | None:
+def cure(run: Run, excess: Excess, share: Figure) -> str | None:
     """Feed or depth that brings ``share`` (figure over limit) to 1, and what clears the band as well."""
     move = excess.move
     if move.kind is Kind.THREAD:
@@ -79,19 +82,19 @@ def cure(run: Run, excess: Excess, share: Figure, *, depth_helps: bool = True) -
     spread = max(excess.band[1] / excess.value, 1.0)
     targets = [("Within the limit at ", 1.0)] if excess.value > excess.limit else []
     targets.append(("clear of the prediction's uncertainty at ", 1.0 / spread))
-    parts = [text for lead, target in targets if (text := _ways(run, move, share, target, lead, depth_helps))]
+    parts = [text for lead, target in targets if (text := _ways(run, move, share, target, lead))]
     if not parts:
         return None
     sentence = "; ".join(parts)
     return f"{sentence[0].upper()}{sentence[1:]}."
 
 
-def _ways(run: Run, move: Move, share: Figure, target: float, lead: str, depth_helps: bool) -> str:
+def _ways(run: Run, move: Move, share: Figure, target: float, lead: str) -> str:
     ways = []
     slower = feed_within(run, move, share, target)
     if slower is not None:
         ways.append(feed_word(run, move, slower))
-    shallower = depth_within(run, move, share, target) if depth_helps else None
+    shallower = depth_within(run, move, share, target)
     if shallower is not None:
         ways.append(f"depth {length(run, shallower)}")
     return lead + " or at ".join(ways) if ways else ""
@@ -108,4 +111,4 @@ def feed_word(run: Run, move: Move, per_rev: float) -> str:
 
 def length(run: Run, value: float) -> str:
     """A length as the program's units have it."""
-    return f"{figure(value / INCH, 3)} in" if run.path.units == "in" else f"{depth(value)} mm"
+    return f"{figure(value / INCH, 3)} in" if run.path.units == "in" else f"{figure(value, 2)} mm"

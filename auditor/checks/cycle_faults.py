@@ -39,6 +39,7 @@ LEVELS = {
     "cycle-peck": Level.REVIEW,
     "cycle-relief": Level.REVIEW,
     "cycle-word-with-point": Level.REVIEW,
+    "cycle-groove-step": Level.REVIEW,
     "cycle-shift-with-pocket": Level.REVIEW,
 }
 

@@ -29,7 +29,7 @@ from auditor.checks._judging import cutting_moves, origin, rows_of, threshold
 from auditor.checks._remarks import findings_of
 from auditor.checks._words import feed, figure
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
-from auditor.interpret.moves import Kind, Move
+from auditor.interpret.moves import Feed, Kind, Move
 
 CHECK = "feed-missing"
 LIMITS = (
@@ -47,12 +47,14 @@ LEVELS = {
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Cuts whose feed cannot be meant."""
     yield from findings_of(run, CHECK, LEVELS)
+    told: set[Feed | None] = set()
     for index in np.flatnonzero(cutting_moves(run)):
         move = run.path.moves[int(index)]
-        if move.kind in (Kind.RAPID, Kind.THREAD):
+        if move.kind in (Kind.RAPID, Kind.THREAD) or move.feed in told:
             continue
         finding = _unfed(run, move) if move.feed is None or move.feed.value <= 0.0 else _implausible(run, move)
         if finding is not None:
+            told.add(move.feed)
             yield finding
 
 

@@ -20,7 +20,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from auditor.checks._cuts import Cut, cuts
+from auditor.checks._cuts import Cut, cuts, wipes_outwards
 from auditor.checks._judging import origin, threshold
 from auditor.checks._remedy import feed_word
 from auditor.checks._words import feed, figure, finding_at
@@ -37,7 +37,7 @@ LIMITS = (
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Sideways cuts with too much feed for the corner."""
     for cut in cuts(run, ("turning", "boring", "grooving", "face grooving")):
-        if cut.tool.nose_radius > 0.0 and _sideways(cut):
+        if cut.tool.nose_radius > 0.0 and _sideways(cut) and not wipes_outwards(cut):
             finding = _judge_cut(run, cut)
             if finding is not None:
                 yield finding
@@ -62,7 +62,7 @@ def _judge_cut(run: Run, cut: Cut) -> Finding | None:
     fate = "the corner breaks off" if level is Level.STOP else "the surface turns into a thread, the corner carries " \
         "the whole chip"
     message = f"Feed {feed(used)} is {figure(used / radius, 2)} of the {figure(radius, 2)} mm nose radius: {fate}. " \
-              f"{origin(run, LIMITS)}"
+              f"{origin(run, LIMITS[1:] if level is Level.STOP else LIMITS[:1])}"
     remedy = f"At most {feed_word(run, cut.move, general)} with this insert" + (
         f"; {feed_word(run, cut.move, most)} is the very most." if level is Level.STOP else ".")
     return finding_at(run, CHECK, level, cut.row_of_largest(loads.depth), message, value=used, limit=limit,

@@ -29,6 +29,7 @@ CHECK = "not-understood"
 LIMITS = ()
 LEVELS = {
     "syntax": Level.REVIEW,
+    "arithmetic": Level.REVIEW,
     "unknown-g": Level.REVIEW,
     "unknown-m": Level.NOTE,
     "unsupported": Level.REVIEW,

@@ -28,8 +28,9 @@ CHECK = "program-flow"
 LIMITS = ()
 STOPS = ("target-missing", "endless", "travel-limit")
 REVIEWS = (
-    "end-missing", "subprogram-missing", "repeats-main", "number-repeated", "return-through-point", "word-repeated",
-    "code-group-repeated", "dwell", "block-skip", "preset", "data-input", "speed-in-thread", "tool-in-motion",
+    "end-missing", "program-not-called", "subprogram-missing", "repeats-main", "number-repeated",
+    "return-through-point", "word-repeated", "code-group-repeated", "dwell", "preset", "data-input",
+    "speed-in-thread", "tool-in-motion",
 )
 NOTES = (
     "m-codes-many", "spindle-left-on", "coolant", "work-zero-changed", "local-shift", "home-unknown", "paren",
@@ -44,5 +45,16 @@ LEVELS = {
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Everything odd about the way the program runs."""
-    stop_word = Level.REVIEW if run.job.unattended else Level.NOTE  # nobody is there to press the button
-    yield from findings_of(run, CHECK, LEVELS | {"stop-unattended": stop_word})
+    by_run = {
+        "stop-unattended": Level.REVIEW if run.job.unattended else Level.NOTE,  # nobody is there to press the button
+        "block-skip": Level.REVIEW if _skips_motion(run) else Level.NOTE,
+    }
+    yield from findings_of(run, CHECK, LEVELS | by_run)
+
+
+def _skips_motion(run: Run) -> bool:
+    """Whether a switch on the panel changes the path."""
+    return any(
+        block.skip is not None and any(word.letter in ("X", "Z", "U", "W") for word in block.words)
+        for block in run.text.blocks
+    )

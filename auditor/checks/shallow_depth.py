@@ -23,7 +23,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_error, tolerance_third
+from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_error, tolerance_third, wipes_outwards
 from auditor.checks._judging import origin, threshold
 from auditor.checks._words import depth, figure, finding_at, force, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -37,7 +37,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     notes: dict[int, tuple[float, Finding]] = {}
     for cut in cuts(run):
         deep = cut.largest(run.prediction.loads.depth)
-        if cut.tool.shape == "R" or not SPRING_PASS < deep < cut.tool.nose_radius:
+        if cut.tool.shape == "R" or wipes_outwards(cut) or not SPRING_PASS < deep < cut.tool.nose_radius:
             continue
         finding = _judge_cut(run, cut, deep)
         if finding.level is Level.REVIEW:

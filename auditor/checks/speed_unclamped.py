@@ -43,7 +43,6 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         fastest = max(moves, key=lambda move: _asked(move) or 0.0)
         said = next((remark for remark in told if remark.line <= start.line), None)
         yield _unlimited(run, start, fastest, said)
-    yield from _too_high(run)
 
 
 def _unlimited_stretches(run: Run) -> Iterator[tuple[Move, list[Move]]]:
@@ -86,20 +85,6 @@ def _unlimited(run: Run, start: Move, fastest: Move, remark: Remark | None) -> F
         words=("S",), move=start.index,
         remedy=f"A block G50 S{math.floor(limit):d} before it (G92 in systems B and C).",
     )
-
-
-def _too_high(run: Run) -> Iterator[Finding]:
-    limit = _lowest(run)
-    said: set[float] = set()
-    for move in run.path.moves:
-        clamp = move.spindle.clamp
-        if move.spindle.mode != "surface" or clamp is None or clamp <= limit or clamp in said:
-            continue
-        said.add(clamp)
-        message = f"The programmed limit of {clamp:.0f} rpm holds nothing back: machine and chuck as declared bear " \
-                  f"{limit:.0f} rpm."
-        yield run.finding(CHECK, Level.REVIEW, move, message, value=clamp, limit=limit, unit="rpm",
-                          remedy=f"S{math.floor(limit):d} in the G50 or G92 block.")
 
 
 def _lowest(run: Run) -> float:

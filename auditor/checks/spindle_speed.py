@@ -27,8 +27,9 @@ from auditor.checks._judging import threshold
 from auditor.checks._words import x_word
 from auditor.declared.model import Workholding
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
-from auditor.interpret.moves import Move
+from auditor.interpret.moves import Move, Spindle
 from auditor.mechanics.clamping import permitted_speed
+from auditor.parse.blocks import Number
 
 CHECK = "spindle-speed"
 LIMITS = (
@@ -48,10 +49,13 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if loss is not None:
         bounds.append((loss, "the speed at which the jaws have lost two thirds of their grip (EN 1550)"))
     limit, whose = min(bounds)
+    fastest: dict[Spindle, tuple[float, Move]] = {}
     for move in run.path.moves:
         speed = _speed(run, move)
-        if speed is not None and speed > limit * (1.0 + 1e-9):
-            yield _finding(run, move, speed, limit, whose)
+        if speed is not None and speed > max(limit * (1.0 + 1e-9), fastest.get(move.spindle, (0.0, move))[0]):
+            fastest[move.spindle] = (speed, move)
+    for speed, move in fastest.values():
+        yield _finding(run, move, speed, limit, whose)
 
 
 def permitted_by_grip(holding: Workholding, share: float) -> float | None:
@@ -73,10 +77,20 @@ def _speed(run: Run, move: Move) -> float | None:
     return reached if math.isfinite(reached) else None
 
 
+def _speed_block(run: Run, move: Move) -> tuple[int, str | None]:
+    """The block whose S word starts that speed, else the move's own."""
+    for block in reversed(run.text.blocks[: move.line]):
+        for word in block.words:
+            if word.letter == "S" and isinstance(word.value, Number) and word.value.value == move.spindle.value:
+                return block.line, block.label
+    return move.line, move.block
+
+
 def _finding(run: Run, move: Move, speed: float, limit: float, whose: str) -> Finding:
     place = f" at {x_word(run, move.end_r)}" if move.end_r is not None and move.spindle.mode == "surface" else ""
     message = f"The work turns at {speed:.0f} rpm{place}, over {whose}, {limit:.0f} rpm."
+    line, block = _speed_block(run, move) if move.spindle.mode == "rpm" else (move.line, move.block)
     return run.finding(
-        CHECK, Level.STOP, move, message, value=speed, limit=limit, unit="rpm", words=("S",),
+        CHECK, Level.STOP, move, message, value=speed, limit=limit, unit="rpm", words=("S",), line=line, block=block,
         remedy=f"Limit the speed before it: S{math.floor(limit):d} in the G50 or G92 block, or in S itself under G97.",
     )

@@ -26,17 +26,18 @@ def at_feed(job: Job, path: Interpretation, simulation: Simulation, move_index: 
 
 
 def at_depth(job: Job, path: Interpretation, simulation: Simulation, move_index: int, depth_mm: float) -> Loads:
-    """Loads of one move with the engaged edge ending ``depth_mm`` above the surface it leaves."""
+    """Loads of one move that leaves more standing, so that its edge is engaged ``depth_mm`` deep at most."""
     rows = _rows_of(simulation.samples, move_index)
     table = EdgeTable.of(simulation.edges)
     lowest, highest = table.across[table.first[rows.edge]], table.across[table.last[rows.edge]]
     # The finished surface lies at that end of the edge which the stretches reach.
     at_low_end = np.abs(rows.low - lowest) <= np.abs(highest - rows.high)
-    shallower = replace(
-        rows,
-        low=np.where(at_low_end, rows.low, np.minimum(rows.high, np.maximum(rows.low, highest - depth_mm))),
-        high=np.where(at_low_end, np.maximum(rows.low, np.minimum(rows.high, lowest + depth_mm)), rows.high),
-    )
+    low = np.where(at_low_end, rows.low, np.minimum(rows.high, np.maximum(rows.low, highest - depth_mm)))
+    high = np.where(at_low_end, np.maximum(rows.low, np.minimum(rows.high, lowest + depth_mm)), rows.high)
+    # The stock stays where it is: a shallower cut runs that much further out.
+    outwards = (rows.high - high) - (low - rows.low)
+    dz, dr = table.direction[rows.edge].T
+    shallower = replace(rows, low=low, high=high, z=rows.z - outwards * dr, r=rows.r + outwards * dz)
     return _loads(job, path, simulation, shallower, move_index, None)
 
 
