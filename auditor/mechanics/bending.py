@@ -232,7 +232,8 @@ def stepped_compliance(
     if supports.holding == "chuck":
         return free
     cross = _overhung(beam, load, tail, supports)
-    return np.asarray(free - cross**2 / (_overhung(beam, tail, tail, supports) + 1.0 / supports.tail))
+    held = free - cross**2 / (_overhung(beam, tail, tail, supports) + 1.0 / supports.tail)
+    return np.asarray(np.maximum(held, 0.0))  # rounding, right at a rigid tailstock
 
 
 def diameter_error(push_off: ArrayLike, tangential: ArrayLike, diameter: ArrayLike) -> Floats:

@@ -12,7 +12,6 @@ from auditor.mechanics.validity import Floats, ValidRange, finite, not_negative,
 GRIP_SAFETY: Final = 1.5  # S_z and S_sp, smallest (VDI 3106)
 CENTRIFUGAL_SHARE: Final = 0.67  # of the static grip the jaws may lose (EN 1550)
 TILTING_FACTOR: Final = 3.0  # C of the tilting term: 2 to 4 for three jaws without an end stop (model)
-NEGLECTED_CHUCK: Final = 0.7  # of the rated grip when the state of lubrication is unknown (common practice)
 FRICTION: Final = ValidRange("jaw friction", "", 0.07, 0.25, "VDI 3106, smooth jaws 0.07 to serrated 0.25, from memory")
 
 

@@ -4,9 +4,6 @@ from __future__ import annotations
 
 from typing import Final, NamedTuple
 
-REFERENCE_THICKNESS: Final = 0.25  # mm, of the unit energies
-REFERENCE_FEED: Final = 0.3  # mm/rev, about, of the power constants
-
 
 class Band(NamedTuple):
     """A printed figure for a band of Brinell hardness."""

@@ -12,7 +12,6 @@ from auditor.mechanics.validity import Floats, ValidRange, finite, not_negative
 RAKE_SLOPE: Final = 1.5  # % of the cutting force per degree of rake
 RAKE_FACTOR: Final = ValidRange("rake factor", "", 0.70, 1.40, "model: Kienzle's rake line is not followed further")
 CUTTING_SPEED: Final = ValidRange("cutting speed", "m/min", 20.0, 600.0, "Paucksch / Degner, from memory")
-WORN_EDGE: Final = 1.3  # cutting force at the end of edge life over the sharp edge (Tschaetsch; 1.3 to 1.5)
 THRUST_SCATTER: Final = 0.5  # one-sided relative, feed and passive force
 
 _TOOL_MATERIAL: Final = {

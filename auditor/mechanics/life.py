@@ -11,7 +11,6 @@ from auditor.mechanics.validity import Floats, ValidRange, angle, finite, not_ne
 
 LIFE: Final = ValidRange("edge life", "min", 5.0, 120.0, "ISO 3685 tests; three laboratories differ by up to 2 (AIST)")
 FLANK_WEAR_LIMIT: Final = 0.3  # mm, regular flank wear VB_B, carbide and ceramic (ISO 3685, from memory)
-FLANK_WEAR_LIMIT_IRREGULAR: Final = 0.6  # mm, VB_Bmax (ISO 3685, from memory)
 UNATTENDED_SHARE: Final = 0.65  # of the predicted life that an unattended run may use (common practice 0.6 to 0.7)
 
 

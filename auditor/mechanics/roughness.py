@@ -10,7 +10,6 @@ from numpy.typing import ArrayLike
 from auditor.mechanics.validity import Floats, ValidRange, angle, not_negative, positive
 
 FEED_TO_RADIUS: Final = ValidRange("feed / nose radius", "", 0.0, 2.0, "geometry: beyond, arcs do not meet")
-WIPER_SHARE: Final = 0.5  # Ra of a wiper edge over the ordinary edge at the same feed (common practice)
 
 
 def arc_limit_feed(nose_radius: ArrayLike, minor_angle: ArrayLike) -> Floats:

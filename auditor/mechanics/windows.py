@@ -13,13 +13,9 @@ MINIMUM_CHIP_SHARE: Final = ValidRange(
     "h_min / edge radius", "", 0.25, 0.33, "de Oliveira et al. 2015, AISI 1045 (P20 alike)"
 )
 CHIP_ASPECT: Final = ValidRange("depth / feed", "", 4.0, 15.0, "common practice in roughing; 5 to 10 preferred")
-WORK_HARDENING_CHIP: Final = 0.05  # mm, smallest chip in stainless, nickel, titanium (common practice)
-WORK_HARDENED_LAYER: Final = 0.1  # mm, depth to stay above in the same (common practice)
 PRESSED_INSERT_FEED: Final = 0.05  # mm/rev, smallest feed of pressed inserts (common practice)
 GENERAL_FEED_SHARE: Final = 0.5  # of the nose radius (common practice)
-LARGEST_FEED_SHARE: Final = 0.8  # of the nose radius, strong corner (common practice)
-FINISHING_FEED_SHARE: Final = 1.0 / 3.0  # of the nose radius (common practice)
-_USABLE: Final = {"C": 2 / 3, "S": 2 / 3, "E": 2 / 3, "T": 0.5, "D": 0.5, "K": 0.5, "V": 0.25, "W": 0.5, "R": 0.4}
+_USABLE: Final = {"C": 2 / 3, "S": 2 / 3, "E": 2 / 3, "T": 0.5, "D": 0.5, "K": 0.5, "V": 0.25, "W": 0.5, "R": 0.685}
 
 
 def minimum_chip(edge_radius: ArrayLike, share: float = MINIMUM_CHIP_SHARE.high) -> Floats:
@@ -120,7 +116,8 @@ def usable_edge(shape: str, edge_length: ArrayLike) -> Floats:
     Parameters
     ----------
     shape : str, ISO 1832 letter
-        C, S, E two thirds; T, D, K, W half (W of its short edge); V a quarter; R 0.4 of the diameter.
+        C, S, E two thirds; T, D, K, W half (W of its short edge); V a quarter; R 0.685 of the
+        diameter, the arc engaged at a depth of 0.4 of it.
     edge_length : array_like (...), mm
         Length of the edge; of round inserts the diameter.
 

@@ -16,6 +16,7 @@ from auditor.mechanics.chip import (
     largest_thickness,
     mean_thickness,
     nose_angle,
+    straight_length,
 )
 from auditor.mechanics.factors import (
     force_scatter,
@@ -33,6 +34,7 @@ from auditor.mechanics.kienzle import (
 )
 from auditor.mechanics.thrust import (
     bounded_thrust,
+    friction_angle,
     friction_thrust,
     inclination_factor,
     pair_thrust,
@@ -228,6 +230,17 @@ def test_largest_thickness_past_the_crest_of_the_corner_is_the_feed():
 @given(st.floats(-5.0, 5.0), st.floats(-5.0, 5.0), st.floats(0.1, 5.0))
 def test_chord_does_not_care_where_the_origin_is(x, y, across):
     assert float(chord_through(x, y, x + 1.0, y + across)) == pytest.approx(float(chord_through(0.0, 0.0, 1.0, across)))
+
+
+def test_straight_edge_begins_where_the_corner_ends():
+    """kr 90: the corner takes r of the depth, the straight edge the rest (plane geometry)."""
+    assert straight_length([0.5, 0.8, 3.0], 0.8, 90.0) == pytest.approx([0.0, 0.0, 2.2])
+
+
+def test_friction_angle_follows_rake_as_published_for_titanium():
+    """19.1 + 0.29 g of Ti-6Al-4V between 0 and 15 deg (Budak, Altintas and Armarego) within half a degree."""
+    rakes = np.array([0.0, 5.0, 10.0, 15.0])
+    assert friction_angle(19.1, rakes, 0.0) == pytest.approx(19.1 + 0.29 * rakes, abs=0.5)
 
 
 # ---- factors and scatter

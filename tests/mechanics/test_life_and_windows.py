@@ -94,6 +94,8 @@ def test_windows_of_land_depth_and_edge():
     assert float(usable_edge("C", 12.0)) == pytest.approx(8.0)
     assert float(usable_edge("V", 16.0)) == pytest.approx(4.0)
     assert float(usable_edge("W", 8.0)) == pytest.approx(4.0)
+    arc = np.arccos(1.0 - 0.4 * 12.0 / 6.0) * 6.0  # round insert of 12 mm at a depth of 0.4 of its diameter
+    assert float(usable_edge("R", 12.0)) == pytest.approx(arc, rel=1e-3)
     with pytest.raises(ValueError, match="insert shape 'Q'"):
         usable_edge("Q", 10.0)
 
