@@ -52,7 +52,7 @@ def audit(job: Job, today: datetime.date | None = None) -> Audit:
     """Audit the program that a job names."""
     all_rules = rules()
     limits = limits_in_force(job, all_rules)
-    text = read_program(job.program)
+    text = read_program(job.program, job.control)
     path = interpret(text, job)
     if not path.moves:
         raise ProgramError(_no_motion(text, path))

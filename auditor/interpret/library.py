@@ -7,6 +7,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass, field
 from pathlib import Path
 
+from auditor.declared.model import Control
 from auditor.errors import ProgramError
 from auditor.parse import read_program
 from auditor.parse.blocks import Block, Do, End, ProgramText
@@ -82,7 +83,8 @@ def _loop_partners(blocks: tuple[Block, ...]) -> dict[int, int]:
 class Library:
     """Finds programs by number or name, in the file first, then beside it."""
 
-    def __init__(self, text: ProgramText) -> None:
+    def __init__(self, text: ProgramText, control: Control) -> None:
+        self._control = control
         self.programs = programs_of(text)
         self._folder = Path(text.path).parent if Path(text.path).is_file() else None
         self._files: dict[str, Path] | None = None
@@ -111,7 +113,7 @@ class Library:
         for stem in stems:
             for ending in ENDINGS:
                 path = self._listing().get(stem + ending)
-                if path is not None and (found := _read_file(path, name)) is not None:
+                if path is not None and (found := _read_file(path, name, self._control)) is not None:
                     return found
         return None
 
@@ -128,9 +130,9 @@ def _same(one: int | str, other: int | str) -> bool:
     return str(one).lower() == str(other).lower()
 
 
-def _read_file(path: Path, name: int | str) -> Program | None:
+def _read_file(path: Path, name: int | str, control: Control) -> Program | None:
     try:
-        found = programs_of(read_program(path), path.name)
+        found = programs_of(read_program(path, control), path.name)
     except ProgramError:
         return None
     return next((program for program in found if program.name == name), found[0] if found else None)

@@ -11,7 +11,7 @@ from typing import Literal
 from auditor.parse.blocks import Comment
 from auditor.parse.decode import IGNORED
 
-Semicolon = Literal["comment", "eob"]
+Semicolon = Literal["comment", "end of block"]
 Topic = Literal["paren", "blank-in-number", "semicolon"]
 Remark = tuple[Topic, str]
 

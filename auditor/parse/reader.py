@@ -10,6 +10,8 @@ from os import PathLike, fspath
 from pathlib import Path
 from typing import NamedTuple
 
+from auditor.declared.control_settings import choice, switch
+from auditor.declared.model import Control
 from auditor.errors import Fault, ProgramError
 from auditor.parse import faults
 from auditor.parse.blocks import Block, Opaque, ProgramText, Statement, SyntaxFault, TextNote, Word
@@ -30,10 +32,8 @@ _PLAIN_NUMBER = re.compile(r"[Nn]([0-9]{1,8})(?=[ \t]*[A-MP-Za-mp-z])")
 _TITLE = "a title without parentheses behind the % was left out; some controls refuse it"
 
 
-def read_program(
-    path: str | PathLike[str], *, semicolon: Semicolon = "comment", comment_nesting: bool = False
-) -> ProgramText:
-    """Read a program file. What is wrong inside it stands in its blocks and notes.
+def read_program(path: str | PathLike[str], control: Control) -> ProgramText:
+    """Read a program file the way a control reads it. What is wrong inside it stands in its blocks and notes.
 
     Raises `ProgramError` when the file cannot be opened at all.
     """
@@ -43,7 +43,8 @@ def read_program(
         reason = getattr(problem, "strerror", None) or str(problem)
         fault = Fault("the program cannot be opened", file=fspath(path), found=reason, wanted="a readable text file")
         raise ProgramError(fault) from None
-    return parse_text(data, fspath(path), semicolon=semicolon, comment_nesting=comment_nesting)
+    semicolon: Semicolon = "comment" if choice(control, "semicolon") == "comment" else "end of block"
+    return parse_text(data, fspath(path), semicolon=semicolon, comment_nesting=switch(control, "nested_comments"))
 
 
 def parse_text(

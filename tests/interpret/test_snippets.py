@@ -111,7 +111,7 @@ def interpreted(snippet: dict[str, Any]) -> Interpretation:
     tool = Tool(1, "T1", "turning", nose_radius=TURNING.nose_radius, tip=tip)
     job = declared(control_of(snippet), {1: tool}, start=Point(100.0, 50.0), fixed=HOME)
     preamble = "G97 S500 M3 F.2\n" if snippet.get("preamble") else ""
-    semicolon = "eob" if snippet.get("control", {}).get("semicolon") == "eob" else "comment"
+    semicolon = "end of block" if snippet.get("control", {}).get("semicolon") == "eob" else "comment"
     return interpret(parse_text(preamble + snippet["code"], semicolon=semicolon), job)
 
 

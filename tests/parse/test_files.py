@@ -7,6 +7,7 @@ from pathlib import Path
 
 import pytest
 
+from auditor.declared.model import Control
 from auditor.errors import ProgramError
 from auditor.parse import parse_text, read_program
 from auditor.parse.blocks import ProgramText
@@ -119,17 +120,17 @@ def test_title_between_percent_and_number_is_no_fault() -> None:
 def test_read_program(tmp_path: Path) -> None:
     path = tmp_path / "Teil Ø.nc"
     path.write_bytes(CODE.encode())
-    program = read_program(path)
+    program = read_program(path, Control())
 
     assert program.path == str(path)
     assert program.sha256 == hashlib.sha256(path.read_bytes()).hexdigest()
     assert program.lines == tuple(CODE.splitlines())
-    assert program == read_program(str(path))
+    assert program == read_program(str(path), Control())
 
 
 @pytest.mark.parametrize("name", ["missing.nc", ".", "no\0name"])
 def test_a_file_that_cannot_be_opened(tmp_path: Path, name: str) -> None:
     with pytest.raises(ProgramError, match="cannot be opened") as caught:
-        read_program(tmp_path / name)
+        read_program(tmp_path / name, Control())
 
     assert caught.value.faults[0].file == str(tmp_path / name)
