@@ -12,7 +12,8 @@ Why
 Formula and source
     Geometry of the half-section, exact. Stop: contact in the straight path; contact in the bent path (review
     when the machine's rapid rates are not declared, since they shape it); contact with chuck or tailstock.
-    Review: a rapid that ends nearer than rapid_clearance to a raw surface; a loose piece. Common practice.
+    A tool that only lifts off along the shoulder it has cut wipes away the wedge its edge left: a note up to
+    0.2 mm, a review up to 0.6. Review: a rapid that ends nearer than rapid_clearance to a raw surface; a loose piece. Common practice.
 
 Remedy
     Move one axis after the other, or start the rapid further out; feed the last millimetre to a raw surface.
@@ -27,12 +28,14 @@ from auditor.checks._remedy import length
 from auditor.checks._words import figure, x_word, z_word
 from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
-from auditor.interpret.moves import Kind
+from auditor.interpret.moves import Kind, Move
 from auditor.simulate.samples import Contact, LoosePiece
 
 CHECK = "rapid-in-stock"
 LIMITS = (Limit("rapid_clearance", 1.0, "mm", "common practice", "least distance of a rapid's end from a raw surface"),)
 SMALLEST_PIECE = 5.0  # mm3; what is smaller is swarf
+GRAZE = 0.2  # mm; what a 95 degree edge leaves at a shoulder over the usual lift-off
+SHOULDER_WEDGE = 0.6  # mm
 CUTS_OFF = ("parting", "grooving", "face grooving")
 
 
@@ -51,6 +54,9 @@ def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
     place = f"at {x_word(run, contact.r)} {z_word(run, contact.z)}"
     deep = length(run, contact.depth)
     match contact.kind:
+        case "rapid" if _pulls_off(run, move, contact):
+            level = Level.NOTE if contact.depth <= GRAZE else Level.REVIEW
+            message = f"The tool wipes along the shoulder it has just cut at rapid {place}, {deep} deep."
         case "rapid":
             level, message = Level.STOP, f"The tool hits the stock at rapid {place}, {deep} deep. " \
                 "What it would have broken out is counted as cut from here on."
@@ -69,6 +75,17 @@ def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
     remedy = "Feed the last millimetre." if contact.kind == "near" else \
         "Move one axis after the other, or start the rapid further out."
     yield run.finding(CHECK, level, move, message, at=at, value=contact.depth, unit="mm", remedy=remedy)
+
+
+def _pulls_off(run: Run, move: Move, contact: Contact) -> bool:
+    """Whether the tool only draws away from its own surface and takes the wedge its edge left at the shoulder."""
+    start, end = move.start, move.end
+    if start is None or end is None or contact.depth > SHOULDER_WEDGE or abs(end.z - start.z) > 1e-6:
+        return False
+    tool = run.job.tools.get(move.tool) if move.tool is not None else None
+    inside = tool is not None and tool.kind == "boring"
+    away = start.r - end.r if inside else end.r - start.r
+    return away > 0.0 and abs(contact.r - start.r) < 0.1
 
 
 def _body(contact: Contact) -> str:
