@@ -89,8 +89,10 @@ def _engaged(edge: Edge, at: tuple[float, float], stock: BaseGeometry) -> list[t
     inside = shapely.intersection(shapely.linestrings(nodes), stock)
     intervals = []
     for part in shapely.get_parts(inside):
+        if part.length < GRAZING:  # a point, where the edge only touches
+            continue
         middle = shapely.line_interpolate_point(part, 0.5, normalized=True)
-        if part.length < GRAZING or shapely.distance(middle, stock.boundary) < GRAZING:
+        if shapely.distance(middle, stock.boundary) < GRAZING:
             continue
         across = (shapely.get_coordinates(part) - at) @ np.array((-dr, dz))
         intervals.append((float(across.min()), float(across.max())))
