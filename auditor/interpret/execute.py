@@ -6,16 +6,16 @@ from auditor.declared.control_settings import amount, choice
 from auditor.interpret import calls, cycle_calls, dwell, modes, reference, speeds, toolwords, zeros  # noqa: F401
 from auditor.interpret.cycles.call import CycleFault
 from auditor.interpret.expressions import ExpressionFault
+from auditor.interpret.left_out import known_words, not_understood, skip_unreadable, without_value
 from auditor.interpret.mcodes import WITHOUT_EFFECT, note_unknown
 from auditor.interpret.motion import has_axis_words
 from auditor.interpret.numbers import check_numbers
 from auditor.interpret.registry import ACTIONS, M_CODES, MODAL, MOTIONS, WORDS, Phase
 from auditor.interpret.run import NotUnderstood, Run
-from auditor.interpret.statements import calculator, carry_out_statement, named
+from auditor.interpret.statements import carry_out_statement
 from auditor.interpret.systems import DRILLING_CYCLES, code_text, group_of, known_elsewhere
-from auditor.interpret.unreadable import skip_unreadable
-from auditor.interpret.words import LIVE_LETTERS, BlockWords, Value, least_increment, ready_words
-from auditor.parse.blocks import Block, Number
+from auditor.interpret.words import LIVE_LETTERS, BlockWords
+from auditor.parse.blocks import Block
 
 # functions that turning does not follow: what they are, for the reason of a block not audited
 NOT_TURNING = {
@@ -50,12 +50,15 @@ def carry_out(run: Run, block: Block) -> None:
         if block.statement is not None:
             carry_out_statement(run, block)
             return
-        run.words = read_block(run, block)
-        act(run, run.words)
+        words = known_words(run, block)
+        if words is None:
+            return
+        run.words = words
+        act(run, words)
     except ExpressionFault as fault:
-        _no_value(run, block, str(fault))
+        without_value(run, block, str(fault))
     except NotUnderstood as problem:
-        _not_understood(run, problem)
+        not_understood(run, problem)
     except CycleFault as fault:
         run.cycle_fault(fault)
         run.not_audited(fault.message)
@@ -63,34 +66,6 @@ def carry_out(run: Run, block: Block) -> None:
         run.compensated.blank_blocks += 1
     elif run.strokes != strokes:
         calls.call_after_motion(run)
-
-
-def read_block(run: Run, block: Block) -> BlockWords:
-    """The words of a block with their expressions worked out; a word with a null value is left out."""
-    line, label = run.flow.place(block)
-    values = []
-    unknown: set[int] = set()
-    for word in block.words:
-        if isinstance(word.value, Number):
-            values.append(Value(word.letter, word.value, word.start, word.end))
-            continue
-        increment = least_increment(run.control, inch=run.state.inch) / (25.4 if run.state.inch else 1.0)
-        whole = choice(run.control, "round_in_word") == "integer"
-        number = calculator(run, increment=None if whole else increment).value(word.value)
-        if run.variables.unknown:
-            unknown |= run.variables.take_unknown()
-        elif number is None:
-            run.remark(
-                "unknown-variable", f"{word.letter} has a variable without a value: the word is left out", word.letter
-            )
-        else:
-            values.append(Value(word.letter, Number(number, True, f"{number:.10g}"), word.start, word.end, True))
-    words = ready_words(line, label, block.text, values, run.system)
-    if unknown:
-        run.words = words
-        run.remark("unknown-variable", f"the block needs {named(unknown)}, which only the control knows")
-        raise NotUnderstood(f"{named(unknown)} is not known", "unknown-variable")
-    return words
 
 
 def act(run: Run, words: BlockWords) -> None:
@@ -190,42 +165,6 @@ def _refuse_live(run: Run, live: list[str]) -> None:
         return
     what = run.state.live_mode or "the axis of " + " and ".join(live)
     raise NotUnderstood(f"{what}: milling and second spindles are not followed", "axis-not-modelled", tuple(live))
-
-
-def _not_understood(run: Run, problem: NotUnderstood) -> None:
-    run.close_chain()
-    if problem.topic is not None:
-        run.remark(problem.topic, f"the block is not audited: {problem.reason}", *problem.words)
-    if not has_axis_words(run.words) and problem.topic == "unknown-variable" and not run.words.functions:
-        return
-    run.not_audited(problem.reason)
-    if problem.topic != "position-unknown":
-        _restate(run)
-
-
-def _restate(run: Run) -> None:
-    """Behind a block that was not followed only what it states in absolute words is known."""
-    from auditor.interpret.motion import millimetres, x_factor
-
-    state, words = run.state, run.words
-    plain = state.motion in ("rapid", "feed") and not words.unknown_codes
-    x, z = millimetres(run, words, "X"), millimetres(run, words, "Z")
-    absolute = plain and (run.system == "A" or state.absolute)
-    moved_r, moved_z = words.has("X", "U"), words.has("Z", "W")
-    if moved_r or not plain:
-        state.r = x * x_factor(run) + state.shift.r if absolute and x is not None else None
-    if moved_z or not plain:
-        state.z = z + state.shift.z if absolute and z is not None else None
-
-
-def _no_value(run: Run, block: Block, reason: str) -> None:
-    run.remark("arithmetic", reason)
-    if block.statement is None and block.words:
-        run.settle()
-        run.not_audited(reason)
-        run.state.forget_position()
-    else:
-        run.flow_in_doubt = True
 
 
 def _check_repeats(run: Run, words: BlockWords) -> None:

@@ -11,6 +11,7 @@ from auditor.interpret.cycles.call import CycleFault, Stroke
 from auditor.interpret.expressions import ExpressionFault
 from auditor.interpret.library import Program
 from auditor.interpret.moves import Kind
+from auditor.interpret.reading import UnknownValues, read_block
 from auditor.interpret.run import NotUnderstood, Run, Side
 from auditor.interpret.systems import MULTIPLE_CYCLES, group_of
 from auditor.interpret.words import BlockWords
@@ -86,7 +87,7 @@ def _bounds(run: Run, words: BlockWords, program: Program) -> tuple[int, int]:
 
 
 def _carry_out(run: Run, blocks: tuple[Block, ...], compensate: bool) -> list[BlockWords]:
-    from auditor.interpret.execute import act, read_block
+    from auditor.interpret.execute import act  # the executor calls cycles, cycles call it for their profile
 
     ready: list[BlockWords] = []
     run.profile_side = run.state.compensation
@@ -106,7 +107,7 @@ def _carry_out(run: Run, blocks: tuple[Block, ...], compensate: bool) -> list[Bl
             if not compensate:
                 words = _without_compensation(words)
             act(run, words)
-        except (NotUnderstood, ExpressionFault) as problem:
+        except (NotUnderstood, ExpressionFault, UnknownValues) as problem:
             text = f"the profile cannot be followed (line {line}): {problem}"
             raise CycleFault("cycle-profile-bad", text, line=line) from None
         ready.append(words)

@@ -61,7 +61,8 @@ def _run_for(text: ProgramText, job: Job, log: Log) -> Run:
     if start is not None:
         state.z, state.r = start
     job = replace(job, control=_with_system(text, job.control, log))
-    run = Run(job, job.control.system, state, log, BlockWords(1, None, "", ()), Flow(Library(text, job.control), job.control))
+    flow = Flow(Library(text, job.control), job.control)
+    run = Run(job, job.control.system, state, log, BlockWords(1, None, "", ()), flow)
     _take_only_tool(run, text)
     run.variables.control_values = known_control_values(run)
     return run

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Callable
 
 from auditor.declared.control_settings import choice
-from auditor.interpret.expressions import Calculator
+from auditor.interpret.expressions import Calculator, ExpressionFault
 from auditor.interpret.run import Run
 from auditor.parse.blocks import Assign, Block, Do, End, Expression, Goto, IfThen, Opaque
 
@@ -70,7 +70,12 @@ def named(variables: set[int]) -> str:
 def _assign(run: Run, statement: Assign, block: Block) -> None:
     calculate = calculator(run)
     number = calculate.variable_number(statement.target)
-    value = calculate.value(statement.value)
+    try:
+        value = calculate.value(statement.value)
+    except ExpressionFault:
+        run.variables.take_unknown()
+        run.variables.write_unknown(number)
+        raise
     unknown = run.variables.take_unknown()
     special = _SPECIAL.get(number)
     if special is not None:

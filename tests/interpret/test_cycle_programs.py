@@ -5,6 +5,7 @@ Source of the expected moves: ``provenance`` in the fixture (a separate referenc
 
 from __future__ import annotations
 
+import itertools
 import json
 from pathlib import Path
 from typing import Any
@@ -52,7 +53,7 @@ def test_moves(name: str) -> None:
 @pytest.mark.parametrize("name", PROGRAMS)
 def test_every_move_starts_where_the_last_one_ended(name: str) -> None:
     moves = interpreted(EXAMPLES[name]).moves
-    for before, after in zip(moves, moves[1:], strict=False):
+    for before, after in itertools.pairwise(moves):
         assert before.end == pytest.approx(after.start)
 
 

@@ -145,6 +145,7 @@ def test_block_skip_both_ways() -> None:
 def test_a_variable_that_only_the_control_knows_leaves_the_block_out() -> None:
     found = carried_out(CUT + "G1 X#500\nG1 Z-5.\nG0 X40. Z1.\n#1=#501\nG0 X#1")
     assert not_audited(found) == [4, 5, 8]
+    assert not_audited(carried_out(CUT + "G1 Z0 F#500\nZ-1.")) == []
     assert "unknown-variable" in topics(found)
 
 

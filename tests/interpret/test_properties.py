@@ -209,8 +209,8 @@ words = st.builds(
 )  # fmt: skip
 statements = st.sampled_from(
     ["#1=5", "#1=#500", "GOTO10", "IF[#1EQ5]GOTO20", "WHILE[1EQ1]DO1", "END1", "DO2", "END2", "M98P1", "M99", "O1", "%",
-     "N10", "N20", "G71P10Q20U1W1D1000", "G71U2R1", "G70P10Q20", "G66P1", "(", ")", "IF[#1GT", "#3000=1(X)", "G41", "G42",
-     "G40", "G10L50", "T0101", "T9", "G91", "G28U0W0", "G53X0", "G55", "G52Z5."]
+     "N10", "N20", "G71P10Q20U1W1D1000", "G71U2R1", "G70P10Q20", "G66P1", "(", ")", "IF[#1GT", "#3000=1(X)", "G41",
+     "G42", "G40", "G10L50", "T0101", "T9", "G91", "G28U0W0", "G53X0", "G55", "G52Z5."]
 )  # fmt: skip
 lines = st.one_of(st.lists(words, max_size=7).map("".join), statements)
 
