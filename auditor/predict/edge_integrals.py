@@ -12,7 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from auditor.predict.loads import Floats, Ints
-from auditor.simulate.samples import Edge
+from auditor.simulate.samples import Edge, Part
 
 APART = 1_000.0  # mm between the across-coordinates of two edges in the common table
 
@@ -27,6 +27,8 @@ class EdgeTable:
     along: Floats
     sine: Floats  # (nodes,) of the side behind the node; the last node repeats its own
     part: Ints  # (nodes,)
+    turning: Floats  # (nodes,) sine of the working angle at the node itself on a rounded corner, else of its side
+    turned: Floats  # (nodes,) the same at the far end of the side behind the node
     peak: Ints  # (edges,) node with the largest sine: it rises up to there and falls behind
     key: Floats  # (nodes,) across shifted apart by edge
     shift: Floats  # (edges,)
@@ -43,6 +45,7 @@ class EdgeTable:
         across = _joined([edge.across for edge in edges])
         sine = _joined([np.append(edge.sine, edge.sine[-1]) for edge in edges])
         part = _joined([np.append(edge.part, edge.part[-1]) for edge in edges]).astype(np.int64)
+        begin, end = _at_ends(edges)
         lowest = across[first] if len(edges) else np.empty(0)
         shift = np.arange(len(edges)) * APART - lowest
         return cls(
@@ -52,6 +55,8 @@ class EdgeTable:
             along=_joined([edge.along for edge in edges]),
             sine=sine,
             part=part,
+            turning=begin,
+            turned=end,
             peak=first + np.array([int(np.argmax(edge.sine)) for edge in edges], dtype=np.int64),
             key=across + np.repeat(shift, sizes),
             shift=shift,
@@ -120,17 +125,39 @@ def integrate(table: EdgeTable, edge: Ints, low: Floats, high: Floats, mc: float
         kienzle=table.between(weight, one, ends),
         moment_along=table.between(weight, table.along, ends),
         moment_across=table.between(weight, table.across, ends),
-        sine_max=_largest_sine(table, edge, below, above),
+        sine_max=_largest_sine(table, edge, ends),
         low_along=table.at(table.along, below, low),
         high_along=table.at(table.along, above, high),
     )
 
 
-def _largest_sine(table: EdgeTable, edge: Ints, below: Ints, above: Ints) -> Floats:
+def _largest_sine(table: EdgeTable, edge: Ints, ends: Ends) -> Floats:
+    """Largest sine of the working angle within the stretches: at the steepest side, or at one of the ends."""
     peak = table.peak[edge]
-    return np.where(
-        (below <= peak) & (peak <= above), table.sine[peak], np.maximum(table.sine[below], table.sine[above])
-    )
+    at_ends = np.maximum(_sine_at(table, ends.below, ends.low), _sine_at(table, ends.above, ends.high))
+    return np.where((ends.below <= peak) & (peak <= ends.above), table.sine[peak], at_ends)
+
+
+def _sine_at(table: EdgeTable, side: Ints, across: Floats) -> Floats:
+    share = (across - table.across[side]) / (table.across[side + 1] - table.across[side])
+    return table.turning[side] + share * (table.turned[side] - table.turning[side])
+
+
+def _at_ends(edges: Sequence[Edge]) -> tuple[Floats, Floats]:
+    """Sine at the beginning and the end of every side: on a rounded corner it changes along the chord."""
+    begins, ends = [], []
+    for edge in edges:
+        begin, end = edge.sine.copy(), edge.sine.copy()
+        nose = edge.part == Part.NOSE
+        # chords meet at the mean of their slopes; a straight side continues the corner's tangent
+        joint = np.where(nose[:-1] & nose[1:], 0.5 * (begin[:-1] + begin[1:]), np.where(nose[:-1], begin[1:], end[:-1]))
+        begin[1:] = np.where(nose[1:], joint, begin[1:])
+        end[:-1] = np.where(nose[:-1], joint, end[:-1])
+        begin[0] = 0.0 if edge.round_low > 0.0 else begin[0]
+        end[-1] = 0.0 if edge.round_high > 0.0 else end[-1]
+        begins.append(np.append(begin, begin[-1]))
+        ends.append(np.append(end, end[-1]))
+    return _joined(begins), _joined(ends)
 
 
 def _joined(arrays: Sequence[Floats]) -> Floats:
