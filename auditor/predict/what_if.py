@@ -11,7 +11,7 @@ from dataclasses import fields, replace
 import numpy as np
 
 from auditor.declared.model import Job
-from auditor.interpret.moves import Feed, Interpretation
+from auditor.interpret.moves import Feed, Interpretation, Move
 from auditor.predict.edge_integrals import EdgeTable
 from auditor.predict.forces import stretch_forces
 from auditor.predict.loads import Loads
@@ -22,23 +22,23 @@ from auditor.simulate.samples import Samples, Simulation
 
 def at_feed(job: Job, path: Interpretation, simulation: Simulation, move_index: int, feed_mm_per_rev: float) -> Loads:
     """Loads of one move at another feed per revolution."""
-    return _loads(job, path, simulation, _rows_of(simulation.samples, move_index), move_index, feed_mm_per_rev)
+    move = replace(path.moves[move_index], feed=Feed("rev", feed_mm_per_rev))
+    return _loads(job, move, simulation, _rows_of(simulation.samples, move_index))
 
 
 def at_depth(job: Job, path: Interpretation, simulation: Simulation, move_index: int, depth_mm: float) -> Loads:
-    """Loads of one move that leaves more standing, so that its edge is engaged ``depth_mm`` deep at most."""
+    """Loads of one move with the engaged edge ending ``depth_mm`` above the surface it leaves."""
     rows = _rows_of(simulation.samples, move_index)
-    table = EdgeTable.of(simulation.edges)
-    lowest, highest = table.across[table.first[rows.edge]], table.across[table.last[rows.edge]]
+    ends = np.array([(edge.across[0], edge.across[-1]) for edge in simulation.edges]).reshape(-1, 2)
+    lowest, highest = ends[rows.edge].T
     # The finished surface lies at that end of the edge which the stretches reach.
     at_low_end = np.abs(rows.low - lowest) <= np.abs(highest - rows.high)
-    low = np.where(at_low_end, rows.low, np.minimum(rows.high, np.maximum(rows.low, highest - depth_mm)))
-    high = np.where(at_low_end, np.maximum(rows.low, np.minimum(rows.high, lowest + depth_mm)), rows.high)
-    # The stock stays where it is: a shallower cut runs that much further out.
-    outwards = (rows.high - high) - (low - rows.low)
-    dz, dr = table.direction[rows.edge].T
-    shallower = replace(rows, low=low, high=high, z=rows.z - outwards * dr, r=rows.r + outwards * dz)
-    return _loads(job, path, simulation, shallower, move_index, None)
+    shallower = replace(
+        rows,
+        low=np.where(at_low_end, rows.low, np.minimum(rows.high, np.maximum(rows.low, highest - depth_mm))),
+        high=np.where(at_low_end, np.maximum(rows.low, np.minimum(rows.high, lowest + depth_mm)), rows.high),
+    )
+    return _loads(job, path.moves[move_index], simulation, shallower)
 
 
 def _rows_of(samples: Samples, move_index: int) -> Samples:
@@ -46,14 +46,13 @@ def _rows_of(samples: Samples, move_index: int) -> Samples:
     return Samples(**{column.name: getattr(samples, column.name)[first:last] for column in fields(Samples)})
 
 
-def _loads(
-    job: Job, path: Interpretation, simulation: Simulation, rows: Samples, move_index: int, feed: float | None
-) -> Loads:
+def _loads(job: Job, move: Move, simulation: Simulation, rows: Samples) -> Loads:
+    """Loads of the rows of one move, as if it were the whole program."""
     if len(rows.move) == 0:
         return no_loads()
-    moves = list(path.moves)
-    if feed is not None:
-        moves[move_index] = replace(moves[move_index], feed=Feed("rev", feed))
-    table = EdgeTable.of(simulation.edges)
-    forces = stretch_forces(rows, table, moves, job)
-    return loads_rows(rows, forces, table, moves, job, compliances(rows, simulation.stock_before, job))
+    compliance = compliances(rows, simulation.stock_before, job)
+    used, edge = np.unique(rows.edge, return_inverse=True)
+    table = EdgeTable.of([simulation.edges[number] for number in used])
+    alone = replace(rows, move=np.zeros_like(rows.move), edge=edge)
+    loads = loads_rows(alone, stretch_forces(alone, table, [move], job), table, [move], job, compliance)
+    return replace(loads, move=np.full_like(loads.move, move.index))
