@@ -105,7 +105,8 @@ def stretch_forces(samples: Samples, table: EdgeTable, moves: Sequence[Move], jo
     drills = tools.drills[tool]
     along, across = _resolved(table, samples, edge, advance, np.where(drills, cutting, thrust))
     across = np.where(drills, 0.0, across)
-    idle = edge.extent <= 0.0
+    # An edge in air carries nothing, but what cannot be known of the cut is not known beside it either.
+    idle = (edge.extent <= 0.0) & np.isfinite(advance) & (material.kc11 is not None)
     cutting, torque, along, across = (np.where(idle, 0.0, figure) for figure in (cutting, torque, along, across))
     return StretchForces(
         feed=feed, rpm=rpm, extent=edge.extent, length=edge.length,
