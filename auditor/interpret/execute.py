@@ -149,7 +149,7 @@ def _act_once_or_move(run: Run, words: BlockWords) -> None:
         return
     live = [] if CALLS.intersection(words.m_codes) else sorted(words.by_letter.keys() & LIVE_LETTERS)
     circle = run.state.motion in ARC_MOTIONS and words.has("I", "K")
-    if not has_axis_words(words) and not live and not circle:
+    if not has_axis_words(words) and not live and not circle and not words.has(",A", ",C", ",R"):
         return
     if (live and run.state.drilling is None) or run.state.live_mode is not None:
         _refuse_live(run, live)
