@@ -32,7 +32,8 @@ def value(text: str, variables: Variables | None = None, **calculator: object) -
         ("6AND3", 2.0), ("6OR3", 7.0), ("6XOR3", 5.0), ("SIN[30]", 0.5), ("COS[60]", 0.5), ("TAN[45]", 1.0),
         ("ASIN[.5]", 30.0), ("ACOS[.5]", 60.0), ("ATAN[1]/[1]", 45.0), ("ATAN[-1]/[-1]", 225.0), ("ATAN[1,-1]", 135.0),
         ("SQRT[16]", 4.0), ("ABS[-3.5]", 3.5), ("ROUND[2.5]", 3.0), ("ROUND[-2.5]", -3.0), ("FIX[-2.7]", -2.0),
-        ("FUP[2.1]", 3.0), ("FUP[-2.1]", -3.0), ("LN[EXP[2]]", 2.0), ("POW[2,3]", 8.0), ("BIN[18]", 12.0), ("BCD[12]", 18.0),
+        ("FUP[2.1]", 3.0), ("FUP[-2.1]", -3.0), ("LN[EXP[2]]", 2.0), ("POW[2,3]", 8.0), ("BIN[18]", 12.0),
+        ("BCD[12]", 18.0),
     ],
 )  # fmt: skip
 def test_functions_and_precedence(text: str, wanted: float) -> None:
@@ -51,7 +52,8 @@ def test_round_to_the_increment_inside_a_word() -> None:
 
 @pytest.mark.parametrize(
     "text",
-    ["1/0", "5MOD0", "SQRT[-1]", "ASIN[2]", "LN[0]", "EXP[9999]", "POW[0,-1]", "POW[-8,.5]", "BIN[-1]", "#[-1]", "BIN[10]"],
+    ["1/0", "5MOD0", "SQRT[-1]", "ASIN[2]", "LN[0]", "EXP[9999]", "POW[0,-1]", "POW[-8,.5]", "BIN[-1]", "#[-1]",
+     "BIN[10]"],
 )
 def test_what_has_no_value_is_a_fault(text: str) -> None:
     with pytest.raises(ExpressionFault):
