@@ -34,6 +34,7 @@ rapid = {{ x = "24 m/min", z = "30 m/min" }}
 tool_change = ["300 mm", "200 mm"]
 [workholding]
 stick_out = "80 mm"
+{holding}
 [workpiece]
 {workpiece}
 {material}
@@ -44,12 +45,13 @@ BAR = 'diameter = "60 mm"\nlength = "120 mm"'
 
 def audited(
     folder: Path, program: str, tools: str, *, workpiece: str = BAR, material: str = MATERIAL, limit: float = 4500,
-    before: str = "", control: str = "",
+    before: str = "", control: str = "", holding: str = 'kind = "chuck"',
 ) -> Audit:  # fmt: skip
     """Audit a program text under a job made from these parts."""
     (folder / "part.nc").write_text(program, encoding="utf-8")
     job = FRAME.format(
-        workpiece=workpiece, material=material, tools=tools, limit=limit, before=before, control=control
+        workpiece=workpiece, material=material, tools=tools, limit=limit, before=before, control=control,
+        holding=holding,
     )
     (folder / "part.job.toml").write_text(job, encoding="utf-8")
     return audit_program(folder / "part.nc")
