@@ -43,12 +43,14 @@ def complain(faults: Iterable[Fault]) -> None:
         say(f"turnaudit: {fault}")
 
 
-def view_of(output: Path | None, brief: bool, series: bool) -> View:
+def view_of(
+    output: Path | None, brief: bool, series: bool, failing: frozenset[str] = frozenset({"stop"})
+) -> View:
     """How a report is to be written for its target: a file holds every sign, a terminal what it says it holds."""
     from auditor.reports import View
 
     if output is not None:
-        return View(brief=brief, series=series)
+        return View(brief=brief, series=series, failing=failing)
     from auditor.reports.screen import signs
 
     terminal = sys.stdout.isatty()
@@ -58,7 +60,7 @@ def view_of(output: Path | None, brief: bool, series: bool) -> View:
         width=min(_WIDEST, max(_NARROWEST, columns - (sys.platform == "win32"))),
         plain=dumb or not _holds(sys.stdout.encoding, signs()),
         colour=terminal and not dumb and not os.environ.get("NO_COLOR"),
-        brief=brief, series=series,
+        brief=brief, series=series, failing=failing,
     )
 
 

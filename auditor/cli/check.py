@@ -56,6 +56,7 @@ class Choices:
     quiet: bool
 
 
+_FAILING = {"stop": frozenset({"stop"}), "review": frozenset({"stop", "review"}), "never": frozenset[str]()}
 _FILE = click.Path(path_type=Path, dir_okay=False)
 
 
@@ -66,7 +67,7 @@ _FILE = click.Path(path_type=Path, dir_okay=False)
               help="screen, json, sarif, junit, gnu or csv.")
 @click.option("--output", type=_FILE, metavar="FILE", help="Write the report there instead of standard output.")
 @click.option("--html", type=_FILE, metavar="FILE", help="Write a report with pictures besides.")
-@click.option("--fail-on", type=click.Choice(["stop", "review", "never"]), default="stop", show_default=True,
+@click.option("--fail-on", type=click.Choice(list(_FAILING)), default="stop", show_default=True,
               help="From which level on a finding gives exit status 1.")
 @click.option("--against", type=_FILE, metavar="REPORT.json",
               help="Only what is new or worse than in that earlier JSON report counts for the exit status.")
@@ -115,7 +116,8 @@ def _views(choices: Choices) -> Views:
     from auditor.cli._talk import view_of
     from auditor.reports import View, formats
 
-    views = {choices.format: view_of(choices.output, choices.quiet, choices.series)}
+    failing = _FAILING[choices.fail_on]
+    views = {choices.format: view_of(choices.output, choices.quiet, choices.series, failing)}
     if choices.html is not None:
         if "html" not in formats():
             raise UsageError(Fault("this installation has no report with pictures", key="--html"))

@@ -42,6 +42,7 @@ class View:
     colour: bool = False
     brief: bool = False  # the verdict alone
     series: bool = False  # with the curves along every cut
+    failing: frozenset[str] = frozenset({"stop"})  # levels that make the run fail
 
 
 Outcome = Audit | Unreadable

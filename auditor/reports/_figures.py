@@ -62,10 +62,12 @@ def harmless(text: str) -> str:
     >>> harmless("G1\\tX2\\x1b[31m")
     'G1 X2?[31m'
     """
-    return "".join(
-        " " if sign == "\t" else "?" if unicodedata.category(sign) in {"Cc", "Cf", "Cs", "Co", "Zl", "Zp"} else sign
-        for sign in text
-    )
+    return "".join(" " if sign == "\t" else "?" if _harmful(sign) else sign for sign in text)
+
+
+def _harmful(sign: str) -> bool:
+    """Control, format and private signs, halves of signs, line separators; and U+..FFFE, U+..FFFF, which are none."""
+    return unicodedata.category(sign) in {"Cc", "Cf", "Cs", "Co", "Zl", "Zp"} or ord(sign) & 0xFFFE == 0xFFFE
 
 
 def plain(text: str) -> str:

@@ -7,7 +7,6 @@ Letters beyond ASCII are escaped, so that no code page between here and the read
 from __future__ import annotations
 
 import json
-import math
 from collections.abc import Iterator, Mapping, Sequence
 
 import numpy as np
@@ -15,15 +14,15 @@ import numpy as np
 from auditor.declared.model import Acceptance, Point
 from auditor.findings import Audit, Finding
 from auditor.interpret.moves import Move
-from auditor.predict.loads import Loads, MoveFigures
+from auditor.predict.loads import Loads
 from auditor.reports import Outcome, Unreadable, View
+from auditor.reports._rows import between, diameter, largest, number, provisional
 
 Value = str | int | float | bool | None | Sequence["Value"] | Mapping[str, "Value"]
 Object = dict[str, Value]
 
 _FORM = "turnaudit/1"
 _SET = "turnaudit-set/1"
-_DECIMALS = 6
 
 # report key -> field of the loads, for the curves along a cut
 _CURVES = {
@@ -31,13 +30,6 @@ _CURVES = {
     "chip_area_mm2": "area", "effective_rake_deg": "rake", "spindle_rpm": "rpm", "cutting_force_N": "cutting",
     "feed_force_N": "feed_force", "passive_force_N": "passive", "torque_Nm": "torque", "cutting_power_kW": "power",
     "motor_power_kW": "motor_power", "push_off_mm": "bend",
-}
-
-# report key -> field of the figures per move
-_FIGURES = {
-    "depth_of_cut_mm": "depth", "edge_engaged_mm": "length", "chip_thickness_mm": "chip_max", "chip_area_mm2": "area",
-    "effective_rake_deg": "rake", "cutting_force_N": "cutting", "feed_force_N": "feed_force",
-    "passive_force_N": "passive", "torque_Nm": "torque", "cutting_power_kW": "power", "motor_power_kW": "motor_power",
 }
 
 
@@ -90,8 +82,8 @@ def _audit(audit: Audit, view: View) -> Object:
         "not_judged": [{"check": item.check, "why": item.why} for item in audit.not_judged],
         "assumptions": [{"about": item.about, "value": item.value, "why": item.why} for item in audit.assumptions],
         "totals": {
-            "time_s": _number(totals.time), "cutting_time_s": _number(totals.cutting_time),
-            "air_feed_time_s": _number(totals.air_feed_time), "removed_mm3": _number(totals.removed),
+            "time_s": number(totals.time), "cutting_time_s": number(totals.cutting_time),
+            "air_feed_time_s": number(totals.air_feed_time), "removed_mm3": number(totals.removed),
         },
         "moves": [_move(move, row, audit) for row, move in enumerate(moves)],
         "findings": [_finding(finding, moves) for finding in audit.findings],
@@ -107,36 +99,32 @@ def _move(move: Move, row: int, audit: Audit) -> Object:
         "line": move.line, "block": move.block, "tool": move.tool, "kind": str(move.kind),
         "from": None if move.start_z is None and move.start_r is None else _place(move.start_z, move.start_r),
         "to": _place(move.end_z, move.end_r),
-        "feed_mm_per_rev": _number(figures.feed_rev[row]),
-        "spindle_rpm": _range(figures.rpm_low[row], figures.rpm_high[row]),
-        "cutting_speed_m_per_min": _range(figures.speed_low[row], figures.speed_high[row]),
+        "feed_mm_per_rev": number(figures.feed_rev[row]),
+        "spindle_rpm": between(figures.rpm_low[row], figures.rpm_high[row]),
+        "cutting_speed_m_per_min": between(figures.speed_low[row], figures.speed_high[row]),
     }
     if move.centre is not None:
         body["centre"] = _point(move.centre)
         body["clockwise"] = move.clockwise
-    body.update(_largest(figures, row))
-    body["removed_mm3"] = _number(audit.run.simulation.removed[row])
-    body["time_s"] = _number(figures.time[row])
-    if _provisional(move):
+    body.update(largest(figures, row))
+    body["removed_mm3"] = number(audit.run.simulation.removed[row])
+    body["time_s"] = number(figures.time[row])
+    if provisional(move):
         body["provisional"] = True
     return body
-
-
-def _largest(figures: MoveFigures, row: int) -> Object:
-    return {key: _number(getattr(figures, field)[row]) for key, field in _FIGURES.items()}
 
 
 def _finding(finding: Finding, moves: Sequence[Move]) -> Object:
     body: Object = {
         "check": finding.check, "level": str(finding.level), "line": finding.line, "block": finding.block,
         "tool": finding.tool, "at": None if finding.at is None else _point(finding.at),
-        "value": _number(finding.value),
-        "band": None if finding.band is None else _range(*finding.band),
-        "limit": _number(finding.limit), "unit": finding.unit, "message": finding.message, "remedy": finding.remedy,
+        "value": number(finding.value),
+        "band": None if finding.band is None else between(*finding.band),
+        "limit": number(finding.limit), "unit": finding.unit, "message": finding.message, "remedy": finding.remedy,
         "accepted": None if finding.accepted is None else _acceptance(finding.accepted),
         "fingerprint": finding.fingerprint,
     }
-    if finding.move is not None and _provisional(moves[finding.move]):
+    if finding.move is not None and provisional(moves[finding.move]):
         body["provisional"] = True
     return body
 
@@ -152,15 +140,11 @@ def _series(loads: Loads, moves: Sequence[Move]) -> Iterator[Object]:
     for index, start, end in zip(rows, first, ends, strict=True):
         span = slice(int(start), int(end))
         body: Object = {"move": int(index), "line": moves[int(index)].line}
-        body["x_mm"] = [_number(2.0 * r) for r in loads.r[span]]
-        body["z_mm"] = [_number(z) for z in loads.z[span]]
+        body["x_mm"] = [diameter(float(r)) for r in loads.r[span]]
+        body["z_mm"] = [number(z) for z in loads.z[span]]
         for key, field in _CURVES.items():
-            body[key] = [_number(value) for value in getattr(loads, field)[span]]
+            body[key] = [number(value) for value in getattr(loads, field)[span]]
         yield body
-
-
-def _provisional(move: Move) -> bool:
-    return move.provisional or move.new_stock_state
 
 
 def _point(point: Point) -> Object:
@@ -169,15 +153,4 @@ def _point(point: Point) -> Object:
 
 def _place(z: float | None, r: float | None) -> Object:
     """A point as the report gives it: X as a diameter."""
-    return {"x": None if r is None else _number(2.0 * r), "z": _number(z)}
-
-
-def _range(low: float, high: float) -> Value:
-    pair = (_number(low), _number(high))
-    return None if None in pair else pair
-
-
-def _number(value: float | None) -> float | None:
-    if value is None or not math.isfinite(value):
-        return None
-    return round(float(value), _DECIMALS) + 0.0  # + 0.0 turns -0.0 into 0.0
+    return {"x": diameter(r), "z": number(z)}

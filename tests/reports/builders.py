@@ -159,6 +159,9 @@ def note_finding(**changed: object) -> Finding:
     })  # type: ignore[arg-type]
 
 
+RULES = ("air-time", "chuck-grip", "spindle-power", "surface-roughness")
+
+
 def rule(name: str = "spindle-power") -> Rule:
     """A check's text."""
     text = "Power: does the spindle carry the cut?\n\nWhat\n    Compares.\n"
@@ -186,7 +189,7 @@ def audit(
     return Audit(
         run=run, verdict=verdict, coverage=Coverage(count, 4, tuple(not_audited)),  # type: ignore[arg-type]
         findings=tuple(findings), not_judged=tuple(not_judged), assumptions=tuple(assumptions),
-        totals=Totals(212.4, 171.0, 12.2, 96540.2), rules=MappingProxyType({"spindle-power": rule()}),
+        totals=Totals(212.4, 171.0, 12.2, 96540.2), rules=MappingProxyType({name: rule(name) for name in RULES}),
     )
 
 
