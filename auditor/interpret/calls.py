@@ -5,9 +5,11 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from auditor.interpret.flow import ModalCall
+from auditor.interpret.jumps import call_program, jump, lose_track, target_missing
 from auditor.interpret.library import Program
 from auditor.interpret.registry import Phase, action, m_code
 from auditor.interpret.run import Run
+from auditor.interpret.travel import settle
 from auditor.interpret.words import BlockWords, Value, argument_value
 
 _ARGUMENTS = {
@@ -36,19 +38,19 @@ def subprogram_call(run: Run, words: BlockWords) -> None:
     if start is not None:
         found = program.find(start, -1)
         if found is None:
-            run.target_missing(start)
+            target_missing(run, start)
             return
         first = found
-    run.call(program, repeats=repeats, first=first)
+    call_program(run, program, repeats=repeats, first=first)
 
 
 def _call_within(run: Run, words: BlockWords, number: int) -> None:
     program = run.flow.frame.program
     found = program.find(number, -1)
     if found is None:
-        run.target_missing(number)
+        target_missing(run, number)
         return
-    run.call(program, repeats=max(words.integer("L") or 1, 0), first=found)
+    call_program(run, program, repeats=max(words.integer("L") or 1, 0), first=found)
 
 
 def _target(run: Run, words: BlockWords) -> tuple[Program | None, int]:
@@ -69,18 +71,18 @@ def _missing(run: Run, words: BlockWords) -> None:
     name = run.called_name or (f"O{words.integer('P'):04d}" if words.has("P") else "the program called")
     reason = f"{name} is not in the file and not beside it: what it does is not known"
     run.remark("subprogram-missing", reason, "P", remedy=f"put {name} into the file or beside it")
-    run.lose_track(reason)
+    lose_track(run, reason)
 
 
 @m_code(Phase.AFTER, 99)
 def program_return(run: Run, words: BlockWords) -> None:
     """M99: back to the caller; at the end of the main program it starts over."""
-    run.settle()
+    settle(run)
     flow = run.flow
     if len(flow.frames) == 1:
         target = words.integer("P")
         if target is not None and not flow.lies_behind(target):
-            run.jump(target)
+            jump(run, target)
             return
         run.remark("repeats-main", "the main program starts over for ever; one pass is audited", "M")
         run.finish("M99")
@@ -92,7 +94,7 @@ def program_return(run: Run, words: BlockWords) -> None:
     if macro and len(flow.frames) < depth:
         run.variables.leave()
     if not found and target is not None:
-        run.target_missing(target)
+        target_missing(run, target)
 
 
 @action("macro call")
@@ -105,7 +107,7 @@ def macro_call(run: Run, words: BlockWords) -> None:
     if repeats < 1:
         return
     arguments = read_arguments(run, words)
-    run.call(program, repeats=repeats, macro=True)
+    call_program(run, program, repeats=repeats, macro=True)
     run.variables.enter(arguments)
 
 
@@ -130,8 +132,8 @@ def call_after_motion(run: Run) -> None:
     modal = run.flow.modal_call
     if modal is None or len(run.flow.frames) != modal.depth:
         return
-    run.settle()
-    run.call(modal.program, repeats=1, macro=True)
+    settle(run)
+    call_program(run, modal.program, repeats=1, macro=True)
     run.variables.enter(modal.arguments)
 
 

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from dataclasses import replace
 
-from auditor.declared.control_settings import SETTINGS, setting
 from auditor.declared.model import Point
 from auditor.interpret import cycles
 from auditor.interpret.cutting_conditions import check_cut
@@ -15,6 +14,7 @@ from auditor.interpret.reference import leave_compensation
 from auditor.interpret.registry import action, motion
 from auditor.interpret.run import NotUnderstood, Run
 from auditor.interpret.systems import DRILLING_CYCLES, MULTIPLE_CYCLES, PROFILE_CYCLES, SINGLE_CYCLES, code_for
+from auditor.interpret.travel import begin_stroke, dressed, settle, unknown_start, write
 from auditor.interpret.words import BlockWords
 
 _COMPENSATED = frozenset({"finishing"})
@@ -36,8 +36,8 @@ def multiple_cycle(run: Run, words: BlockWords) -> None:
         _carry_out(run, words, name, None)
         return
     if run.state.position is None:
-        raise NotUnderstood(run.unknown_start(), "position-unknown")
-    run.settle()
+        raise NotUnderstood(unknown_start(run), "position-unknown")
+    settle(run)
     try:
         profile = carry_out_profile(run, words, finishing=name == "finishing")
     except CycleFault:
@@ -53,14 +53,15 @@ def multiple_cycle(run: Run, words: BlockWords) -> None:
 def _carry_out(run: Run, words: BlockWords, name: str, profile: Profile | None) -> None:
     start = run.state.position
     if start is None:
-        raise NotUnderstood(run.unknown_start(), "position-unknown")
+        raise NotUnderstood(unknown_start(run), "position-unknown")
     if name not in _COMPENSATED:
         leave_compensation(run, f"the cycle {code_for(run.system, name)}")
-    run.settle()
+    settle(run)
     expansion = cycles.find(name)(_call(run, words, name, start, profile))
     run.state.stored[name] = dict(expansion.stored)
-    run.cycle_remarks(expansion.remarks)
-    _note_settings(run, name, expansion)
+    run.note(*expansion.remarks)
+    for key in expansion.leaned_on:
+        run.lean_on(key, name)
     _write(run, name, expansion, profile)
 
 
@@ -98,17 +99,6 @@ def _shifted(stroke: Stroke, shift: Point, sign: int) -> Stroke:
     return replace(stroke, end=_moved(stroke.end, shift, sign), centre=centre)
 
 
-def _note_settings(run: Run, name: str, expansion: Expansion) -> None:
-    """Settings of the control that the path rests on and nobody declared."""
-    for key in expansion.leaned_on:
-        if key in run.control.settings or key not in SETTINGS:
-            continue
-        value, entry = setting(run.control, key), SETTINGS[key]
-        unit = {"length": " mm", "angle": " deg"}.get(entry.dimension or "", "")
-        text = f"{value:g}{unit}" if isinstance(value, float) else str(value)
-        run.log.assume(f"control.{key}", text, f"not declared; {name} rests on it: {entry.touches}")
-
-
 def _write(run: Run, name: str, expansion: Expansion, profile: Profile | None) -> None:
     cuts = [stroke.kind for stroke in expansion.strokes if stroke.kind is not Kind.RAPID]
     if cuts and name != "finishing":
@@ -128,11 +118,11 @@ def _write(run: Run, name: str, expansion: Expansion, profile: Profile | None) -
 def _one_stroke(run: Run, stroke: Stroke) -> None:
     start = run.state.position
     assert start is not None
-    run.begin_stroke()
-    own = run.dressed(replace(_shifted(stroke, run.state.shift, 1), line=run.words.line, block=run.words.label))
+    begin_stroke(run)
+    own = dressed(run, replace(_shifted(stroke, run.state.shift, 1), line=run.words.line, block=run.words.label))
     if stroke.reversed_spindle and own.spindle is not None:
         own = replace(own, spindle=replace(own.spindle, direction=-own.spindle.direction))
-    run.write(start.z, start.r, own)
+    write(run, start.z, start.r, own)
     run.state.z, run.state.r = own.end
 
 

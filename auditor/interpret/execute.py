@@ -60,7 +60,7 @@ def carry_out(run: Run, block: Block) -> None:
     except NotUnderstood as problem:
         not_understood(run, problem)
     except CycleFault as fault:
-        run.cycle_fault(fault)
+        run.note(fault)
         run.not_audited(fault.message)
     if run.strokes == strokes and run.words.values:
         run.compensated.blank_blocks += 1

@@ -8,6 +8,7 @@ from auditor.interpret.motion import has_axis_words, millimetres, x_factor
 from auditor.interpret.reading import UnknownValues, read_block
 from auditor.interpret.run import NotUnderstood, Run
 from auditor.interpret.systems import function_of, group_of
+from auditor.interpret.travel import close_chain, settle
 from auditor.interpret.words import BlockWords
 from auditor.parse.blocks import Block
 
@@ -22,7 +23,7 @@ def skip_unreadable(run: Run, block: Block) -> None:
     fault = block.fault
     assert fault is not None
     hint = f" ({fault.hint})" if fault.hint else ""
-    run.settle()
+    settle(run)
     unclosed = "never closed" in fault.message and "comment" in fault.message
     run.remark("comment-unclosed" if unclosed else "syntax", f"{fault.message}{hint}")
     run.log.add_not_audited(run.words.line, block.text, f"the block cannot be read: {fault.message}")
@@ -55,7 +56,7 @@ def _motion_behind(run: Run, text: str) -> str | None:
 
 def not_understood(run: Run, problem: NotUnderstood) -> None:
     """A block with motion that is not followed; what it states in absolute words is known behind it."""
-    run.close_chain()
+    close_chain(run)
     if problem.topic is not None:
         run.remark(problem.topic, f"the block is not audited: {problem.reason}", *problem.words)
     run.not_audited(problem.reason)
@@ -91,7 +92,7 @@ def _without_unknown(run: Run, missing: UnknownValues) -> BlockWords | None:
             held.certain = False
     if letters <= {"F", "S", "T"}:
         return words
-    run.settle()
+    settle(run)
     if "G" in letters or words.functions:
         run.state.motion = run.state.drilling = None
     if has_axis_words(words) or letters - {"F", "S", "T", "M", "L", "Q", "D", "E"}:
@@ -105,7 +106,7 @@ def without_value(run: Run, block: Block, reason: str) -> None:
     """An expression that has no value: a control stops there."""
     run.remark("arithmetic", reason)
     if block.statement is None:
-        run.settle()
+        settle(run)
         run.not_audited(reason)
         run.state.forget_position()
     else:

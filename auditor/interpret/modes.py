@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from auditor.interpret.registry import Phase, modal
 from auditor.interpret.run import Run
+from auditor.interpret.travel import close_chain, settle
 from auditor.interpret.words import BlockWords
 
 
@@ -12,7 +13,7 @@ def units(run: Run, words: BlockWords) -> None:
     """Inch or metric words from here on."""
     inch = words.calls("inch")
     if run.moved and inch != run.state.inch:
-        run.settle()
+        settle(run)
         run.remark("units-switched", "the unit changes after motion: words change their size, offsets do not", "G")
     run.state.inch = inch
     run.units_said = True
@@ -39,7 +40,7 @@ def plane(run: Run, words: BlockWords) -> None:
 @modal(Phase.MODE, "compensation left", "compensation right")
 def compensation_on(run: Run, words: BlockWords) -> None:
     """G41 and G42: the next move with motion starts the compensated path."""
-    run.close_chain()
+    close_chain(run)
     left = words.calls("compensation left") != (run.control.arcs == "mirrored")
     side = "left" if left else "right"
     state = run.state
@@ -50,9 +51,9 @@ def compensation_on(run: Run, words: BlockWords) -> None:
             "G",
             remedy="cancel with G40 in a move of its own first",
         )
-        run.settle()
+        settle(run)
     if state.compensation == "off" and run.compensated.open:
-        run.settle()
+        settle(run)
     state.compensation = "left" if side == "left" else "right"
     tool = run.tool
     if tool is not None and tool.tip in (0, 9):
@@ -69,6 +70,6 @@ def compensation_off(run: Run, words: BlockWords) -> None:
     """G40: the next move with motion ends on its programmed point again."""
     if run.state.compensation == "off":
         return
-    run.close_chain()
+    close_chain(run)
     run.state.compensation = "off"
     run.compensated.cancelling = run.compensated.open

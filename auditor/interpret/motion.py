@@ -13,6 +13,7 @@ from auditor.interpret.cycles.call import CycleFault, Stroke
 from auditor.interpret.moves import Feed, Kind
 from auditor.interpret.registry import motion
 from auditor.interpret.run import CornerChain, NotUnderstood, Run
+from auditor.interpret.travel import close_chain, rapid_partly_known, travel, unknown_start
 from auditor.interpret.variable_lead import mean_lead
 from auditor.interpret.words import BlockWords, length
 
@@ -82,7 +83,7 @@ def known_start(run: Run, end: tuple[float | None, float | None]) -> Point:
     """The point a cut starts from; a cut from an unknown point is not audited but restates its end."""
     start = run.state.position
     if start is None or None in end:
-        reason = run.unknown_start()
+        reason = unknown_start(run)
         run.state.z, run.state.r = end
         raise NotUnderstood(reason, "position-unknown")
     return start
@@ -91,13 +92,13 @@ def known_start(run: Run, end: tuple[float | None, float | None]) -> Point:
 @motion("rapid")
 def rapid(run: Run, words: BlockWords) -> None:
     """G0: both axes at their own rates to the end point."""
-    run.close_chain()
+    close_chain(run)
     refuse_letters(words, PLAIN_MOTION)
     z, r = end_point(run, words)
     if run.state.position is None or z is None or r is None:
-        run.rapid_partly_known(z, r)
+        rapid_partly_known(run, z, r)
     else:
-        run.travel(Stroke(Kind.RAPID, Point(z, r)))
+        travel(run, Stroke(Kind.RAPID, Point(z, r)))
 
 
 @motion("feed")
@@ -107,7 +108,7 @@ def straight(run: Run, words: BlockWords) -> None:
         end = end_point(run, words)
         known_start(run, end)
         check_cut(run)
-        run.travel(Stroke(Kind.FEED, Point(*_both(end))))
+        travel(run, Stroke(Kind.FEED, Point(*_both(end))))
         return
     leg = read_leg(run, words)
     if run.chain is None:
@@ -120,7 +121,7 @@ def straight(run: Run, words: BlockWords) -> None:
         if leg.angle is None:
             run.state.z, run.state.r = end_point(run, words)
     else:
-        run.close_chain()
+        close_chain(run)
 
 
 def _both(end: tuple[float | None, float | None]) -> tuple[float, float]:
@@ -173,7 +174,7 @@ def _corner_words(run: Run, words: BlockWords) -> tuple[float | None, float | No
 @motion("arc clockwise", "arc counter-clockwise")
 def arc(run: Run, words: BlockWords) -> None:
     """G2 and G3 in the ZX plane, by R or by I and K."""
-    run.close_chain()
+    close_chain(run)
     if run.state.plane != "plane ZX":
         raise NotUnderstood("an arc outside the ZX plane is no turning", "axis-not-modelled")
     refuse_letters(words, frozenset((*AXIS_LETTERS, "R", "I", "K")))
@@ -198,7 +199,7 @@ def arc(run: Run, words: BlockWords) -> None:
             unit="deg",
         )
     run.log.arc_sweeps.append(made.sweep)
-    run.travel(Stroke(Kind.ARC, target, centre=made.centre, clockwise=clockwise))
+    travel(run, Stroke(Kind.ARC, target, centre=made.centre, clockwise=clockwise))
 
 
 def _arc(run: Run, words: BlockWords, start: Point, end: Point, clockwise: bool) -> Arc:
@@ -222,16 +223,16 @@ def _arc(run: Run, words: BlockWords, start: Point, end: Point, clockwise: bool)
 @motion("thread", "variable thread")
 def thread_stroke(run: Run, words: BlockWords) -> None:
     """G32 or G33: one stroke in step with the spindle; F (or E) is the lead."""
-    run.close_chain()
+    close_chain(run)
     refuse_letters(words, frozenset((*AXIS_LETTERS, *("K",) * (run.state.motion == "variable thread"))))
     end = end_point(run, words)
     start = known_start(run, end)
-    lead = millimetres(run, words, "E") or run.state.feed.value
+    lead = millimetres(run, words, "E") or (run.state.feed.value if run.state.feed.certain else None)
     lead = None if lead is None or lead <= 0.0 else lead
     check_cut(run, thread=True)
     change, target = millimetres(run, words, "K"), Point(*_both(end))
-    travel = max(abs(target.z - start.z), abs(target.r - start.r))
-    if lead and change and travel:
-        lead = mean_lead(travel, lead, change)
+    distance = max(abs(target.z - start.z), abs(target.r - start.r))
+    if lead and change and distance:
+        lead = mean_lead(distance, lead, change)
     feed = Feed("rev", lead) if lead else None
-    run.travel(Stroke(Kind.THREAD, target, feed=feed, lead=lead))
+    travel(run, Stroke(Kind.THREAD, target, feed=feed, lead=lead))

@@ -9,11 +9,13 @@ from auditor.declared.control_settings import switch
 from auditor.interpret.compensated_run import CompensatedRun
 from auditor.interpret.cycles.call import CycleFault, Stroke
 from auditor.interpret.expressions import ExpressionFault
+from auditor.interpret.jumps import check_repeated
 from auditor.interpret.library import Program
 from auditor.interpret.moves import Kind
 from auditor.interpret.reading import UnknownValues, read_block
 from auditor.interpret.run import NotUnderstood, Run, Side
 from auditor.interpret.systems import MULTIPLE_CYCLES, group_of
+from auditor.interpret.travel import settle
 from auditor.interpret.words import BlockWords
 from auditor.parse.blocks import Block
 
@@ -82,7 +84,7 @@ def _bounds(run: Run, words: BlockWords, program: Program) -> tuple[int, int]:
     if last is None:
         raise CycleFault("cycle-profile-bad", f"N{nf} stands before N{ns}: the profile has no end", ("P", "Q"))
     for number in (ns, nf):
-        run.check_repeated(number)
+        check_repeated(run, number)
     return first, last
 
 
@@ -113,7 +115,7 @@ def _carry_out(run: Run, blocks: tuple[Block, ...], compensate: bool) -> list[Bl
         ready.append(words)
         if run.state.compensation != "off":
             run.profile_side = run.state.compensation
-    run.settle_or_fault()
+    settle(run)
     return ready
 
 

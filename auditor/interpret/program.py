@@ -14,10 +14,10 @@ from auditor.interpret.library import Library
 from auditor.interpret.log import Log
 from auditor.interpret.moves import Interpretation, Remark
 from auditor.interpret.run import Run
-from auditor.interpret.speeds import check_limited
 from auditor.interpret.state import State
+from auditor.interpret.travel import check_limited, settle
 from auditor.interpret.words import BlockWords
-from auditor.parse.blocks import Block, ProgramText
+from auditor.parse.blocks import Block, Number, ProgramText
 
 _NOTE_TOPICS = {
     "encoding": "encoding",
@@ -121,7 +121,7 @@ def _work_through(run: Run) -> None:
 
 def _end_of_text(run: Run) -> bool:
     """A program that ends without M30, M2 or M99; True when its caller goes on."""
-    run.settle()
+    settle(run)
     run.remark("end-missing", f"{run.flow.frame.program.title} ends without M30, M2 or M99")
     if len(run.flow.frames) == 1:
         return False
@@ -144,14 +144,18 @@ def _skipped(run: Run, block: Block) -> bool:
 
 def _changes_the_path(block: Block) -> bool:
     """Whether the way through the program or of the tool depends on the block."""
-    letters = {word.letter for word in block.words}
-    jumps = any(word.letter == "M" and getattr(word.value, "value", None) in (2, 30, 98, 99) for word in block.words)
-    return bool(letters & set("XZUWT")) or jumps or block.statement is not None or block.fault is not None
+    if block.statement is not None or block.fault is not None:
+        return True
+    plain = [(word.letter, word.value.value) for word in block.words if isinstance(word.value, Number)]
+    if ("G", 4) in plain:
+        return False
+    jumps = any(letter == "M" and code in (2, 30, 98, 99) for letter, code in plain)
+    return jumps or any(word.letter in "XZUWT" for word in block.words)
 
 
 def _close(run: Run) -> None:
     """What is only known at the end."""
-    run.settle()
+    settle(run)
     check_limited(run)
     _check_arc_sense(run)
     _check_coolant(run)

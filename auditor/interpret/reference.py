@@ -9,6 +9,7 @@ from auditor.interpret.motion import end_point, has_axis_words, millimetres, rap
 from auditor.interpret.moves import Kind
 from auditor.interpret.registry import action
 from auditor.interpret.run import NotUnderstood, Run
+from auditor.interpret.travel import rapid_partly_known, settle, travel
 from auditor.interpret.words import BlockWords
 
 SAME = 1e-9  # mm
@@ -67,14 +68,14 @@ def _through(run: Run, words: BlockWords) -> None:
 
 def _rapid(run: Run, z: float | None, r: float | None) -> None:
     if run.state.position is None or z is None or r is None:
-        run.rapid_partly_known(z, r)
+        rapid_partly_known(run, z, r)
     else:
-        run.travel(Stroke(Kind.RAPID, Point(z, r)))
+        travel(run, Stroke(Kind.RAPID, Point(z, r)))
 
 
 def leave_compensation(run: Run, what: str) -> None:
     """Compensation must be off here; say so when it is not, and end the compensated path."""
-    run.settle()
+    settle(run)
     if run.state.compensation != "off":
         run.remark(
             "compensation-left-on",

@@ -9,6 +9,7 @@ from auditor.declared.control_settings import amount
 from auditor.interpret.cycles.call import INCH
 from auditor.interpret.registry import Phase, m_code, modal, word
 from auditor.interpret.run import Run
+from auditor.interpret.travel import settle
 from auditor.interpret.words import BlockWords
 from auditor.parse.blocks import Number
 
@@ -115,23 +116,6 @@ def speed_limit(run: Run, rpm: float) -> None:
         )
 
 
-def check_limited(run: Run) -> None:
-    """Constant surface speed that nothing limits, once for each G96."""
-    spindle = run.state.spindle
-    if spindle.unclamped_line is None:
-        return
-    run.remark(
-        "clamp-missing",
-        "constant surface speed with no speed limit before it: towards the centre the spindle goes to its maximum",
-        "G",
-        line=spindle.unclamped_line,
-        limit=run.job.machine.speed_limit,
-        unit="rpm",
-        remedy="give a speed limit with S before G96",
-    )
-    spindle.unclamped_line = None
-
-
 @m_code(Phase.START, 3, 4)
 def start_spindle(run: Run, words: BlockWords) -> None:
     """M3 or M4: the spindle turns already when the block's motion begins."""
@@ -141,6 +125,6 @@ def start_spindle(run: Run, words: BlockWords) -> None:
 @m_code(Phase.AFTER, 5)
 def stop_spindle(run: Run, words: BlockWords) -> None:
     """M5 acts behind the motion of its block."""
-    run.settle()
+    settle(run)
     run.state.spindle.direction = 0
     run.state.spindle.stopped_line = words.line

@@ -27,7 +27,7 @@ class SpindleState:
 
     def command(self) -> Spindle:
         """The commanded spindle, as a move carries it."""
-        return Spindle(self.direction, self.mode, self.value, self.clamp)
+        return Spindle(self.direction, self.mode, self.value if self.certain else None, self.clamp)
 
 
 @dataclass(slots=True)

@@ -6,7 +6,9 @@ from collections.abc import Callable
 
 from auditor.declared.control_settings import choice
 from auditor.interpret.expressions import Calculator, ExpressionFault
+from auditor.interpret.jumps import jump
 from auditor.interpret.run import Run
+from auditor.interpret.travel import settle
 from auditor.parse.blocks import Assign, Block, Do, End, Expression, Goto, IfThen, Opaque
 
 ALARM, STOP_WITH_TEXT = 3000, 3006
@@ -87,7 +89,7 @@ def _assign(run: Run, statement: Assign, block: Block) -> None:
 
 
 def _alarm(run: Run, value: float | None, text: str) -> None:
-    run.settle()
+    settle(run)
     run.remark("alarm", f"the program stops with its own alarm {value or 0:g}: {text}".rstrip(": "))
     run.finish("alarm")
 
@@ -107,7 +109,7 @@ def _goto(run: Run, target: Expression) -> None:
         run.remark("target-missing", "a GOTO whose block number is not known: the program goes on behind it")
         run.flow_in_doubt = True
     elif round(number) != 0:
-        run.jump(round(number))
+        jump(run, round(number))
 
 
 def _do(run: Run, statement: Do) -> None:

@@ -9,6 +9,7 @@ from auditor.declared.control_settings import amount, choice, switch
 from auditor.declared.model import Control
 from auditor.interpret.registry import Phase, word
 from auditor.interpret.run import Run
+from auditor.interpret.travel import settle
 from auditor.interpret.words import BlockWords
 from auditor.parse.blocks import Number
 
@@ -69,7 +70,7 @@ def tool_word(run: Run, words: BlockWords) -> None:
     number = words.number("T")
     if number is None:
         return
-    run.settle()
+    settle(run)
     if run.state.compensation != "off":
         run.remark(
             "compensation-left-on",
@@ -83,6 +84,8 @@ def tool_word(run: Run, words: BlockWords) -> None:
     offset = round(edge.value) if edge is not None else call.offset
     if call.doubt and edge is None and 6 not in words.m_codes:
         run.remark("tool-ambiguous", f"T{number.text}: {call.doubt}", "T")
+        run.lean_on("offset_digits", "the tool word")
+        run.lean_on("short_tool_word", "the tool word")
     if call.tool is not None:
         _index(run, words, call.tool)
     tool.offset, tool.line, tool.certain = offset, words.line, True
@@ -96,6 +99,7 @@ def tool_word(run: Run, words: BlockWords) -> None:
 
 
 def _index(run: Run, words: BlockWords, number: int) -> None:
+    changes = number != run.state.tool.number
     run.state.tool.number = number
     run.log.tools_called.setdefault(number, words.line)
     if number not in run.job.tools and run.log.first_time("tool-undeclared", number):
@@ -106,7 +110,7 @@ def _index(run: Run, words: BlockWords, number: int) -> None:
             remedy=f"declare [tools.{number}] in the job file",
         )
     at_rest = any(words.calls(function) for function in ("dwell", "preset", "data input", "local zero"))
-    if words.has("X", "Z", "U", "W") and not at_rest:
+    if words.has("X", "Z", "U", "W") and not at_rest and changes:
         run.remark(
             "tool-in-motion",
             "a tool call in a block with motion: indexing and move may overlap",

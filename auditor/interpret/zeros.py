@@ -6,6 +6,7 @@ from auditor.declared.model import Point
 from auditor.interpret.motion import millimetres, x_factor
 from auditor.interpret.registry import Phase, action, modal
 from auditor.interpret.run import Run
+from auditor.interpret.travel import settle
 from auditor.interpret.words import BlockWords
 
 
@@ -14,7 +15,7 @@ def preset(run: Run, words: BlockWords) -> None:
     """G50 or G92 with axis words: the present point gets a new name, nothing moves."""
     if not words.has("X", "Z", "U", "W"):
         return
-    run.settle()
+    settle(run)
     state, half = run.state, x_factor(run)
     x, u = millimetres(run, words, "X"), millimetres(run, words, "U")
     z, w = millimetres(run, words, "Z"), millimetres(run, words, "W")
@@ -36,7 +37,7 @@ def preset(run: Run, words: BlockWords) -> None:
 @action("work preset")
 def work_preset(run: Run, words: BlockWords) -> None:
     """The coordinates go back to the work zero, which presets may have left."""
-    run.settle()
+    settle(run)
     run.state.forget_position()
     run.remark("preset", "the coordinates return to the work zero: the position is known again when it is restated")
 
@@ -49,7 +50,7 @@ def local_zero(run: Run, words: BlockWords) -> None:
     shifted = Point(shift.z if z is None else z, shift.r if x is None else x * x_factor(run))
     if shifted != Point(0.0, 0.0):
         run.remark("local-shift", f"zero is shifted by X{2 * shifted.r:g} Z{shifted.z:g} mm from here on", "G")
-    run.settle()
+    settle(run)
     run.state.shift = shifted
 
 
@@ -65,7 +66,7 @@ def work_zero(run: Run, words: BlockWords) -> None:
     if name == (state.work_zero or run.first_zero):
         state.work_zero = name
         return
-    run.settle()
+    settle(run)
     state.work_zero = name
     state.foreign_zero = name != run.first_zero
     state.forget_position()
