@@ -27,14 +27,20 @@ def at_feed(job: Job, path: Interpretation, simulation: Simulation, move_index: 
 
 
 def at_depth(job: Job, path: Interpretation, simulation: Simulation, move_index: int, depth_mm: float) -> Loads:
-    """Loads of one move with the engaged edge ending ``depth_mm`` above the surface it leaves."""
+    """Loads of one move set back from the finished surface until it cuts ``depth_mm`` deep.
+
+    The raw surface stays where it is, so the tool runs at another radius.
+    """
     rows = _rows_of(simulation.samples, move_index)
     ends = np.array([(edge.across[0], edge.across[-1]) for edge in simulation.edges]).reshape(-1, 2)
     lowest, highest = ends[rows.edge].T
     # The finished surface lies at that end of the edge which the stretches reach.
     at_low_end = np.abs(rows.low - lowest) <= np.abs(highest - rows.high)
+    set_back = max(float((rows.high - rows.low).max(initial=0.0)) - depth_mm, 0.0)
+    across_r = np.array([edge.direction[0] for edge in simulation.edges])[rows.edge]
     shallower = replace(
         rows,
+        r=rows.r + np.where(at_low_end, set_back, -set_back) * across_r,
         low=np.where(at_low_end, rows.low, np.minimum(rows.high, np.maximum(rows.low, highest - depth_mm))),
         high=np.where(at_low_end, np.maximum(rows.low, np.minimum(rows.high, lowest + depth_mm)), rows.high),
     )
