@@ -246,6 +246,14 @@ def test_friction_angle_follows_rake_as_published_for_titanium():
 # ---- factors and scatter
 
 
+def test_factors_of_cutting_material_and_operation():
+    """Tschaetsch, table of correction factors, from memory."""
+    materials = ("carbide", "coated carbide", "high-speed steel", "ceramic")
+    assert [tool_material_factor(name) for name in materials] == [1.0, 1.0, 1.2, 0.9]
+    kinds = ("turning", "boring", "grooving", "face grooving", "parting", "drilling")
+    assert [operation_factor(kind) for kind in kinds] == [1.0, 1.2, 1.3, 1.3, 1.3, 1.2]
+
+
 def test_names_that_are_not_known_are_refused_with_the_known_ones():
     with pytest.raises(ValueError, match="one of high-speed steel, carbide"):
         tool_material_factor("stone")

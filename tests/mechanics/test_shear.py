@@ -91,6 +91,23 @@ def test_oblique_is_symmetrical_in_the_inclination(g, beta, phi, i):
     assert float(left.radial) == pytest.approx(-float(right.radial))
 
 
+@given(rake, friction, st.floats(15.0, 40.0), st.floats(-25.0, 25.0))
+def test_oblique_force_is_normal_force_and_friction_along_the_chip(g, beta_n, phi, i):
+    """Force on an inclined rake face put together as a vector: speed x, thrust y; chip flows at the inclination."""
+    rake_n, lean, normal_friction = np.radians([g, i, beta_n])
+    along_edge = np.array([np.sin(lean), 0.0, np.cos(lean)])
+    into_tool = np.array([np.cos(lean), 0.0, -np.sin(lean)])  # in the normal plane, across the edge
+    up = np.array([0.0, 1.0, 0.0])
+    face_up = np.cos(rake_n) * up + np.sin(rake_n) * into_tool
+    face_normal = np.cos(rake_n) * into_tool - np.sin(rake_n) * up
+    flow = np.cos(lean) * face_up + np.sin(lean) * along_edge
+    friction_coefficient = np.tan(normal_friction) / np.cos(lean)  # tan(beta_n) = tan(beta_a) cos(flow angle)
+    force = face_normal + friction_coefficient * flow
+    k = oblique_coefficients(400.0, phi, beta_n, g, i)
+    assert float(k.thrust / k.cutting) == pytest.approx(force[1] / force[0], abs=1e-9)
+    assert float(k.radial / k.cutting) == pytest.approx(-force[2] / force[0], abs=1e-9)
+
+
 def test_titanium_edge_share_and_rake_slope():
     """At h 0.1 the edge takes about an eighth of the force per mm; Ktc falls by 1.2 % a degree (published database)."""
     ktc = [
