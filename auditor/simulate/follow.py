@@ -18,6 +18,7 @@ from auditor.simulate.pieces import Piece, path_length, pieces, straight
 from auditor.simulate.rapids import dogleg_contact, near_contact
 from auditor.simulate.runs import runs
 from auditor.simulate.samples import Contact, Edge, Floats, Ints, LoosePiece, Samples, Simulation
+from auditor.simulate.shares import swept_volume
 from auditor.simulate.stock import boundary_segments, raw_stock, split_loose, swept, volume, without
 from auditor.simulate.surface import final_surface
 from auditor.simulate.threads import thread_pass
@@ -102,7 +103,7 @@ class Follower:
             self._cut_run(run, outline)
         else:
             self._cut(move, outline)
-        self._drop_loose(move)
+        self._drop_loose(run[-1])
 
     def _outline(self, tool: Tool) -> Outline:
         if tool.number not in self.outlines:
@@ -138,21 +139,22 @@ class Follower:
         for number, move in enumerate(run):
             begin, end = float(bounds[number]), float(bounds[number + 1])
             rows = (stretches.position > begin - JOINT) & (stretches.position < end + JOINT)
-            part = self._add(move, edge, replace(whole, offset=-begin), stretches.only(rows))
-            shares[number] = _cut_area(part) * abs(move.start_r or 0.0)
+            own = stretches.only(rows)
+            self._add(move, edge, replace(whole, offset=-begin), own)
+            shares[number] = swept_volume(own, edge, whole)
             self.stock_before[move.index] = self.stock
         before = self.volume
         self._remove(run[0], swept(outline.nodes(whole.direction)[0], whole.step, whole.start))
         taken = before - self.volume
         self.removed[[move.index for move in run]] = taken * shares / (shares.sum() or 1.0)
 
-    def _add(self, move: Move, edge: Edge, piece: Piece, stretches: Stretches) -> Stretch:
-        part = Stretch(
-            move.index, self._edge_number(edge), piece,
-            stretches.position, stretches.low, stretches.high, stretches.stretch,
+    def _add(self, move: Move, edge: Edge, piece: Piece, stretches: Stretches) -> None:
+        self.parts.append(
+            Stretch(
+                move.index, self._edge_number(edge), piece,
+                stretches.position, stretches.low, stretches.high, stretches.stretch,
+            )
         )  # fmt: skip
-        self.parts.append(part)
-        return part
 
     def _edge_number(self, edge: Edge) -> int:
         key = (edge.tool, edge.direction)
@@ -211,15 +213,6 @@ class Follower:
         self.stock = held
         self.sides = boundary_segments(held)
         self.volume = volume(held)
-
-
-def _cut_area(part: Stretch) -> float:
-    """Area a stretch of the program cuts in the half-section, mm2."""
-    first = np.flatnonzero(part.stretch == 0)
-    if len(first) == 0:
-        return 0.0
-    depth = np.add.reduceat(part.high - part.low, first)
-    return float(np.sum(np.diff(part.position[first]) * 0.5 * (depth[1:] + depth[:-1])))
 
 
 def simulate(path: Interpretation, job: Job) -> Simulation:

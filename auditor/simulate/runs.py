@@ -9,6 +9,7 @@ from auditor.declared.model import Point
 from auditor.interpret.moves import Kind, Move
 
 STRAIGHT_WITHIN = 0.001  # mm a merged point may lie off the common line
+DENSE = 1.0  # mm: longer moves gain nothing by merging and are cut each for itself
 
 
 class _Cone:
@@ -52,7 +53,9 @@ def runs(moves: Sequence[Move]) -> Iterator[tuple[Move, ...]]:
 
 def _mergeable(move: Move) -> bool:
     start, end = move.start, move.end
-    return move.kind is Kind.FEED and move.centre is None and None not in (start, end) and start != end
+    if move.kind is not Kind.FEED or move.centre is not None or start is None or end is None:
+        return False
+    return 0.0 < math.dist(start, end) <= DENSE
 
 
 def _continues(before: Move, move: Move) -> bool:

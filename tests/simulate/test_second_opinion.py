@@ -102,6 +102,6 @@ def test_volume_against_a_grid_of_points() -> None:
     """No clipping of polygons at all: half-planes and counting, to a grid's coarseness."""
     path, chains = contour_path(11, COPIER.number, (5.0, 31.0), 1)
     counted = removed_on_a_grid(
-        (-40.0, 20.0, 0.0, 30.0), INSERTS[COPIER.number], [step for chain in chains for step in chain], 0.1
+        (-40.0, 20.0, 0.0, 30.0), INSERTS[COPIER.number], [step for chain in chains for step in chain], 0.2
     )
-    assert cut(path, bar()).removed.sum() == pytest.approx(counted, rel=3e-3)
+    assert cut(path, bar()).removed.sum() == pytest.approx(counted, rel=5e-3)
