@@ -132,11 +132,13 @@ def removed_at_once(raw: Polygon, insert: Insert, steps: Iterable[Step]) -> floa
 def removed_on_a_grid(
     corners: tuple[float, float, float, float], insert: Insert, steps: Iterable[Step], pitch: float
 ) -> float:
-    """Volume taken from a bar (z low, r low, z high, r high), counted on a grid of points."""
+    """Volume taken from a bar (z low, r low, z high, r high), counted on points, one a cell of a grid."""
     z_low, r_low, z_high, r_high = corners
     z = np.arange(z_low + pitch / 2.0, z_high, pitch)
     r = np.arange(r_low + pitch / 2.0, r_high, pitch)
     points = np.stack([axis.ravel() for axis in np.meshgrid(z, r)], axis=1)
+    # a point anywhere in its cell: rows of points in line with a turned surface would all err to one side
+    points += np.random.default_rng(1).uniform(-0.5 * pitch, 0.5 * pitch, points.shape)
     gone = np.zeros(len(points), dtype=bool)
     for step in steps:
         ends = np.concatenate([insert.outline + np.array(point) for point in step])
