@@ -15,9 +15,10 @@ from auditor.declared.model import Assumption
 from auditor.errors import Fault
 from auditor.findings import Audit, Level, NotJudged
 from auditor.reports import Unreadable, View, report
+from auditor.reports._shares import spindle_power
+from auditor.reports._uses import uses
 from auditor.reports.screen.gauge import CELLS, draw
 from auditor.reports.screen.paper import Paper
-from auditor.reports.screen.tools import spindle_power, uses
 from tests.reports import builders
 
 VERDICTS = ("stop", "incomplete", "review", "clear")

@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Sequence
 
 from rich.cells import cell_len
 
 from auditor.findings import Audit, Finding, Level
 from auditor.reports._figures import figure
+from auditor.reports._groups import groups
 from auditor.reports._marks import Span, block_at, spans
 from auditor.reports.screen.gauge import draw
 from auditor.reports.screen.paper import COLOURS, Paper
@@ -18,7 +19,7 @@ _LINES_NAMED = 6
 
 def write(paper: Paper, audit: Audit) -> None:
     """All findings that nobody accepted."""
-    for group in _groups(audit.findings):
+    for group in groups(finding for finding in audit.findings if finding.accepted is None):
         paper.gap()
         first = group[0]
         _quote(paper, audit, first)
@@ -31,23 +32,6 @@ def write(paper: Paper, audit: Audit) -> None:
         paper.paragraph(first.message, margin=_MARGIN)
         if first.remedy:
             paper.paragraph(("Way out: ", "bold"), first.remedy, margin=_MARGIN)
-
-
-def _groups(findings: Sequence[Finding]) -> Iterator[list[Finding]]:
-    """Open findings by line; notes that say the same in several places come once."""
-    told: dict[tuple[str, str], list[Finding]] = {}
-    groups: list[list[Finding]] = []
-    for finding in sorted(findings, key=lambda each: each.line):
-        if finding.accepted is not None:
-            continue
-        same = told.get((finding.check, finding.message)) if finding.level is Level.NOTE else None
-        if same is not None:
-            same.append(finding)
-            continue
-        groups.append([finding])
-        if finding.level is Level.NOTE:
-            told[finding.check, finding.message] = groups[-1]
-    yield from groups
 
 
 def _also(others: Sequence[Finding]) -> str:
