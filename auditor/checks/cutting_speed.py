@@ -22,7 +22,9 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 
-from auditor.checks._cuts import Cut, cuts
+import numpy as np
+
+from auditor.checks._cuts import Cut, cuts, wipes_outwards
 from auditor.checks._judging import lasting
 from auditor.checks._words import finding_at, x_word
 from auditor.declared.model import ToolKind
@@ -30,6 +32,7 @@ from auditor.findings import Finding, Level, NotJudged, Run
 
 CHECK = "cutting-speed"
 LIMITS = ()
+CENTRE = 2.5  # mm of radius: a cut that ends there slows down by nature
 KINDS: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "face grooving", "parting", "drilling")
 
 
@@ -37,6 +40,8 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Cuts outside the declared speed range of their tool."""
     undeclared: list[str] = []
     for cut in cuts(run, KINDS):
+        if cut.tool.kind == "turning" and wipes_outwards(cut):
+            continue
         if cut.tool.speed is None:
             undeclared.append(f"T{cut.tool.number}")
             continue
@@ -49,11 +54,12 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
 
 def _judge_cut(run: Run, cut: Cut, low: float, high: float) -> Finding | None:
     loads = run.prediction.loads
-    reached = lasting(loads, loads.speed_high, cut.move.index)
-    row = cut.row_of_largest(loads.speed_high)
+    speeds = np.where(loads.depth > 0.0, loads.speed_high, np.nan)
+    reached = lasting(loads, speeds, cut.move.index)
+    row = cut.row_of_largest(speeds)
     if reached > high * (1.0 + 1e-6):
         limit, fate = high, "the edge burns off early"
-    elif 0.0 < reached < low * (1.0 - 1e-6):
+    elif 0.0 < reached < low * (1.0 - 1e-6) and not _to_centre(cut):
         limit, fate = low, "the chip welds to the edge"
     else:
         return None
@@ -67,6 +73,11 @@ def _judge_cut(run: Run, cut: Cut, low: float, high: float) -> Finding | None:
     remedy = "A larger speed limit, if safe." if held else f"S{rounded:d}, if the spindle can give it."
     return finding_at(run, CHECK, Level.REVIEW, row, message, value=reached, limit=limit, unit="m/min", words=("S",),
                       remedy=remedy)
+
+
+def _to_centre(cut: Cut) -> bool:
+    """Facing, parting: no spindle keeps the speed up to the axis."""
+    return cut.tool.kind != "drilling" and cut.move.end is not None and abs(cut.move.end.r) < CENTRE
 
 
 def _held(run: Run, cut: Cut, rpm: float) -> bool:

@@ -9,9 +9,10 @@ Why
     50 mm or 0.05 mm. A program proven on one machine crashes on the next.
 
 Formula and source
-    The text against control.whole_numbers. Review where that setting is not declared, or where the reading in
-    least increments is declared (a forgotten point makes a hair of a move). Note where millimetres are declared,
-    and for decimals and blanks. Common practice. The first block is named, with the number of others like it.
+    The text against control.whole_numbers. Stop where the reading in least increments is declared and a word comes
+    out under 0.1 mm. Review where that setting is not declared, or where increments are declared. Note where
+    millimetres are declared, and for decimals and blanks. Common practice. The first block is named, with the number
+    of others like it.
 
 Remedy
     Write the point in every length word; it is read alike everywhere.
@@ -23,9 +24,11 @@ from collections.abc import Iterator
 
 from auditor.checks._remarks import finding_of, remarks_of
 from auditor.findings import Finding, Level, NotJudged, Run
+from auditor.interpret.moves import Remark
 
 CHECK = "plain-number"
 LIMITS = ()
+HAIR = 0.1  # mm
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
@@ -35,7 +38,17 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         alike = [remark for remark in remarks if remark.topic == topic]
         lines = {remark.line for remark in alike}
         more = f" {len(lines) - 1} more blocks are written like this." if len(lines) > 1 else ""
-        yield finding_of(CHECK, _level(run, topic), alike[0], alike[0].message + more)
+        hair = next((remark for remark in alike if _hair(run, remark)), None)
+        if hair is not None:
+            yield finding_of(CHECK, Level.STOP, hair, f"{hair.message}; a hair instead of a length.{more}")
+        else:
+            yield finding_of(CHECK, _level(run, topic), alike[0], f"{alike[0].message}.{more}")
+
+
+def _hair(run: Run, remark: Remark) -> bool:
+    """Whether the declared reading makes a hair of what was surely meant as millimetres."""
+    plain = remark.topic == "plain-number" and run.job.control.whole_numbers == "increments"
+    return plain and remark.value is not None and abs(remark.value) < HAIR
 
 
 def _level(run: Run, topic: str) -> Level:

@@ -13,7 +13,8 @@ Formula and source
     Geometry of the half-section, exact. Stop: contact in the straight path; contact in the bent path (review
     when the machine's rapid rates are not declared, since they shape it); contact with chuck or tailstock.
     A tool that only lifts off along the shoulder it has cut wipes away the wedge its edge left: a note up to
-    0.2 mm, a review up to 0.6. Review: a rapid that ends nearer than rapid_clearance to a raw surface; a loose piece. Common practice.
+    0.2 mm, a review up to 0.6. Review: a rapid that ends nearer than rapid_clearance to a raw surface; a loose
+    piece. Common practice.
 
 Remedy
     Move one axis after the other, or start the rapid further out; feed the last millimetre to a raw surface.
@@ -72,8 +73,11 @@ def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
                 f"raw sizes vary. {origin(run, LIMITS)}"
         case _:
             level, message = Level.STOP, f"The tool hits the {_body(contact)} at rapid {place}."
-    remedy = "Feed the last millimetre." if contact.kind == "near" else \
-        "Move one axis after the other, or start the rapid further out."
+    remedy = "Move one axis after the other, or start the rapid further out."
+    if contact.kind == "near":
+        remedy = "Feed the last millimetre."
+    elif level is not Level.STOP and contact.kind == "rapid":
+        remedy = "Feed the lift-off, or lift off along Z first."
     yield run.finding(CHECK, level, move, message, at=at, value=contact.depth, unit="mm", remedy=remedy)
 
 

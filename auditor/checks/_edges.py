@@ -1,0 +1,55 @@
+"""Which part of a tool's edge is in the cut, and at what angle to the motion."""
+
+from __future__ import annotations
+
+import math
+
+import numpy as np
+from numpy.typing import NDArray
+
+from auditor.checks._cuts import Cut
+from auditor.findings import Run
+from auditor.interpret.moves import Kind
+from auditor.simulate.samples import Edge, Part
+
+Floats = NDArray[np.float64]
+
+
+def engaged_length(run: Run, cut: Cut, part: Part, *, leaner_than: float = 90.0) -> float:
+    """Longest engaged length, mm, on one part of the edge that leans less than so many degrees to the motion."""
+    samples = run.simulation.samples
+    first, behind = (int(row) for row in np.searchsorted(samples.move, (cut.move.index, cut.move.index + 1)))
+    longest = 0.0
+    for number in np.unique(samples.edge[first:behind]):
+        rows = first + np.flatnonzero(samples.edge[first:behind] == number)
+        lengths = _lengths(run.simulation.edges[int(number)], samples.low[rows], samples.high[rows], part, leaner_than)
+        longest = max(longest, float(lengths.max(initial=0.0)))
+    return longest
+
+
+def _lengths(edge: Edge, low: Floats, high: Floats, part: Part, leaner_than: float) -> Floats:
+    """Engaged length on the part for every row."""
+    begin, end = edge.across[:-1], edge.across[1:]
+    width = end - begin
+    own = (edge.part == part) & (edge.sine < math.sin(math.radians(min(leaner_than, 90.0))) + 1e-12) & (width > 0.0)
+    if not own.any():
+        return np.zeros(len(low))
+    length = np.hypot(width, np.diff(edge.along))[own]
+    overlap = np.minimum(high[:, None], end[own]) - np.maximum(low[:, None], begin[own])
+    share: Floats = np.clip(overlap, 0.0, None) / width[own]
+    return np.asarray(share @ length)
+
+
+def path_angle(cut: Cut) -> float | None:
+    """Direction of a straight move against the tool's nominal feed, deg: + away from the axis (in a bore: towards it).
+
+    None for arcs, for tools whose nominal feed is along X, and for motion against the nominal feed.
+    """
+    start, end, tool = cut.move.start, cut.move.end, cut.tool
+    if cut.move.kind is Kind.ARC or start is None or end is None or tool.edge_faces_end:
+        return None
+    forward = (start.z - end.z) if tool.tip in (2, 3, 7) else (end.z - start.z)
+    outward = (end.r - start.r) if tool.kind == "turning" else (start.r - end.r)
+    if forward < -1e-9 or (abs(forward) < 1e-9 and abs(outward) < 1e-9):
+        return None
+    return math.degrees(math.atan2(outward, max(forward, 0.0)))

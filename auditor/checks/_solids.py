@@ -1,0 +1,47 @@
+"""Where a tool's outline goes, and the bodies it must not meet: jaws and tailstock."""
+
+from __future__ import annotations
+
+import shapely
+from shapely.geometry.base import BaseGeometry
+
+from auditor.declared.model import Tool, Workholding
+from auditor.findings import Run
+from auditor.interpret.moves import Move
+from auditor.simulate.stock import swept
+from auditor.simulate.tool_outline import tool_outline
+
+JAW_HEIGHT = 30.0  # mm the jaws stand out beyond the work they grip, where only the grip is known (common size)
+CENTRE_ANGLE = 60.0  # deg, included, of a lathe centre (common size)
+TAIL_BEHIND = 200.0  # mm of tailstock that is watched behind its centre
+
+
+def swept_area(tool: Tool, move: Move) -> BaseGeometry | None:
+    """What the insert's outline covers along a move, arcs taken as their chord; None where the way is not known."""
+    start, end = move.start, move.end
+    if start is None or end is None:
+        return None
+    return swept(tool_outline(tool).hull(), (end.z - start.z, end.r - start.r), start)
+
+
+def jaw_zone(run: Run) -> BaseGeometry | None:
+    """Half-section of the jaws: behind the jaw face, from the gripped radius outwards (inwards for an inside grip)."""
+    holding = run.job.workholding
+    if holding.kind == "centres":
+        return None
+    face = -holding.stick_out
+    gripped = 0.5 * (holding.grip_diameter or run.job.workpiece.diameter)
+    if holding.grip_inside:
+        return shapely.box(face - 100.0, max(gripped - JAW_HEIGHT, 0.0), face, gripped)
+    return shapely.box(face - 100.0, 0.0, face, gripped + JAW_HEIGHT)
+
+
+def tailstock_zone(holding: Workholding) -> BaseGeometry | None:
+    """Half-section of the centre: a 60 degree point up to its diameter, and its body behind."""
+    point, diameter = holding.tailstock_point, holding.tailstock_diameter
+    if point is None:
+        return None
+    radius = 0.5 * (diameter or 20.0)
+    cone = radius / 0.57735  # tan of half the centre's angle
+    end = point.z + cone + TAIL_BEHIND
+    return shapely.polygons([(point.z, 0.0), (end, 0.0), (end, radius), (point.z + cone, radius)])
