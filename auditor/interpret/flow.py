@@ -11,7 +11,7 @@ from auditor.interpret.library import Library, Program
 from auditor.parse.blocks import Block
 
 DEEPEST_CALL = 12  # programs one inside the other
-MOST_JUMPS = 20_000  # jumps back and calls in one run, beyond it a loop has no end
+MOST_JUMPS = 10_000  # jumps back and calls in one run, beyond it a loop has no end
 MOST_STEPS = 200_000  # blocks carried out, beside twice those of the file
 
 

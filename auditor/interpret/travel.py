@@ -63,7 +63,9 @@ def rapid_partly_known(run: Run, end_z: float | None, end_r: float | None) -> No
     """A rapid whose start or end is not wholly known: written axis by axis."""
     settle(run)
     begin_stroke(run)
-    stroke = dressed(run, Stroke(Kind.RAPID, Point(end_z or 0.0, end_r or 0.0)), end_r)
+    stroke = dressed(run, Stroke(Kind.RAPID, Point(end_z or 0.0, end_r or 0.0)))
+    if end_r is None:
+        stroke = replace(stroke, spindle=run.state.spindle.command())
     write(run, run.state.z, run.state.r, stroke, (end_z, end_r))
     run.state.z, run.state.r = end_z, end_r
 
@@ -74,12 +76,12 @@ def unknown_start(run: Run) -> str:
     return f"the position in {missing} is not known here; a rapid with X and Z would restate it"
 
 
-def dressed(run: Run, stroke: Stroke, end_r: float | None = None) -> Stroke:
+def dressed(run: Run, stroke: Stroke) -> Stroke:
     """The stroke with line, block, feed and spindle of the block that made it."""
     feed, spindle = stroke.feed, stroke.spindle or run.state.spindle.command()
     if stroke.kind is Kind.RAPID:
         if spindle.mode == "surface" and choice(run.control, "surface_speed_in_rapid") == "end point":
-            spindle = replace(spindle, fixed_diameter=2.0 * abs(stroke.end.r if end_r is None else end_r))
+            spindle = replace(spindle, fixed_diameter=2.0 * abs(stroke.end.r))
     elif feed is None and run.state.feed.certain:
         feed = run.state.feed.command()
     line, block = stroke.line or run.words.line, stroke.block or run.words.label
@@ -154,6 +156,7 @@ def settle(run: Run) -> None:
     """
     close_chain(run)
     if run.compensated.open:
+        run.compensated.cancelling = False  # the move that would have cancelled did not come
         _release_compensated(run)
 
 

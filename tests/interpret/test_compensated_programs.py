@@ -11,7 +11,7 @@ from pathlib import Path
 
 import pytest
 
-from auditor.declared.model import Tool
+from auditor.declared.model import Point, Tool
 from auditor.interpret.moves import Kind
 from tests.interpret.programs import carried_out, declared, not_audited, rows, topics
 
@@ -65,6 +65,14 @@ def test_path_left_on_ends_square_and_the_next_move_starts_there() -> None:
     assert found.moves[2].end == pytest.approx((-9.8, 10.0))  # tip 3, nose 0.8: square to a cylinder
     assert found.moves[3].start == pytest.approx((-9.8, 10.0))
     assert rows(found)[-1] == ("R", 30, -9)
+
+
+def test_cancelled_on_the_way_to_the_reference_point() -> None:
+    found = carried_out(CUT + "G0 X20. Z2.\nG42 G1 Z0\nZ-9.\nG40 G28 U0 W0", declared(fixed=Point(150.0, 100.0)))
+    assert found.moves[2].end == pytest.approx((-9.8, 10.0))
+    assert found.moves[3].start == pytest.approx((-9.8, 10.0))
+    assert rows(found)[-1] == ("R", 200, 150)
+    assert "compensation-left-on" not in topics(found)
 
 
 def test_wrong_side_of_an_outside_tool_and_right_side_of_a_boring_bar() -> None:

@@ -25,6 +25,11 @@ def test_axis_not_yet_stated_is_unknown_axis_by_axis() -> None:
     assert (move.start_r, move.end_r, move.start_z, move.end_z) == (None, 25.0, None, None)
 
 
+def test_an_unknown_end_has_no_spindle_speed_of_its_own() -> None:
+    found = carried_out("G50 S2000\nG96 S200 M3\nG0 X50. Z2.\nG28 U0")
+    assert [move.spindle.fixed_diameter for move in found.moves] == [50.0, None]
+
+
 def test_return_to_an_undeclared_reference_point_is_a_move_to_nowhere() -> None:
     found = carried_out("G0 X50. Z2.\nG28 U0\nG0 Z5.\nG0 X40. Z1.\nG28 U0 W0")
     assert rows(found) == [("R", 50, 2), ("R", None, 2), ("R", None, 5), ("R", 40, 1), ("R", None, None)]
