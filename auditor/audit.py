@@ -10,10 +10,11 @@ from dataclasses import replace
 from pathlib import Path
 
 import numpy as np
+from shapely.geometry.base import BaseGeometry
 
 from auditor.checks import rules
 from auditor.declared.jobs import job_beside, load_job
-from auditor.declared.model import Acceptance, Assumption, Job, LimitValue
+from auditor.declared.model import Acceptance, Assumption, EarlierPart, Job, LimitValue, Point
 from auditor.errors import DeclarationError, Fault, ProgramError
 from auditor.findings import (
     Audit,
@@ -28,7 +29,7 @@ from auditor.findings import (
     Verdict,
 )
 from auditor.interpret import interpret
-from auditor.interpret.moves import Interpretation, Kind
+from auditor.interpret.moves import Interpretation, Kind, Remark
 from auditor.parse import read_program
 from auditor.parse.blocks import ProgramText
 from auditor.predict import predict
@@ -50,17 +51,24 @@ def audit_program(path: str | Path, job_path: str | Path | None = None) -> Audit
 
 def audit(job: Job, today: datetime.date | None = None) -> Audit:
     """Audit the program that a job names."""
+    return _audit(job, today or datetime.date.today(), ())
+
+
+def _audit(job: Job, today: datetime.date, later: tuple[Path, ...]) -> Audit:
+    """Audit a job; ``later`` are the jobs that wait for its part."""
+    job, doubts = _with_earlier_part(job, today, later)
     all_rules = rules()
     limits = limits_in_force(job, all_rules)
     text = read_program(job.program, job.control)
     path = interpret(text, job)
+    path = replace(path, remarks=(*path.remarks, *doubts))
     if not path.moves:
         raise ProgramError(_no_motion(text, path))
     simulation = simulate(path, job)
     prediction = predict(path, simulation, job)
     run = Run(job=job, text=text, path=path, simulation=simulation, prediction=prediction, limits=limits)
     findings, not_judged = _judge(run, all_rules.values())
-    findings = _accepted(_fingerprinted(findings, text), job.accepted, today or datetime.date.today())
+    findings = _accepted(_fingerprinted(findings, text), job.accepted, today)
     coverage = _coverage(path)
     return Audit(
         run=run,
@@ -72,6 +80,51 @@ def audit(job: Job, today: datetime.date | None = None) -> Audit:
         totals=_totals(run),
         rules=all_rules,
     )
+
+
+def _with_earlier_part(job: Job, today: datetime.date, later: tuple[Path, ...]) -> tuple[Job, tuple[Remark, ...]]:
+    """The job with the stock that an earlier job leaves, where it names one, and what is doubtful about it."""
+    earlier = job.workpiece.earlier
+    if earlier is None:
+        return job, ()
+    waiting = (*later, Path(job.path or "").resolve())
+    key = "workpiece.stock.from"
+
+    def fault(message: str, wanted: str) -> DeclarationError:
+        return DeclarationError(Fault(message, file=job.path, key=key, found=earlier.job, wanted=wanted))
+
+    if not Path(earlier.job).is_file():
+        raise fault("no such job file", "the job file of the operation before")
+    if Path(earlier.job).resolve() in waiting:
+        raise fault("the jobs take their stock from each other", "a first job with raw stock of its own")
+    before = _audit(load_job(earlier.job), today, waiting)
+    if before.run.simulation.final.is_empty:
+        raise fault("the earlier job leaves no part", "a part to hold")
+    outline = _part_outline(before.run.simulation.final, earlier)
+    low, high = min(point.z for point in outline), max(point.z for point in outline)
+    workpiece = replace(
+        job.workpiece, outline=outline, length=high - low, diameter=2.0 * max(point.r for point in outline)
+    )
+    part = f"the simulated part of {earlier.job}"
+    told = Assumption("workpiece.stock", part, f"that job's own verdict is {before.verdict}")
+    doubt = Remark(
+        topic="earlier-part",
+        line=1,
+        block=None,
+        message=f"the stock is {part}, whose own verdict is {before.verdict}: what really comes out may differ",
+        remedy="Settle that job first.",
+    )
+    doubts = (doubt,) if before.verdict in ("stop", "incomplete") else ()
+    return replace(job, workpiece=workpiece, assumptions=(*job.assumptions, told)), doubts
+
+
+def _part_outline(part: BaseGeometry, earlier: EarlierPart) -> tuple[Point, ...]:
+    """The part's half-section in the later job's coordinates: the face in front lies at ``face``."""
+    ring = [Point(z, r) for z, r in part.exterior.coords[:-1]]
+    if not earlier.flipped:
+        return tuple(ring)
+    back = min(point.z for point in ring)
+    return tuple(Point(earlier.face + back - point.z, point.r) for point in reversed(ring))
 
 
 def _judge(run: Run, all_rules: Iterable[Rule]) -> tuple[list[Finding], list[NotJudged]]:

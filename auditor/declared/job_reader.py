@@ -138,11 +138,12 @@ class JobReader:
             found = shown(raw) if "workpiece" in self.toml.content else None
             self.faults.append(place.fault("a required table is missing", found=found, wanted="[workpiece]"))
             return None
-        self._one_of(Written(raw, place), "diameter", "profile")
+        self._one_of(Written(raw, place), "diameter", "profile", "stock")
+        self._one_of(Written(raw, place), "length", "stock")
         material = self._material(raw.get("material"), self._place("workpiece.material"))
         rest = {key: value for key, value in raw.items() if key != "material"}
         row = read_table(tables.WorkpieceTable, rest, place, self.faults)
-        if row is None or material is None or (row.diameter is None and row.profile is None):
+        if row is None or material is None or not (row.stock or (row.length and (row.diameter or row.profile))):
             return None
         return workpiece_of(row, material, place, self._noted("workpiece"), self.faults)
 

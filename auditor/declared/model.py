@@ -130,11 +130,20 @@ class Material:
 
 
 @dataclass(frozen=True, slots=True)
+class EarlierPart:
+    """Stock that an earlier job leaves: its job file, and whether the part is turned round for this one."""
+
+    job: str
+    flipped: bool
+    face: float  # mm of stock in front of Z0
+
+
+@dataclass(frozen=True, slots=True)
 class Workpiece:
     """The raw stock and what is asked of the finished part."""
 
     material: Material
-    outline: tuple[Point, ...]  # raw half-section, closed implicitly, r >= 0
+    outline: tuple[Point, ...]  # raw half-section, closed implicitly, r >= 0; empty until an earlier job gave it
     length: float
     diameter: float  # largest raw diameter, mm
     skin: str = "bright"
@@ -145,6 +154,7 @@ class Workpiece:
     roughness: tuple[Literal["Ra", "Rz"], float] | None = None  # um
     finished: tuple[Point, ...] = ()
     finished_bore: tuple[Point, ...] = ()
+    earlier: EarlierPart | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -51,7 +51,7 @@ def job_schema() -> JsonSchemaValue:
     workpiece = schema["$defs"]["WorkpieceTable"]
     named = {"type": "string", "description": "the name of a material in shop.toml or in the catalogue"}
     workpiece["properties"]["material"] = {"anyOf": [named, {"$ref": "#/$defs/MaterialTable"}]}
-    workpiece["required"] = sorted({*workpiece["required"], "material"})
+    workpiece["required"] = sorted({*workpiece.get("required", ()), "material"})
     return {"$schema": _DIALECT, **schema, "title": "turnaudit job file"}
 
 

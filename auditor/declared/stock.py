@@ -2,11 +2,12 @@
 
 from __future__ import annotations
 
+from pathlib import Path
 from typing import Literal
 
 from auditor.declared import tables
 from auditor.declared.faults import Place
-from auditor.declared.model import Material, Point, Workpiece
+from auditor.declared.model import EarlierPart, Material, Point, Workpiece
 from auditor.declared.notes import Notes
 from auditor.errors import Fault
 
@@ -62,15 +63,22 @@ def workpiece_of(
     table: tables.WorkpieceTable, material: Material, place: Place, notes: Notes, faults: list[Fault]
 ) -> Workpiece | None:
     """The raw stock as a half-section, and what is asked of the part."""
-    bore = notes.number("bore", table.bore, 0.0, "mm", "solid stock")
-    outer = _outer_line(table, place, notes, faults)
-    if outer is None:
-        return None
+    earlier: EarlierPart | None = None
+    outline: tuple[Point, ...] = ()
+    if table.stock is not None:
+        face = notes.number("face", table.face, 0.0, "mm", "the raw face lies at Z0")
+        earlier = EarlierPart(str(Path(place.file).parent / table.stock.job), table.stock.flipped, face)
+    else:
+        bore = notes.number("bore", table.bore, 0.0, "mm", "solid stock")
+        outer = _outer_line(table, place, notes, faults)
+        if outer is None:
+            return None
+        outline = _half_section(outer, bore / 2.0)
     return Workpiece(
         material=material,
-        outline=_half_section(outer, bore / 2.0),
-        length=table.length,
-        diameter=2.0 * max(corner.r for corner in outer),
+        outline=outline,
+        length=table.length or 0.0,
+        diameter=2.0 * max((corner.r for corner in outline), default=0.0),
         skin=notes.other("skin", table.skin, "bright", "drawn or turned stock"),
         diameter_spread=notes.number("diameter_spread", table.diameter_spread, 0.0, "mm", "stock of its nominal size"),
         section=notes.other("section", table.section, "round", "round stock"),
@@ -79,6 +87,7 @@ def workpiece_of(
         roughness=table.roughness,
         finished=_line(table.finished),
         finished_bore=_line(table.finished_bore),
+        earlier=earlier,
     )
 
 
@@ -92,12 +101,13 @@ def _outer_line(
     """The raw outer line from the front face towards the chuck."""
     if table.diameter is not None:
         face = notes.number("face", table.face, 0.0, "mm", "the raw face lies at Z0")
-        return (Point(face, table.diameter / 2.0), Point(face - table.length, table.diameter / 2.0))
+        return (Point(face, table.diameter / 2.0), Point(face - (table.length or 0.0), table.diameter / 2.0))
     drawn = _line(table.profile)
     if drawn[0].z < drawn[-1].z:
         drawn = drawn[::-1]
     front = table.face if table.face is not None else drawn[0].z
-    back = front - table.length
+    length = table.length or 0.0
+    back = front - length
     if front < drawn[0].z:
         wanted = f"at least {drawn[0].z:g} mm, where the profile begins"
         faults.append(place.fault("the profile begins before the face", "face", found=f"{front:g} mm", wanted=wanted))
@@ -105,7 +115,7 @@ def _outer_line(
     if back > drawn[-1].z + 1e-9:
         wanted = f"at least {front - drawn[-1].z:g} mm, to the end of the profile"
         faults.append(
-            place.fault("the stock is shorter than its profile", "length", found=f"{table.length:g} mm", wanted=wanted)
+            place.fault("the stock is shorter than its profile", "length", found=f"{length:g} mm", wanted=wanted)
         )
         return None
     head = (Point(front, drawn[0].r),) if front > drawn[0].z else ()

@@ -208,15 +208,33 @@ class MaterialTable(Table):
         return self
 
 
+class EarlierPartTable(Table):
+    """workpiece.stock: the part as an earlier job leaves it."""
+
+    model_config = ConfigDict(validate_by_alias=True, validate_by_name=False)
+
+    job: Text = Field(alias="from")
+    flipped: bool = False
+
+
 class WorkpieceTable(Table):
     """[workpiece]: the raw stock and what is asked of the part."""
 
-    model_config = ConfigDict(json_schema_extra={"anyOf": [{"required": ["diameter"]}, {"required": ["profile"]}]})
+    model_config = ConfigDict(
+        json_schema_extra={
+            "anyOf": [
+                {"required": ["diameter", "length"]},
+                {"required": ["profile", "length"]},
+                {"required": ["stock"]},
+            ]
+        }
+    )
 
     material: MaterialTable | None = None  # a name is looked up before this table is read
     diameter: Length | None = None
     profile: list[PlaceAndDiameter] | None = Field(None, min_length=2)
-    length: Length
+    stock: EarlierPartTable | None = None
+    length: Length | None = None
     face: Place | None = None
     bore: LengthOrNone | None = None
     skin: Literal["bright", "hot rolled", "cast", "forged", "sawn"] | None = None
@@ -232,6 +250,10 @@ class WorkpieceTable(Table):
     def _stock_is_told_once(self) -> WorkpieceTable:
         if self.diameter is not None and self.profile is not None:
             raise complaint("diameter and profile are both given", "one of them")
+        if self.stock is not None:
+            told = [key for key in ("diameter", "profile", "length", "bore") if getattr(self, key) is not None]
+            if told:
+                raise complaint(f"stock and {told[0]} are both given", "stock alone: the earlier job says the rest")
         if self.profile is not None:
             _check_outline(self.profile)
         if self.bore and self.bore >= max(size for _, size in self.profile or [(0.0, self.diameter or 0.0)]):

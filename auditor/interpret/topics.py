@@ -8,7 +8,7 @@ from __future__ import annotations
 TOPICS: dict[str, frozenset[str]] = {
     "not-understood": frozenset({
         "syntax", "unknown-g", "unknown-m", "unsupported", "unknown-variable", "position-unknown",
-        "axis-not-modelled", "arithmetic", "text-after-end", "encoding", "comment-unclosed", "alarm",
+        "axis-not-modelled", "arithmetic", "text-after-end", "encoding", "comment-unclosed", "alarm", "earlier-part",
         "code-system-conflict",
     }),
     "speed-unclamped": frozenset({"clamp-missing", "clamp-too-high", "speed-mode-without-speed"}),
