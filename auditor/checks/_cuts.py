@@ -9,7 +9,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from auditor.checks._judging import cutting_moves, rows_of
+from auditor.checks._judging import cutting_moves
 from auditor.declared.model import Tool, ToolKind
 from auditor.findings import Run
 from auditor.interpret.moves import Kind, Move
@@ -32,9 +32,7 @@ class Cut:
 
     def largest(self, figure: Floats) -> float:
         """The largest value along the cut; NaN when it is not known anywhere."""
-        own = figure[self.rows]
-        known = own[np.isfinite(own)]
-        return float(known.max()) if len(known) else math.nan
+        return float(np.fmax.reduce(figure[self.rows]))
 
     def row_of_largest(self, figure: Floats) -> int:
         """The row where it is largest."""
@@ -45,14 +43,15 @@ class Cut:
 def cuts(run: Run, kinds: tuple[ToolKind, ...] = SIDEWAYS) -> Iterator[Cut]:
     """The cuts of tools of these kinds in order of execution; rapids and threads left out."""
     loads = run.prediction.loads
-    for index in np.flatnonzero(cutting_moves(run)):
-        move = run.path.moves[int(index)]
+    cutting = np.flatnonzero(cutting_moves(run))
+    begin, behind = np.searchsorted(loads.move, cutting), np.searchsorted(loads.move, cutting + 1)
+    for index, low, high in zip(cutting.tolist(), begin.tolist(), behind.tolist(), strict=True):
+        move = run.path.moves[index]
         tool = run.job.tools.get(move.tool) if move.tool is not None else None
         if tool is None or tool.kind not in kinds or move.kind in (Kind.RAPID, Kind.THREAD):
             continue
-        rows = rows_of(loads, int(index))
-        if rows.stop > rows.start:
-            yield Cut(move, tool, rows)
+        if high > low:
+            yield Cut(move, tool, slice(low, high))
 
 
 def along_axis(move: Move) -> bool:
@@ -118,12 +117,14 @@ def tolerance_third(run: Run) -> float | None:
     return None if tolerance is None else tolerance / 3.0
 
 
-def diameter_error(run: Run, cut: Cut) -> float:
-    """Diameter the work comes out larger by, mm: 2y + 2 y_t^2/d, with y the push-off and y_t the bend downwards."""
+def diameter_errors(run: Run) -> Floats:
+    """Diameter the work comes out larger by at every row of Loads, mm: 2y + 2 y_t^2/d, NaN where not known.
+
+    y is the push-off by the passive force, y_t the bend downwards by the cutting force.
+    """
     loads = run.prediction.loads
-    aside, down = loads.bend[cut.rows], loads.bend_tangential[cut.rows]
-    known = np.isfinite(aside) & np.isfinite(down)
-    if not known.any():
-        return math.nan
-    across = np.maximum(2.0 * np.abs(loads.r[cut.rows]), SMALLEST_DIAMETER)
-    return float(bent_diameter(aside[known], down[known], across[known]).max())
+    known = np.isfinite(loads.bend) & np.isfinite(loads.bend_tangential)
+    across = np.maximum(2.0 * np.abs(loads.r), SMALLEST_DIAMETER)
+    errors = np.full(len(loads.r), np.nan)
+    errors[known] = bent_diameter(loads.bend[known], loads.bend_tangential[known], across[known])
+    return errors

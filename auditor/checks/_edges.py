@@ -15,15 +15,21 @@ from auditor.simulate.samples import Edge, Part
 Floats = NDArray[np.float64]
 
 
-def engaged_length(run: Run, cut: Cut, part: Part, *, leaner_than: float = 90.0) -> float:
-    """Longest engaged length, mm, on one part of the edge that leans less than so many degrees to the motion."""
+def engaged_lengths(run: Run, part: Part, *, leaner_than: float = 90.0) -> Floats:
+    """Per move, shape (moves,): longest engaged length, mm, on a part of the edge.
+
+    ``leaner_than`` keeps the pieces that lean less than so many degrees to the motion.
+    """
     samples = run.simulation.samples
-    first, behind = (int(row) for row in np.searchsorted(samples.move, (cut.move.index, cut.move.index + 1)))
-    longest = 0.0
-    for number in np.unique(samples.edge[first:behind]):
-        rows = first + np.flatnonzero(samples.edge[first:behind] == number)
-        lengths = _lengths(run.simulation.edges[int(number)], samples.low[rows], samples.high[rows], part, leaner_than)
-        longest = max(longest, float(lengths.max(initial=0.0)))
+    lengths = np.zeros(len(samples.move))
+    order = np.argsort(samples.edge, kind="stable")
+    bounds = np.searchsorted(samples.edge[order], np.arange(len(run.simulation.edges) + 1))
+    for edge, first, behind in zip(run.simulation.edges, bounds[:-1], bounds[1:], strict=True):
+        if behind > first:
+            rows = order[first:behind]
+            lengths[rows] = _lengths(edge, samples.low[rows], samples.high[rows], part, leaner_than)
+    longest = np.zeros(len(run.path.moves))
+    np.maximum.at(longest, samples.move, lengths)
     return longest
 
 

@@ -51,11 +51,11 @@ def rows_of(loads: Loads, move: int) -> slice:
     return slice(int(low), int(high))
 
 
-def lasting(loads: Loads, figure: Floats, move: int) -> float:
-    """The largest value of ``figure`` that holds for one feed of travel touching the move; 0 where there is none."""
+def lasting(loads: Loads, figure: Floats, move: int, over: float = 0.0) -> float:
+    """The largest value of ``figure`` that holds for one feed of travel touching the move; 0 where none is ``over``."""
     own = rows_of(loads, move)
     values = np.nan_to_num(figure[own], nan=-np.inf)
-    if not len(values) or values.max() <= 0.0:
+    if not len(values) or values.max() <= over:
         return 0.0
     near = _neighbourhood(loads, own)
     travel, level = loads.travel[near], np.nan_to_num(figure[near], nan=-np.inf)
@@ -64,9 +64,11 @@ def lasting(loads: Loads, figure: Floats, move: int) -> float:
     travel, level = np.insert(travel, gaps, travel[gaps]), np.insert(level, gaps, -np.inf)
     inside = np.insert(inside, gaps, False)
     need = min(_feed(loads, own), float(travel[-1] - travel[0])) * (1.0 - 1e-9)
-    low, high = 0.0, float(values.max())
+    low, high = over, float(values.max())
     if _holds(travel, level, inside, high, need):
         return high
+    if over > 0.0 and not _holds(travel, level, inside, over, need):
+        return 0.0
     certain = 1e-4 * high
     while high - low > certain:
         middle = 0.5 * (low + high)
@@ -127,7 +129,7 @@ def over_limit(run: Run, figure: Floats, limit: Floats | float, scatter: Floats 
     share = figure / limits
     upper = share * np.sqrt(scatters**2 + (run.prediction.wear_factor - 1.0) ** 2) + share
     for index in np.unique(loads.move[np.nan_to_num(upper) > 1.0]):
-        top = lasting(loads, upper, int(index))
+        top = lasting(loads, upper, int(index), over=1.0)
         if top <= 1.0:
             continue
         own = rows_of(loads, int(index))

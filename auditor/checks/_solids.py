@@ -2,26 +2,35 @@
 
 from __future__ import annotations
 
+import numpy as np
 import shapely
+from numpy.typing import NDArray
 from shapely.geometry.base import BaseGeometry
 
-from auditor.declared.model import Tool, Workholding
+from auditor.declared.model import Workholding
 from auditor.findings import Run
 from auditor.interpret.moves import Move
 from auditor.simulate.stock import swept
 from auditor.simulate.tool_outline import tool_outline
+
+Floats = NDArray[np.float64]
 
 JAW_HEIGHT = 30.0  # mm the jaws stand out beyond the work they grip, where only the grip is known (common size)
 CENTRE_ANGLE = 60.0  # deg, included, of a lathe centre (common size)
 TAIL_BEHIND = 200.0  # mm of tailstock that is watched behind its centre
 
 
-def swept_area(tool: Tool, move: Move) -> BaseGeometry | None:
-    """What the insert's outline covers along a move, arcs taken as their chord; None where the way is not known."""
+def outlines(run: Run) -> dict[int, Floats]:
+    """The outline of every declared tool, as nodes (z, r) about its programmed point; bar stops left out."""
+    return {number: tool_outline(tool).hull() for number, tool in run.job.tools.items() if tool.kind != "stop"}
+
+
+def swept_area(outline: Floats, move: Move) -> BaseGeometry | None:
+    """What an outline covers along a move, arcs taken as their chord; None where the way is not known."""
     start, end = move.start, move.end
     if start is None or end is None:
         return None
-    return swept(tool_outline(tool).hull(), (end.z - start.z, end.r - start.r), start)
+    return swept(outline, (end.z - start.z, end.r - start.r), start)
 
 
 def jaw_zone(run: Run) -> BaseGeometry | None:

@@ -23,9 +23,10 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 import numpy as np
+from numpy.typing import NDArray
 
 from auditor.checks._cuts import Cut, cuts, wipes_outwards
-from auditor.checks._judging import lasting, origin, threshold
+from auditor.checks._judging import origin, threshold
 from auditor.checks._words import angle, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
@@ -39,20 +40,21 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if band is None:
         return
     noted: set[int] = set()
+    loads = run.prediction.loads
+    speeds = np.where(loads.depth > 0.0, loads.speed_high, np.nan)
     for cut in cuts(run):
         if wipes_outwards(cut):
             continue
-        finding = _judge_cut(run, cut, *band)
+        finding = _judge_cut(run, cut, speeds, *band)
         if finding is None or (finding.level is Level.NOTE and cut.tool.number in noted):
             continue
         noted.add(cut.tool.number)
         yield finding
 
 
-def _judge_cut(run: Run, cut: Cut, low: float, high: float) -> Finding | None:
+def _judge_cut(run: Run, cut: Cut, speeds: NDArray[np.float64], low: float, high: float) -> Finding | None:
     loads = run.prediction.loads
-    speeds = np.where(loads.depth > 0.0, loads.speed_high, np.nan)
-    speed = lasting(loads, speeds, cut.move.index)
+    speed = cut.largest(speeds)
     row = cut.row_of_largest(speeds)
     rake = float(loads.rake[row])
     if not low <= speed < high or not rake < threshold(run, LIMITS[0]):

@@ -23,6 +23,7 @@ import math
 from collections.abc import Iterator
 
 import numpy as np
+from numpy.typing import NDArray
 
 from auditor.checks._cuts import Cut, cuts, wipes_outwards
 from auditor.checks._judging import lasting
@@ -39,23 +40,26 @@ KINDS: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "face grooving",
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Cuts outside the declared speed range of their tool."""
     undeclared: list[str] = []
+    loads = run.prediction.loads
+    speeds = np.where(loads.depth > 0.0, loads.speed_high, np.nan)
     for cut in cuts(run, KINDS):
         if cut.tool.kind == "turning" and wipes_outwards(cut):
             continue
         if cut.tool.speed is None:
             undeclared.append(f"T{cut.tool.number}")
             continue
-        finding = _judge_cut(run, cut, *cut.tool.speed)
+        finding = _judge_cut(run, cut, speeds, *cut.tool.speed)
         if finding is not None:
             yield finding
     if undeclared:
         yield NotJudged(CHECK, f"no speed range is declared for {', '.join(dict.fromkeys(undeclared))}")
 
 
-def _judge_cut(run: Run, cut: Cut, low: float, high: float) -> Finding | None:
+def _judge_cut(run: Run, cut: Cut, speeds: NDArray[np.float64], low: float, high: float) -> Finding | None:
     loads = run.prediction.loads
-    speeds = np.where(loads.depth > 0.0, loads.speed_high, np.nan)
-    reached = lasting(loads, speeds, cut.move.index)
+    reached = cut.largest(speeds)
+    if reached > high:
+        reached = lasting(loads, speeds, cut.move.index, over=high) or high
     row = cut.row_of_largest(speeds)
     if reached > high * (1.0 + 1e-6):
         limit, fate = high, "the edge burns off early"

@@ -59,9 +59,9 @@ def _limit_for(cut: Cut) -> Limit:
 
 def _judge_straight(run: Run, cut: Cut, edge: float) -> Finding | None:
     loads = run.prediction.loads
-    engaged = lasting(loads, loads.length, cut.move.index)
     limit = _limit_for(cut)
     share = threshold(run, limit)
+    engaged = lasting(loads, loads.length, cut.move.index, over=share * edge)
     if engaged <= share * edge:
         return None
     end = edge - cut.tool.nose_radius
@@ -77,9 +77,9 @@ def _judge_straight(run: Run, cut: Cut, edge: float) -> Finding | None:
 
 def _judge_round(run: Run, cut: Cut) -> Finding | None:
     loads = run.prediction.loads
-    deep = lasting(loads, loads.depth, cut.move.index)
     diameter = 2.0 * cut.tool.nose_radius
     usable = threshold(run, LIMITS[3]) * diameter
+    deep = lasting(loads, loads.depth, cut.move.index, over=usable)
     if deep <= usable:
         return None
     level = Level.STOP if deep > 0.5 * diameter else Level.REVIEW

@@ -52,7 +52,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
 
 def _heavy(run: Run, cut: Cut) -> str | None:
     loads = run.prediction.loads
-    area = lasting(loads, loads.area, cut.move.index)
+    area = lasting(loads, loads.area, cut.move.index, over=threshold(run, LIMITS[2]))
     if run.job.workpiece.material.group in TOUGH and area > threshold(run, LIMITS[2]):
         return f"a heavy chip ({figure(area, 2)} mm2)"
     return None

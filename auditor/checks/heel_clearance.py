@@ -26,6 +26,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 from dataclasses import dataclass
+from functools import cache
 
 import numpy as np
 from numpy.typing import NDArray
@@ -68,8 +69,10 @@ class Left:
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Cuts whose flank rubs or nearly does."""
+    loads = run.prediction.loads
+    turned = np.asarray(feed_angle(np.nan_to_num(loads.feed), 2.0 * np.abs(loads.r)))
     for cut in cuts(run, KINDS):
-        left = _left(run, cut)
+        left = _left(run, cut, turned[cut.rows])
         if left is not None and left.angle < threshold(run, LIMITS[0]):
             yield _finding(run, cut, left)
         elif cut.tool.kind == "boring":
@@ -78,23 +81,28 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
                 yield finding
 
 
-def _left(run: Run, cut: Cut) -> Left | None:
-    """The worst place of the cut; None when all of it lies in the centre."""
+def _left(run: Run, cut: Cut, turned: Floats) -> Left | None:
+    """The worst place of the cut, with the feed's turn of the cutting direction; None when all lies in the centre."""
     loads, tool = run.prediction.loads, cut.tool
-    pocket = float(normal_rake(tool.pocket_rake, tool.pocket_inclination))
-    normal = float(normal_clearance(tool.insert_clearance, pocket))
-    own = float(orthogonal_clearance(normal, tool.pocket_inclination))
+    own = _own_clearance(tool.insert_clearance, tool.pocket_rake, tool.pocket_inclination)
     diameter = 2.0 * np.abs(loads.r[cut.rows])
     judged = loads.depth[cut.rows] > 0.0
     if _to_centre(cut):
         judged &= diameter >= CENTRE
     if not judged.any():
         return None
-    by_feed, by_height = _taken(cut, np.nan_to_num(loads.feed[cut.rows]), diameter)
+    by_feed, by_height = _taken(cut, turned, diameter)
     left = np.where(judged, own - by_feed - by_height, np.inf)
     worst = int(np.argmin(left))
     return Left(cut.rows.start + worst, float(left[worst]), tool.insert_clearance, own - tool.insert_clearance,
                 float(by_feed[worst]), float(by_height[worst]))
+
+
+@cache
+def _own_clearance(insert: float, pocket_rake: float, inclination: float) -> float:
+    """Orthogonal clearance of the insert in its pocket, deg."""
+    normal = float(normal_clearance(insert, normal_rake(pocket_rake, inclination)))
+    return float(orthogonal_clearance(normal, inclination))
 
 
 def _to_centre(cut: Cut) -> bool:
@@ -107,13 +115,14 @@ def _crosses(cut: Cut) -> bool:
     return start is not None and end is not None and abs(end.r - start.r) > abs(end.z - start.z)
 
 
-def _taken(cut: Cut, feed: Floats, diameter: Floats) -> tuple[Floats, Floats]:
+def _taken(cut: Cut, turned: Floats, diameter: Floats) -> tuple[Floats, Floats]:
     """What feed and height take, deg: the feed acts on the main edge, the height in the plane across the axis."""
     tool = cut.tool
-    _, gained = height_effect(tool.centre_height, diameter, internal=tool.kind == "boring")
-    by_height = -np.asarray(gained)
+    by_height = np.zeros(len(diameter))
+    if tool.centre_height:
+        by_height = -np.asarray(height_effect(tool.centre_height, diameter, internal=tool.kind == "boring")[1])
     square = np.sin(np.radians(tool.cutting_edge_angle if tool.kind in ("turning", "boring") else 90.0))
-    by_feed = np.asarray(feed_angle(feed, diameter)) * square
+    by_feed = turned * square
     if _crosses(cut):
         return by_feed, by_height * square
     # along Z the feed acts on the main edge and the height at the tip: the worse of the two places

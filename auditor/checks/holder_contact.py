@@ -21,7 +21,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from auditor.checks._cuts import Cut, cuts
-from auditor.checks._edges import engaged_length
+from auditor.checks._edges import engaged_lengths
 from auditor.checks._judging import origin, threshold
 from auditor.checks._words import figure, finding_at
 from auditor.declared.model import ToolKind
@@ -36,17 +36,15 @@ TOUCH = 0.1  # mm of the insert's body in the metal
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Cuts in which more than the edge touches."""
+    body = engaged_lengths(run, Part.BACK)
     for cut in cuts(run, KINDS):
-        finding = _body(run, cut) or _too_short(run, cut) or _bar_in_bore(run, cut)
+        finding = _body(run, cut, float(body[cut.move.index])) or _too_short(run, cut) or _bar_in_bore(run, cut)
         if finding is not None:
             yield finding
 
 
-def _body(run: Run, cut: Cut) -> Finding | None:
-    if cut.tool.kind not in ("turning", "boring") or cut.tool.shape == "R":
-        return None
-    touching = engaged_length(run, cut, Part.BACK)
-    if touching <= TOUCH:
+def _body(run: Run, cut: Cut, touching: float) -> Finding | None:
+    if cut.tool.kind not in ("turning", "boring") or cut.tool.shape == "R" or touching <= TOUCH:
         return None
     message = f"The body of the insert, behind its edges, meets the metal over {figure(touching)} mm."
     return finding_at(run, CHECK, Level.STOP, cut.row_of_largest(run.prediction.loads.depth), message, value=touching,

@@ -24,9 +24,10 @@ import math
 from collections.abc import Iterator
 
 import shapely
+from shapely.geometry.base import BaseGeometry
 
 from auditor.checks._judging import origin, threshold
-from auditor.checks._solids import jaw_zone, swept_area
+from auditor.checks._solids import jaw_zone, outlines, swept_area
 from auditor.checks._words import figure, tool_name, z_word
 from auditor.declared.model import Tool
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -43,20 +44,25 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if zone is None:
         return
     face = -run.job.workholding.stick_out
+    shapes = outlines(run)
     for move in run.path.moves:
         tool = run.job.tools.get(move.tool) if move.tool is not None else None
-        low = min((z for z in (move.start_z, move.end_z) if z is not None), default=math.inf)
-        if tool is None or tool.kind == "stop" or low > face + 60.0:
+        if tool is None or tool.number not in shapes:
             continue
-        finding = _drill(run, move, tool, face) if tool.kind == "drilling" else _outline(run, move, tool, zone, face)
+        shape = shapes[tool.number]
+        low = min((z for z in (move.start_z, move.end_z) if z is not None), default=math.inf)
+        if low + shape[:, 0].min() > face + threshold(run, LIMITS[0]):
+            continue
+        area = swept_area(shape, move)
+        finding = _drill(run, move, tool, face) if tool.kind == "drilling" else _outline(run, move, tool, area, zone)
         if finding is not None:
             yield finding
 
 
-def _outline(run: Run, move: Move, tool: Tool, zone: shapely.Geometry, face: float) -> Finding | None:
-    area = swept_area(tool, move)
+def _outline(run: Run, move: Move, tool: Tool, area: BaseGeometry | None, zone: BaseGeometry) -> Finding | None:
     if area is None:
         return None
+    face = -run.job.workholding.stick_out
     inside = shapely.intersection(area, zone)
     if shapely.area(inside) > TOUCH:
         deepest = face - float(shapely.bounds(inside)[0])

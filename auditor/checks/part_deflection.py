@@ -26,7 +26,7 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from auditor.checks._cuts import Cut, cuts, diameter_error
+from auditor.checks._cuts import Cut, cuts, diameter_errors
 from auditor.checks._judging import THRUST_SCATTER, threshold
 from auditor.checks._words import finding_at, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -45,8 +45,9 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if allowed is None:
         yield NotJudged(CHECK, "neither workpiece.diameter_tolerance nor limits.part_bend is declared")
         return
+    errors = diameter_errors(run)
     for cut in cuts(run):
-        error = diameter_error(run, cut)
+        error = cut.largest(errors)
         if not error > CERTAINTY:
             continue
         if run.simulation.final_surface[cut.move.index]:

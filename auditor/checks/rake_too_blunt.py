@@ -24,7 +24,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from auditor.checks._bending import bar_push_off, slenderness, wall_share
-from auditor.checks._cuts import Cut, cuts, diameter_error, tolerance_third
+from auditor.checks._cuts import Cut, cuts, diameter_errors, tolerance_third
 from auditor.checks._judging import threshold
 from auditor.checks._words import angle, figure, finding_at, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -45,14 +45,17 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if third is None:
         yield NotJudged(CHECK, "workpiece.diameter_tolerance is not declared")
         return
+    errors = diameter_errors(run)
     for cut in cuts(run):
         if not run.simulation.final_surface[cut.move.index]:
             continue
         row = cut.row_of_largest(run.prediction.loads.bend)
         rake = float(run.prediction.loads.rake[row])
-        weak = _weakness(run, cut, row)
-        error = diameter_error(run, cut) + 2.0 * bar_push_off(run, cut)
-        if rake < 0.0 and weak is not None and error > third:
+        if not rake < 0.0:
+            continue
+        error = cut.largest(errors) + 2.0 * bar_push_off(run, cut)
+        weak = _weakness(run, cut, row) if error > third else None
+        if weak is not None:
             yield _finding(run, row, rake, weak, error, third)
 
 

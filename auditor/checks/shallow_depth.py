@@ -23,7 +23,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_error, tolerance_third, wipes_outwards
+from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_errors, tolerance_third, wipes_outwards
 from auditor.checks._judging import origin, threshold
 from auditor.checks._words import depth, figure, finding_at, force, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -34,21 +34,23 @@ LIMITS = (Limit("hardened_layer", 0.1, "mm", "common practice", "least depth in 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Reviews for every such block; notes for the shallowest block of each tool."""
-    notes: dict[int, tuple[float, Finding]] = {}
+    notes: dict[int, tuple[float, Cut]] = {}
+    errors = diameter_errors(run)
     for cut in cuts(run):
         deep = cut.largest(run.prediction.loads.depth)
         if cut.tool.shape == "R" or wipes_outwards(cut) or not SPRING_PASS < deep < cut.tool.nose_radius:
             continue
-        finding = _judge_cut(run, cut, deep)
-        if finding.level is Level.REVIEW:
+        finding = _grave(run, cut, deep, cut.largest(errors))
+        if finding is not None:
             yield finding
         elif cut.tool.number not in notes or deep < notes[cut.tool.number][0]:
-            notes[cut.tool.number] = (deep, finding)
-    for _, finding in notes.values():
-        yield finding
+            notes[cut.tool.number] = (deep, cut)
+    for deep, cut in notes.values():
+        yield finding_at(run, CHECK, Level.NOTE, cut.row_of_largest(run.prediction.loads.depth), _story(run, cut, deep),
+                         value=deep, limit=cut.tool.nose_radius, unit="mm")
 
 
-def _judge_cut(run: Run, cut: Cut, deep: float) -> Finding:
+def _story(run: Run, cut: Cut, deep: float) -> str:
     loads = run.prediction.loads
     row = cut.row_of_largest(loads.depth)
     passive, along = float(loads.passive[row]), float(loads.feed_force[row])
@@ -58,14 +60,20 @@ def _judge_cut(run: Run, cut: Cut, deep: float) -> Finding:
                    "along the feed."
     else:
         message += "the cut runs on the nose."
-    third, error = tolerance_third(run), diameter_error(run, cut)
-    skin = threshold(run, LIMITS[0])
+    return message
+
+
+def _grave(run: Run, cut: Cut, deep: float, error: float) -> Finding | None:
+    """A review where the shallow cut spoils the part."""
+    row = cut.row_of_largest(run.prediction.loads.depth)
+    story = _story(run, cut, deep)
+    third, skin = tolerance_third(run), threshold(run, LIMITS[0])
     if run.job.workpiece.material.work_hardening and deep < skin:
-        return finding_at(run, CHECK, Level.REVIEW, row, f"{message} It runs in the skin the last pass hardened. "
+        return finding_at(run, CHECK, Level.REVIEW, row, f"{story} It runs in the skin the last pass hardened. "
                           f"{origin(run, LIMITS)}", value=deep, limit=skin, unit="mm",
                           remedy=f"At least {depth(skin)} mm deep.")
     if third is not None and run.simulation.final_surface[cut.move.index] and error > third:
-        return finding_at(run, CHECK, Level.REVIEW, row, f"{message} That bends the work so that the diameter comes "
-                          f"out {micro(error)} too large, more than a third of the tolerance.", value=error,
+        return finding_at(run, CHECK, Level.REVIEW, row, f"{story} That bends the work so that the diameter "
+                          f"comes out {micro(error)} too large, more than a third of the tolerance.", value=error,
                           limit=third, unit="mm", remedy="A smaller nose radius or a freer-cutting edge.")
-    return finding_at(run, CHECK, Level.NOTE, row, message, value=deep, limit=cut.tool.nose_radius, unit="mm")
+    return None

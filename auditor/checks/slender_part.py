@@ -40,8 +40,9 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     modulus = run.job.workpiece.material.modulus
     across = 2.0 * np.nan_to_num(loads.outermost)
     ratios = np.cbrt(3.0 * math.pi * modulus * across * np.nan_to_num(loads.compliance) / 64.0)
+    ratios = np.where(loads.depth > 0.0, ratios, 0.0)
     for cut in cuts(run):
-        row = cut.row_of_largest(np.where(loads.depth > 0.0, ratios, -1.0))
+        row = cut.row_of_largest(ratios)
         ratio = float(ratios[row])
         if ratio > threshold(run, LIMITS[0]) and ratio > worst.get(cut.tool.number, (0.0, 0))[0]:
             worst[cut.tool.number] = (ratio, row)

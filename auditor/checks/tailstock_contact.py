@@ -23,7 +23,7 @@ from collections.abc import Iterator
 import shapely
 
 from auditor.checks._judging import cutting_moves
-from auditor.checks._solids import swept_area, tailstock_zone
+from auditor.checks._solids import outlines, swept_area, tailstock_zone
 from auditor.checks._words import tool_name, x_word, z_word
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
@@ -43,9 +43,10 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         yield NotJudged(CHECK, "workholding.tailstock is not declared")
         return
     cutting = cutting_moves(run)
+    shapes = outlines(run)
     for move in run.path.moves:
         tool = run.job.tools.get(move.tool) if move.tool is not None else None
-        area = swept_area(tool, move) if tool is not None and tool.kind != "stop" else None
+        area = swept_area(shapes[tool.number], move) if tool is not None and tool.number in shapes else None
         if area is None or tool is None:
             continue
         inside = shapely.intersection(area, zone)

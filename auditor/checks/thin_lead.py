@@ -27,7 +27,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from auditor.checks._cuts import Cut, cuts
-from auditor.checks._edges import engaged_length
+from auditor.checks._edges import engaged_lengths
 from auditor.checks._judging import lasting, origin, threshold
 from auditor.checks._words import depth, figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -45,19 +45,19 @@ HALF_EDGE = 0.5
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Wiping edges and jumps of depth."""
+    wiping = engaged_lengths(run, Part.MAIN, leaner_than=LEAN)
     for cut in cuts(run):
         if cut.tool.shape == "R":
             continue
-        finding = _wiping(run, cut) or _jump(run, cut)
+        finding = _wiping(run, cut, float(wiping[cut.move.index])) or _jump(run, cut)
         if finding is not None:
             yield finding
 
 
-def _wiping(run: Run, cut: Cut) -> Finding | None:
+def _wiping(run: Run, cut: Cut, wiping: float) -> Finding | None:
     loads = run.prediction.loads
-    wiping = engaged_length(run, cut, Part.MAIN, leaner_than=LEAN)
     limit = threshold(run, LIMITS[0])
-    if wiping <= limit or lasting(loads, loads.depth, cut.move.index) <= WEDGE:
+    if wiping <= limit or lasting(loads, loads.depth, cut.move.index, over=WEDGE) <= WEDGE:
         return None
     row = cut.row_of_largest(loads.length)
     message = f"The edge wipes along the work: {figure(wiping)} mm of it lean less than {LEAN:.0f} deg to the " \
@@ -69,8 +69,7 @@ def _wiping(run: Run, cut: Cut) -> Finding | None:
 def _jump(run: Run, cut: Cut) -> Finding | None:
     loads, edge = run.prediction.loads, cut.tool.edge_length
     depths = loads.depth[cut.rows]
-    engaged = depths > 0.0
-    if edge is None or not engaged.any():
+    if edge is None or not cut.largest(loads.length) > HALF_EDGE * edge:
         return None
     usual = _usual_depth(loads.travel[cut.rows], depths)
     deepest = lasting(loads, loads.depth, cut.move.index)

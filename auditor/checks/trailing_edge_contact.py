@@ -26,7 +26,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from auditor.checks._cuts import Cut, cuts
-from auditor.checks._edges import engaged_length, path_angle
+from auditor.checks._edges import engaged_lengths, path_angle
 from auditor.checks._judging import origin, threshold
 from auditor.checks._words import figure, finding_at, x_word
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -42,11 +42,12 @@ STRAIGHT_IN = -85.0  # deg; steeper is facing or plunging, not copying
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Moves that drive the wrong part of the insert into the work."""
+    minor, body = engaged_lengths(run, Part.MINOR), engaged_lengths(run, Part.BACK)
     for cut in cuts(run, ("turning", "boring", "parting", "grooving")):
         finding = _past_centre(run, cut)
         if finding is None and cut.tool.kind in ("turning", "boring") and cut.tool.shape != "R":
-            angle = path_angle(cut)
-            finding = None if angle is None else _judge_direction(run, cut, angle)
+            index = cut.move.index
+            finding = _judge_direction(run, cut, float(minor[index]), float(body[index]))
         if finding is not None:
             yield finding
 
@@ -65,19 +66,21 @@ def _past_centre(run: Run, cut: Cut) -> Finding | None:
                        remedy=f"End at {x_word(run, -max(cut.tool.nose_radius, 0.2))}.")
 
 
-def _judge_direction(run: Run, cut: Cut, angle: float) -> Finding | None:
-    tool = cut.tool
+def _judge_direction(run: Run, cut: Cut, trailing: float, body: float) -> Finding | None:
+    """``trailing`` and ``body``: engaged length of the minor edge and of what lies behind the edges, mm."""
+    tool, angle = cut.tool, path_angle(cut)
+    if angle is None:
+        return None
     minor = float(minor_edge_angle(tool.cutting_edge_angle, tool.included_angle))
     if angle <= STRAIGHT_IN:
         whole = tool.minor_edge_length or tool.edge_length
-        buried = engaged_length(run, cut, Part.BACK) > TOUCHES
-        if buried or (whole is not None and engaged_length(run, cut, Part.MINOR) > WHOLE_EDGE * whole):
+        if body > TOUCHES or (whole is not None and trailing > WHOLE_EDGE * whole):
             return _finding(run, cut, Level.STOP, -angle, minor, "The insert is driven straight in with the whole of "
                             "its edge in the metal and no room beside it", "A grooving tool for this plunge.")
         return None
     if angle < 0.0:
         limit = float(steepest_in_copy(minor))
-        if -angle > minor + 1e-6 and engaged_length(run, cut, Part.MINOR) > TOUCHES:
+        if -angle > minor + 1e-6 and trailing > TOUCHES:
             return _finding(run, cut, Level.STOP, -angle, limit, f"The path goes in at {figure(-angle)} deg and the "
                             f"trailing edge, at {figure(minor)} deg, is driven into the work", "A slimmer insert.")
         if limit + 1e-6 < -angle <= minor + 1e-6:

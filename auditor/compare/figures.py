@@ -9,7 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from auditor.checks._bending import bar_push_off
-from auditor.checks._cuts import Cut, cuts, diameter_error, wedge_angle
+from auditor.checks._cuts import Cut, cuts, diameter_errors, wedge_angle
 from auditor.checks._spindle import power_at
 from auditor.declared.model import Tool, ToolKind
 from auditor.findings import Run
@@ -56,6 +56,7 @@ def figures_of(run: Run, number: int) -> ToolFigures:
     rows = mine[loads.move]
     with np.errstate(divide="ignore", invalid="ignore"):
         share = loads.motor_power / power_at(run.job.machine, loads.rpm)
+    errors = diameter_errors(run)
     own = [cut for cut in cuts(run, ALL_KINDS) if cut.tool.number == number]
     seated = tool.kind not in ("drilling", "stop")
     return ToolFigures(
@@ -68,7 +69,7 @@ def figures_of(run: Run, number: int) -> ToolFigures:
         torque=largest(figures.torque[mine]),
         motor_power=largest(figures.motor_power[mine]),
         spindle_share=largest(share[rows]),
-        work_bend=largest(np.array([diameter_error(run, cut) for cut in own])),
+        work_bend=largest(np.array([cut.largest(errors) for cut in own])),
         tool_bend=largest(np.array([bar_push_off(run, cut) for cut in own])) if tool.kind == "boring" else None,
         roughness=_roughness(run, own),
         edges=_edges(run, tool, mine),
