@@ -13,6 +13,7 @@ from auditor.interpret.profiles import Profile, carry_out_profile
 from auditor.interpret.reference import leave_compensation
 from auditor.interpret.registry import action, motion
 from auditor.interpret.run import NotUnderstood, Run
+from auditor.interpret.state import NOWHERE
 from auditor.interpret.systems import DRILLING_CYCLES, MULTIPLE_CYCLES, PROFILE_CYCLES, SINGLE_CYCLES, code_for
 from auditor.interpret.travel import begin_stroke, dressed, settle, unknown_start, write
 from auditor.interpret.words import BlockWords
@@ -51,18 +52,25 @@ def multiple_cycle(run: Run, words: BlockWords) -> None:
 
 
 def _carry_out(run: Run, words: BlockWords, name: str, profile: Profile | None) -> None:
-    start = run.state.position
-    if start is None:
-        raise NotUnderstood(unknown_start(run), "position-unknown")
     if name not in _COMPENSATED:
         leave_compensation(run, f"the cycle {code_for(run.system, name)}")
     settle(run)
+    start = run.state.position or (NOWHERE if _only_stores(words, name) else None)
+    if start is None:
+        raise NotUnderstood(unknown_start(run), "position-unknown")
     expansion = cycles.find(name)(_call(run, words, name, start, profile))
     run.state.stored[name] = dict(expansion.stored)
     run.note(*expansion.remarks)
     for key in expansion.leaned_on:
         run.lean_on(key, name)
     _write(run, name, expansion, profile)
+
+
+def _only_stores(words: BlockWords, name: str) -> bool:
+    """The first of two blocks gives depths and retracts; nothing moves, wherever the tool stands."""
+    if name in PROFILE_CYCLES:
+        return name != "finishing" and not words.has("P", "Q")
+    return name in MULTIPLE_CYCLES and not words.has("X", "Z", "U", "W")
 
 
 def _call(run: Run, words: BlockWords, name: str, start: Point, profile: Profile | None) -> CycleCall:

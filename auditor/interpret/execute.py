@@ -77,13 +77,15 @@ def act(run: Run, words: BlockWords) -> None:
     if words.only_moves:
         _act_once_or_move(run, words)
         return
-    if not _takes_all_words(words):
-        for phase in (Phase.READING, Phase.FEED, Phase.SPEED, Phase.TOOL, Phase.START, Phase.MODE):
-            _take_effect(run, words, phase)
-        _check_codes(run, words)
-        _set_motion(run, words)
-    _act_once_or_move(run, words)
-    _take_effect(run, words, Phase.AFTER)
+    try:
+        if not _takes_all_words(words):
+            for phase in (Phase.READING, Phase.FEED, Phase.SPEED, Phase.TOOL, Phase.START, Phase.MODE):
+                _take_effect(run, words, phase)
+            _check_codes(run, words)
+            _set_motion(run, words)
+        _act_once_or_move(run, words)
+    finally:  # a motion that cannot be followed takes no end and no call away
+        _take_effect(run, words, Phase.AFTER)
 
 
 def _takes_all_words(words: BlockWords) -> bool:
@@ -155,6 +157,7 @@ def _act_once_or_move(run: Run, words: BlockWords) -> None:
         _refuse_live(run, live)
     motion = run.state.drilling or run.state.motion
     if motion is None:
+        run.state.forget_position()
         raise NotUnderstood("which motion code is in force is not known here", "position-unknown")
     MOTIONS[motion](run, words)
 

@@ -81,6 +81,19 @@ def test_code_without_axis_words_is_only_said() -> None:
     assert unknown == ["unknown-g", "unknown-m"]
 
 
+def test_a_motion_left_out_takes_no_call_and_no_end_away() -> None:
+    found = carried_out("T0101 M3 S500 F.2\nG1 Z-5. M98 P7\nG187 X5. M30\nG0 X1. Z1.\nO7\nG0 X60. Z5.\nM99")
+    assert not_audited(found) == [2, 3]
+    assert rows(found) == [("R", 60, 5)]
+    assert found.ended == "M30"
+
+
+def test_depth_block_of_a_cycle_needs_no_position() -> None:
+    found = carried_out("T0101\nG97 S500 M3 F.2\nG71 U2. R.5\nG0 X62. Z2.\nG71 P1 Q2 F.3\nN1 G0 X50.\nN2 G1 Z-9.")
+    assert found.not_audited == ()
+    assert not_audited(carried_out(CUT + "G28 U0 W0\nG74 R1.\nG74 Z-9. Q5000")) == [6]
+
+
 def test_unknown_code_with_axis_words_loses_the_motion_code() -> None:
     found = carried_out(CUT + "G187 X40. F.1\nZ-5.\nG1 X40. Z-5.\nZ-6.")
     assert not_audited(found) == [4, 5, 6]
