@@ -18,8 +18,6 @@ from auditor.interpret.systems import DRILLING_CYCLES, MULTIPLE_CYCLES, PROFILE_
 from auditor.interpret.travel import begin_stroke, dressed, settle, unknown_start, write
 from auditor.interpret.words import BlockWords
 
-_COMPENSATED = frozenset({"finishing"})
-
 
 @motion(*SINGLE_CYCLES, *DRILLING_CYCLES)
 def modal_cycle(run: Run, words: BlockWords) -> None:
@@ -36,12 +34,12 @@ def multiple_cycle(run: Run, words: BlockWords) -> None:
     if name not in PROFILE_CYCLES or not (name == "finishing" or words.has("P", "Q")):
         _carry_out(run, words, name, None)
         return
-    if run.state.position is None:
-        raise NotUnderstood(unknown_start(run), "position-unknown")
     settle(run)
     try:
+        if run.state.position is None:
+            raise NotUnderstood(unknown_start(run), "position-unknown")
         profile = carry_out_profile(run, words, finishing=name == "finishing")
-    except CycleFault:
+    except (CycleFault, NotUnderstood):
         _leave_profile_out(run, words, name)
         raise
     try:
@@ -52,7 +50,7 @@ def multiple_cycle(run: Run, words: BlockWords) -> None:
 
 
 def _carry_out(run: Run, words: BlockWords, name: str, profile: Profile | None) -> None:
-    if name not in _COMPENSATED:
+    if name != "finishing":
         leave_compensation(run, f"the cycle {code_for(run.system, name)}")
     settle(run)
     start = run.state.position or (NOWHERE if _only_stores(words, name) else None)

@@ -94,6 +94,14 @@ def test_depth_block_of_a_cycle_needs_no_position() -> None:
     assert not_audited(carried_out(CUT + "G28 U0 W0\nG74 R1.\nG74 Z-9. Q5000")) == [6]
 
 
+def test_a_roughing_cycle_that_cannot_start_takes_its_profile_along() -> None:
+    for start in ("G28 U0 W0", "G0 X40. Z2."):  # position unknown; no infeed to the profile
+        found = carried_out(CUT + f"{start}\nG71 U2. R.5\nG71 P1 Q2 F.3\nN1 G0 X40.\nN2 G1 Z-9.\nG0 X70. Z5.")
+        assert not_audited(found) == [6]
+        assert [row for row in rows(found) if row[0] == "F"] == []
+        assert rows(found)[-1] == ("R", 70, 5)
+
+
 def test_unknown_code_with_axis_words_loses_the_motion_code() -> None:
     found = carried_out(CUT + "G187 X40. F.1\nZ-5.\nG1 X40. Z-5.\nZ-6.")
     assert not_audited(found) == [4, 5, 6]
