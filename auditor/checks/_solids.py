@@ -42,7 +42,7 @@ def jaw_zone(run: Run) -> BaseGeometry | None:
     gripped = 0.5 * (holding.grip_diameter or run.job.workpiece.diameter)
     if holding.grip_inside:
         return shapely.box(face - 100.0, max(gripped - JAW_HEIGHT, 0.0), face, gripped)
-    return shapely.box(face - 100.0, 0.0, face, gripped + JAW_HEIGHT)
+    return shapely.box(face - 100.0, gripped, face, gripped + JAW_HEIGHT)
 
 
 def tailstock_zone(holding: Workholding) -> BaseGeometry | None:
