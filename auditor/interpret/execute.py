@@ -153,7 +153,7 @@ def _act_once_or_move(run: Run, words: BlockWords) -> None:
     circle = run.state.motion in ARC_MOTIONS and words.has("I", "K")
     if not has_axis_words(words) and not live and not circle and not words.has(",A", ",C", ",R"):
         return
-    if (live and run.state.drilling is None) or run.state.live_mode is not None:
+    if live or run.state.live_mode is not None:
         _refuse_live(run, live)
     motion = run.state.drilling or run.state.motion
     if motion is None:
@@ -176,9 +176,9 @@ def _check_repeats(run: Run, words: BlockWords) -> None:
         return
     if len(words.values) > len(words.by_letter) + len(words.functions) + len(words.unknown_codes) + len(words.m_codes):
         _note_repeated(run, words)
-    groups = [group_of(function) for function in words.functions]
-    for group in dict.fromkeys(groups):
-        if group != "one-shot" and groups.count(group) > 1:
+    groups = [group_of(function) for function in set(words.functions)]
+    for group in sorted(set(groups) - {"one-shot"}):
+        if groups.count(group) > 1:
             run.remark("code-group-repeated", f"two codes of the {group} group in one block: the last one acts", "G")
     most = int(amount(run.control, "m_codes_per_block"))
     if len(words.m_codes) > most:

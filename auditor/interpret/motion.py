@@ -18,10 +18,12 @@ from auditor.interpret.variable_lead import mean_lead
 from auditor.interpret.words import BlockWords, length
 
 AXIS_LETTERS = ("X", "Z", "U", "W")
-HARMLESS = frozenset({"F", "S", "T", "D", "E", "L", "P", "Q"})  # no effect on where a motion goes
+IDLE = frozenset({"E", "L", "P", "Q"})  # letters that mean something in other blocks only
+HARMLESS = frozenset({"F", "S", "T", "D"}) | IDLE  # no effect on where a motion goes
 
 
-PLAIN_MOTION = frozenset(AXIS_LETTERS) | HARMLESS
+PLAIN_LETTERS = frozenset(AXIS_LETTERS)
+PLAIN_MOTION = PLAIN_LETTERS | HARMLESS
 
 
 def has_axis_words(words: BlockWords) -> bool:
@@ -71,8 +73,12 @@ def _added(here: float | None, distance: float) -> float | None:
     return None if here is None else here + distance
 
 
-def refuse_letters(words: BlockWords, allowed: frozenset[str]) -> None:
+def refuse_letters(run: Run, words: BlockWords, allowed: frozenset[str]) -> None:
     """Words that have no meaning with this motion make the block something else than it seems."""
+    idle = words.by_letter.keys() & IDLE
+    if idle and not words.m_codes and not allowed & idle and len(words.functions) < 2:
+        text = f"{' and '.join(sorted(idle))} has no meaning in this block and is left out"
+        run.remark("unsupported", text, *sorted(idle))
     strange = words.by_letter.keys() - allowed - HARMLESS
     if strange:
         letters = " and ".join(sorted(strange))
@@ -93,7 +99,7 @@ def known_start(run: Run, end: tuple[float | None, float | None]) -> Point:
 def rapid(run: Run, words: BlockWords) -> None:
     """G0: both axes at their own rates to the end point."""
     close_chain(run)
-    refuse_letters(words, PLAIN_MOTION)
+    refuse_letters(run, words, PLAIN_LETTERS)
     z, r = end_point(run, words)
     if run.state.position is None or z is None or r is None:
         rapid_partly_known(run, z, r)
@@ -105,6 +111,7 @@ def rapid(run: Run, words: BlockWords) -> None:
 def straight(run: Run, words: BlockWords) -> None:
     """G1, with corner and angle words where the block carries them."""
     if run.chain is None and words.by_letter.keys() <= PLAIN_MOTION:
+        refuse_letters(run, words, PLAIN_LETTERS)
         end = end_point(run, words)
         known_start(run, end)
         check_cut(run)
@@ -135,7 +142,7 @@ def read_leg(run: Run, words: BlockWords) -> Leg:
     """The block as one leg of a chain of straight lines."""
     plain = choice(run.control, "corner_words") == "comma or plain"
     allowed = frozenset((*AXIS_LETTERS, ",C", ",R", ",A", *("C", "R", "A", "I", "K") * plain))
-    refuse_letters(words, allowed)
+    refuse_letters(run, words, allowed)
     z, r = end_point(run, words)
     if (words.has("W") and z is None) or (words.has("U") and r is None):
         text = "a distance from a corner that is known by its angle only: give the point"
@@ -177,7 +184,7 @@ def arc(run: Run, words: BlockWords) -> None:
     close_chain(run)
     if run.state.plane != "plane ZX":
         raise NotUnderstood("an arc outside the ZX plane is no turning", "axis-not-modelled")
-    refuse_letters(words, frozenset((*AXIS_LETTERS, "R", "I", "K")))
+    refuse_letters(run, words, frozenset((*AXIS_LETTERS, "R", "I", "K")))
     end = end_point(run, words)
     start = known_start(run, end)
     target = Point(*_both(end))
@@ -224,7 +231,7 @@ def _arc(run: Run, words: BlockWords, start: Point, end: Point, clockwise: bool)
 def thread_stroke(run: Run, words: BlockWords) -> None:
     """G32 or G33: one stroke in step with the spindle; F (or E) is the lead."""
     close_chain(run)
-    refuse_letters(words, frozenset((*AXIS_LETTERS, *("K",) * (run.state.motion == "variable thread"))))
+    refuse_letters(run, words, frozenset((*AXIS_LETTERS, "Q", "E", *("K",) * (run.state.motion == "variable thread"))))
     end = end_point(run, words)
     start = known_start(run, end)
     lead = millimetres(run, words, "E") or (run.state.feed.value if run.state.feed.certain else None)

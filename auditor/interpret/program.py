@@ -47,7 +47,7 @@ def interpret(text: ProgramText, job: Job) -> Interpretation:
         not_audited=tuple(log.not_audited.values()),
         motion_lines=frozenset(log.motion_lines),
         system=run.system,
-        units="in" if run.state.inch else "mm",
+        units=run.units or ("in" if run.state.inch else "mm"),
         assumptions=tuple(log.assumptions.values()),
         dwell_time=log.dwell_time,
         ended=run.ended,

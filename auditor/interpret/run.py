@@ -63,6 +63,7 @@ class Run:
     moved: bool = False  # the program has moved already
     strokes: int = 0  # carried out so far
     units_said: bool = False
+    units: Literal["mm", "in"] | None = None  # of the first motion
     first_zero: str | None = None  # the work zero taken for the declared Z0
     called_name: str | None = None  # M98 <NAME>
     ended: str | None = None

@@ -34,6 +34,7 @@ def travel(run: Run, stroke: Stroke) -> None:
 def begin_stroke(run: Run) -> None:
     """A motion begins: what has to be settled before the first, and counted for each."""
     run.strokes += 1
+    run.units = run.units or ("in" if run.state.inch else "mm")
     if run.collected is None:
         run.log.motion_lines.add(run.words.line)
         check_limited(run)

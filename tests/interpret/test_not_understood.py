@@ -42,7 +42,17 @@ def test_motion_code_that_cannot_be_made_out_has_to_be_restated() -> None:
     assert rows(found)[-1] == ("R", 40, 1)
 
 
-@pytest.mark.parametrize("block", ["G0 X40. C90.", "Y5.", "G1 X40. Z-1. B30.", "G0 A90.", "G87 X30. Z-5. R5. F.1"])
+def test_letters_without_a_meaning_are_said() -> None:
+    assert "unsupported" in topics(carried_out(CUT + "G1 X40. Q3 F.2"))
+    assert "unsupported" in topics(carried_out(CUT + "G1 X1E1"))
+    for block in ("G1 X40. M98 P7", "G32 Z-9. F1. Q180000", "G54.1 P2 G0 X40."):
+        assert "unsupported" not in topics(carried_out(CUT + block))
+
+
+@pytest.mark.parametrize(
+    "block",
+    ["G83 X20. C90. Z-5. R-1. F.1", "G0 X40. C90.", "Y5.", "G1 X40. Z-1. B30.", "G0 A90.", "G87 X30. Z-5. R5. F.1"],
+)
 def test_words_of_other_axes_are_fenced_off(block: str) -> None:
     found = carried_out(CUT + block + "\nG0 X60. Z5.")
     assert not_audited(found) == [4]
