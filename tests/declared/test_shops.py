@@ -91,7 +91,9 @@ def test_a_catalogue_material_needs_no_entry(tmp_path: Path) -> None:
     assert read(tmp_path, SOUND.replace("C45", "C60")).workpiece.material.name == "C60"
 
 
-def test_no_shop_file_is_said(tmp_path: Path) -> None:
+def test_no_shop_file_is_said(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    # Whatever lies in the folders above the test's own is none of its business.
+    monkeypatch.setattr("auditor.declared.shops.find_shop", lambda folder: None)
     fault = only_fault(tmp_path, 'machine = "slant-15"\n' + WORKHOLDING + WORKPIECE + TOOL)
     assert (fault.key, fault.line, fault.found) == ("machine", 1, '"slant-15"')
     assert "no shop.toml was found" in fault.message
