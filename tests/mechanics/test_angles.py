@@ -115,6 +115,11 @@ def test_wedge_closes_in_the_normal_plane():
     assert float(orthogonal_clearance(normal_clearance(7.0, 0.0), 0.0)) == pytest.approx(7.0)
 
 
+def test_a_plane_at_right_angles_is_no_rake():
+    with pytest.raises(ValueError, match="side rake must be between -90 and 90; found 90 deg"):
+        orthogonal_rake(90.0, 0.0, 75.0)
+
+
 # ---- effective rake
 
 

@@ -261,6 +261,13 @@ def test_names_that_are_not_known_are_refused_with_the_known_ones():
         operation_factor("milling")
 
 
+def test_scatter_steps_where_the_sources_say():
+    """Law limited to h >= 0.1 mm (Horvath 2015), another branch below; 0.03 mm and -15 deg: model."""
+    assert force_scatter(0.15, [0.1, 0.0999, 0.03, 0.0299], 0.0).tolist() == [0.15, 0.40, 0.40, 1.0]
+    assert force_scatter(0.15, 0.2, [-15.0, -15.1]).tolist() == [0.15, 1.0]
+    assert float(force_scatter(0.5, 0.05, 0.0)) == 0.5
+
+
 @given(st.floats(0.0, 1.0), st.floats(0.0, 1.0), st.floats(-60.0, 40.0))
 def test_a_thinner_chip_is_never_more_certain(h, more, g):
     thin, thick = force_scatter(0.25, [h, h + more], g)
