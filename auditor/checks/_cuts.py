@@ -36,8 +36,8 @@ class Cut:
 
     def row_of_largest(self, figure: Floats) -> int:
         """The row where it is largest."""
-        highest = int(np.argmax(np.nan_to_num(figure[self.rows], nan=-np.inf)))
-        return int(self.rows.start) + highest
+        own = figure[self.rows]
+        return int(self.rows.start) + int(np.argmax(np.where(np.isnan(own), -np.inf, own)))
 
 
 def cuts(run: Run, kinds: tuple[ToolKind, ...] = SIDEWAYS) -> Iterator[Cut]:
@@ -68,6 +68,11 @@ def wipes_outwards(cut: Cut) -> bool:
         return False
     away = end.r - start.r if cut.tool.kind == "turning" else start.r - end.r
     return away > 0.0
+
+
+def roughs(cut: Cut) -> bool:
+    """Whether a roughing cycle makes this move; what its steps leave between them is its own business."""
+    return cut.move.cycle is not None and cut.move.cycle.startswith("rough")
 
 
 def raw_radius(run: Run, z: float) -> float:

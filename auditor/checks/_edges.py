@@ -54,7 +54,8 @@ def path_angle(cut: Cut) -> float | None:
     start, end, tool = cut.move.start, cut.move.end, cut.tool
     if cut.move.kind is Kind.ARC or start is None or end is None or tool.edge_faces_end:
         return None
-    forward = (start.z - end.z) if tool.tip in (2, 3, 7) else (end.z - start.z)
+    away = tool.tip in (1, 4, 5) or (tool.tip in (0, 6, 8, 9) and tool.hand == "left")
+    forward = (end.z - start.z) if away else (start.z - end.z)
     outward = (end.r - start.r) if tool.kind == "turning" else (start.r - end.r)
     if forward < -1e-9 or (abs(forward) < 1e-9 and abs(outward) < 1e-9):
         return None

@@ -54,7 +54,8 @@ def rows_of(loads: Loads, move: int) -> slice:
 def lasting(loads: Loads, figure: Floats, move: int, over: float = 0.0) -> float:
     """The largest value of ``figure`` that holds for one feed of travel touching the move; 0 where none is ``over``."""
     own = rows_of(loads, move)
-    values = np.nan_to_num(figure[own], nan=-np.inf)
+    values = figure[own]
+    values = np.where(np.isnan(values), -np.inf, values)
     if not len(values) or values.max() <= over:
         return 0.0
     near = _neighbourhood(loads, own)

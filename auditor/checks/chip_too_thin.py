@@ -24,7 +24,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from auditor.checks._cuts import SPRING_PASS, Cut, cuts, wipes_outwards
+from auditor.checks._cuts import SPRING_PASS, Cut, cuts, roughs, wipes_outwards
 from auditor.checks._judging import origin, threshold
 from auditor.checks._words import figure, finding_at
 from auditor.declared.model import ToolKind
@@ -43,7 +43,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     for cut in cuts(run, KINDS):
         if wipes_outwards(cut) or not cut.largest(loads.depth) > SPRING_PASS:
             continue
-        finding = _rubbing(run, cut)
+        finding = None if roughs(cut) else _rubbing(run, cut)
         if finding is not None:
             yield finding
         known = main.get(cut.tool.number)

@@ -10,7 +10,7 @@ Why
 
 Formula and source
     Grip left = static grip less the jaws' centrifugal force (VDI 3106); a grip from inside gains by speed, which is
-    not credited. Need = the larger of sqrt((Fc d / D)^2 + Ff^2) / friction for slipping (VDI 3106, J) and
+    not credited. Need = the larger of sqrt((2 M / D)^2 + Ff^2) / friction for slipping (VDI 3106, J) and
     3 x sqrt(Fc^2 + Fp^2) x distance from the jaws / D for tilting (estimate, 2 to 4 without an end stop). With a
     tailstock or centre nothing tilts. Stop: under grip_safety times the need (1.5, VDI 3106). Review: under
     grip_safety_squared (2.25: 1.5 for the cut times 1.5 for the chuck). Cutting forces under 50 N are not judged.
@@ -29,7 +29,6 @@ from numpy.typing import NDArray
 from auditor.checks._judging import SMALL_FORCE, lasting, rows_of, threshold
 from auditor.checks._remedy import depth_within, feed_within, feed_word, length
 from auditor.checks._words import figure, finding_at
-from auditor.declared.model import Workholding
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind
 from auditor.mechanics.clamping import centrifugal_force, grip_for_cut, grip_for_tilting, grip_left
@@ -42,6 +41,8 @@ LIMITS = (
 )
 
 Floats = NDArray[np.float64]
+
+USUAL_FRICTION = 0.15  # smooth jaws on raw stock
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
@@ -58,14 +59,15 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if run.job.workpiece.material.kc11 is None:
         yield NotJudged(CHECK, f"no force pair is known for {run.job.workpiece.material.name}")
         return
-    if (holding.jaw_mass is None or holding.jaw_radius is None) and not holding.grip_inside:
+    flying = holding.kind != "collet" and not holding.grip_inside
+    if flying and (holding.jaw_mass is None or holding.jaw_radius is None):
         yield NotJudged(CHECK, "workholding.jaw_mass or jaw_radius is not declared: the grip lost by speed is left out")
     yield from _judge_moves(run)
 
 
 def _judge_moves(run: Run) -> Iterator[Finding]:
-    loads, holding = run.prediction.loads, run.job.workholding
-    share = used_share(loads, holding)
+    loads = run.prediction.loads
+    share = used_share(run, loads)
     least, better = (threshold(run, limit) for limit in LIMITS)
     worst: dict[int, tuple[float, int]] = {}
     for index in np.unique(loads.move[np.nan_to_num(share) > 1.0 / better]):
@@ -77,36 +79,43 @@ def _judge_moves(run: Run) -> Iterator[Finding]:
         yield _finding(run, index, used, share, least, better)
 
 
-def used_share(loads: Loads, holding: Workholding) -> Floats:
+def used_share(run: Run, loads: Loads) -> Floats:
     """Grip needed over grip left, NaN where the force is too small to judge."""
-    needed, left = _grips(loads, holding)
+    needed, left = _grips(run, loads)
     with np.errstate(divide="ignore", invalid="ignore"):
         share = np.where(left > 0.0, needed / np.maximum(left, 1e-9), np.inf)
     return np.where(loads.cutting >= SMALL_FORCE, share, np.nan)
 
 
-def _grips(loads: Loads, holding: Workholding) -> tuple[Floats, Floats]:
+def _grips(run: Run, loads: Loads) -> tuple[Floats, Floats]:
     """Grip needed and grip left, N."""
-    known = np.isfinite(loads.cutting)
-    cutting = np.where(known, loads.cutting, 0.0)
-    axial, radial = np.nan_to_num(loads.force_z), np.abs(np.nan_to_num(loads.force_x))
-    grip, friction = holding.grip_diameter or 1.0, holding.friction or 0.15
-    across = 2.0 * np.nan_to_num(loads.outermost)
-    slip = grip_for_cut(cutting, axial, across, grip, friction)
-    lever = np.maximum(holding.stick_out + loads.z, 0.0)
-    tilt = grip_for_tilting(cutting, radial, lever, grip) if holding.kind == "chuck" else 0.0 * slip
+    holding = run.job.workholding
+    grip, friction = holding.grip_diameter or 1.0, holding.friction or USUAL_FRICTION
+    turning = np.nan_to_num(loads.torque) * 2000.0 / grip  # N at the gripped diameter
+    slip = grip_for_cut(turning, np.nan_to_num(loads.force_z), grip, grip, friction)
+    tilt = _tilting(run, loads, grip) if holding.kind == "chuck" else 0.0 * slip
     lost = 0.0 * slip
     if holding.jaw_mass is not None and holding.jaw_radius is not None:
         lost = centrifugal_force(holding.jaw_mass, holding.jaw_radius, np.nan_to_num(loads.rpm), holding.jaws)
     left = grip_left(holding.grip_force or 0.0, lost, inside=holding.grip_inside)
-    return np.where(known, np.maximum(slip, tilt), np.nan), np.asarray(left)
+    return np.where(np.isfinite(loads.cutting), np.maximum(slip, tilt), np.nan), np.asarray(left)
+
+
+def _tilting(run: Run, loads: Loads, grip: float) -> Floats:
+    """Grip needed against tilting, N; the lips of a drill balance each other and tilt nothing."""
+    drills = {number for number, tool in run.job.tools.items() if tool.kind == "drilling"}
+    balanced = np.isin(loads.move, [move.index for move in run.path.moves if move.tool in drills])
+    across = np.where(balanced, 0.0, np.nan_to_num(loads.cutting))
+    radial = np.where(balanced, 0.0, np.abs(np.nan_to_num(loads.force_x)))
+    lever = np.maximum(run.job.workholding.stick_out + loads.z, 0.0)
+    return np.asarray(grip_for_tilting(across, radial, lever, grip))
 
 
 def _finding(run: Run, index: int, used: float, share: Floats, least: float, better: float) -> Finding:
-    loads, holding, move = run.prediction.loads, run.job.workholding, run.path.moves[index]
+    loads, move = run.prediction.loads, run.path.moves[index]
     own = rows_of(loads, index)
     row = own.start + int(np.nanargmax(share[own]))
-    needed, left = (float(column[row]) for column in _grips(loads, holding))
+    needed, left = (float(column[row]) for column in _grips(run, loads))
     safety = 1.0 / used
     level, limit = (Level.STOP, least) if safety < least else (Level.REVIEW, better)
     fate = "The work can slip or tilt out of the jaws" if level is Level.STOP else "The grip is thin for this cut"
@@ -114,8 +123,8 @@ def _finding(run: Run, index: int, used: float, share: Floats, least: float, bet
               f"{figure(needed / 1000)} kN; that is {figure(safety, 2)} times, {figure(limit, 2)} is wanted (VDI 3106)."
     ways = []
     if move.kind is not Kind.THREAD:
-        slower = feed_within(run, move, lambda what: used_share(what, holding), 1.0 / limit)
-        shallower = depth_within(run, move, lambda what: used_share(what, holding), 1.0 / limit)
+        slower = feed_within(run, move, lambda what: used_share(run, what), 1.0 / limit)
+        shallower = depth_within(run, move, lambda what: used_share(run, what), 1.0 / limit)
         ways = [feed_word(run, move, slower)] if slower else []
         ways += [f"depth {length(run, shallower)}"] if shallower else []
     remedy = f"Held with {' or '.join(ways)}, or with more grip." if ways else "More grip, or a shorter stick-out."

@@ -38,7 +38,10 @@ Floats = NDArray[np.float64]
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Blocks that load a tool over its declared limit."""
     loads = run.prediction.loads
-    bounds = {number: tool.force_limit for number, tool in run.job.tools.items() if tool.force_limit is not None}
+    bounds = {
+        number: tool.force_limit for number, tool in run.job.tools.items()
+        if tool.force_limit is not None and tool.kind != "drilling"  # the lips of a drill balance each other
+    }
     if not bounds or not len(loads.move):
         return
     tools = [bounds.get(move.tool, np.inf) if move.tool is not None else np.inf for move in run.path.moves]

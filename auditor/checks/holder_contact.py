@@ -84,7 +84,8 @@ def _bar_in_bore(run: Run, cut: Cut) -> Finding | None:
     if deep is None or deep < tool.nose_radius + 5.0:
         return None
     row = cut.row_of_largest(-loads.z)
-    bore = 2.0 * float(loads.r[row])
+    deepest = loads.z[cut.rows] <= loads.z[row] + 0.5
+    bore = 2.0 * float(loads.r[cut.rows][deepest].max())
     share, most = tool.bar_diameter / bore if bore > 0.0 else 0.0, threshold(run, LIMITS[0])
     if share <= most:
         return None

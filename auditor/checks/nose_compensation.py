@@ -24,7 +24,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 
-from auditor.checks._cuts import Cut, cuts
+from auditor.checks._cuts import Cut, cuts, roughs
 from auditor.checks._judging import origin, threshold
 from auditor.checks._remarks import findings_of
 from auditor.checks._words import figure, finding_at, micro
@@ -50,7 +50,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Faults of compensation, and finished slopes and arcs without it."""
     yield from findings_of(run, CHECK, LEVELS)
     for cut in cuts(run):
-        if cut.move.compensation == "off" and run.simulation.final_surface[cut.move.index]:
+        if cut.move.compensation == "off" and not roughs(cut) and run.simulation.final_surface[cut.move.index]:
             finding = _uncompensated(run, cut)
             if finding is not None:
                 yield finding

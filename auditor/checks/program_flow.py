@@ -28,13 +28,13 @@ CHECK = "program-flow"
 LIMITS = ()
 STOPS = ("target-missing", "endless", "travel-limit")
 REVIEWS = (
-    "end-missing", "program-not-called", "subprogram-missing", "repeats-main", "number-repeated",
+    "end-missing", "program-not-called", "subprogram-missing", "number-repeated",
     "return-through-point", "word-repeated", "code-group-repeated", "dwell", "preset", "data-input",
     "speed-in-thread", "tool-in-motion",
 )
 NOTES = (
-    "m-codes-many", "spindle-left-on", "coolant", "work-zero-changed", "local-shift", "home-unknown", "paren",
-    "semicolon", "safe-start",
+    "m-codes-many", "repeats-main", "spindle-left-on", "coolant", "work-zero-changed", "local-shift", "home-unknown",
+    "paren", "semicolon", "safe-start",
 )
 LEVELS = {
     **dict.fromkeys(STOPS, Level.STOP),

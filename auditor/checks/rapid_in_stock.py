@@ -67,7 +67,7 @@ def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
             message = "The two axes do not run in a straight line: each runs at its own rapid rate, and the bent " \
                 f"path goes through the stock {place}, {deep} deep." + (" The rates are assumed." if assumed else "")
         case "near":
-            if contact.depth >= threshold(run, LIMITS[0]):
+            if contact.depth >= threshold(run, LIMITS[0]) - 0.01:
                 return
             level, message = Level.REVIEW, f"The rapid ends {figure(contact.depth, 2)} mm from raw stock {place}; " \
                 f"raw sizes vary. {origin(run, LIMITS)}"

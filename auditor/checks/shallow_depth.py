@@ -23,7 +23,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
-from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_errors, tolerance_third, wipes_outwards
+from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_errors, roughs, tolerance_third, wipes_outwards
 from auditor.checks._judging import origin, threshold
 from auditor.checks._words import depth, figure, finding_at, force, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -38,7 +38,9 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     errors = diameter_errors(run)
     for cut in cuts(run):
         deep = cut.largest(run.prediction.loads.depth)
-        if cut.tool.shape == "R" or wipes_outwards(cut) or not SPRING_PASS < deep < cut.tool.nose_radius:
+        if cut.tool.shape == "R" or roughs(cut) or wipes_outwards(cut):
+            continue
+        if not SPRING_PASS < deep < cut.tool.nose_radius:
             continue
         finding = _grave(run, cut, deep, cut.largest(errors))
         if finding is not None:
@@ -66,14 +68,14 @@ def _story(run: Run, cut: Cut, deep: float) -> str:
 def _grave(run: Run, cut: Cut, deep: float, error: float) -> Finding | None:
     """A review where the shallow cut spoils the part."""
     row = cut.row_of_largest(run.prediction.loads.depth)
-    story = _story(run, cut, deep)
     third, skin = tolerance_third(run), threshold(run, LIMITS[0])
     if run.job.workpiece.material.work_hardening and deep < skin:
-        return finding_at(run, CHECK, Level.REVIEW, row, f"{story} It runs in the skin the last pass hardened. "
-                          f"{origin(run, LIMITS)}", value=deep, limit=skin, unit="mm",
+        return finding_at(run, CHECK, Level.REVIEW, row, f"{_story(run, cut, deep)} It runs in the skin "
+                          f"the last pass hardened. {origin(run, LIMITS)}", value=deep, limit=skin, unit="mm",
                           remedy=f"At least {depth(skin)} mm deep.")
     if third is not None and run.simulation.final_surface[cut.move.index] and error > third:
-        return finding_at(run, CHECK, Level.REVIEW, row, f"{story} That bends the work so that the diameter "
-                          f"comes out {micro(error)} too large, more than a third of the tolerance.", value=error,
-                          limit=third, unit="mm", remedy="A smaller nose radius or a freer-cutting edge.")
+        return finding_at(run, CHECK, Level.REVIEW, row, f"{_story(run, cut, deep)} That bends the work so "
+                          f"that the diameter comes out {micro(error)} too large, more than a third of the "
+                          "tolerance.", value=error, limit=third, unit="mm",
+                          remedy="A smaller nose radius or a freer-cutting edge.")
     return None

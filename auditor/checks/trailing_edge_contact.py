@@ -12,9 +12,9 @@ Why
 Formula and source
     Plane geometry of ISO 3002-1: towards the axis up to the minor edge's angle, 180 degrees less cutting edge angle
     less included angle, less a margin of 2 degrees; away from the axis up to the cutting edge angle less 3 degrees
-    (margins: common practice). Stop: the minor edge is in the metal beyond its angle, the whole of it is
-    in a move straight towards the axis, or the path leaves the axis steeper than the main edge. Review: inside the
-    margin. Past the centre: review from twice the nose radius, stop from that and 1 mm more.
+    (margins: common practice). Stop: the minor edge is in the metal beyond its angle, or the whole of it
+    is in a move straight towards the axis. Review: inside the margin; a finishing path away from the axis that is
+    steeper than the main edge. Past the centre: review from twice the nose radius, stop from that and 1 mm more.
 
 Remedy
     A slimmer insert (55 or 35 degrees), a holder with another edge angle, a grooving tool for the plunge, or facing
@@ -88,9 +88,9 @@ def _judge_direction(run: Run, cut: Cut, trailing: float, body: float) -> Findin
                             f"trailing edge, at {figure(minor)} deg, drags", "A slimmer insert.")
         return None
     limit = float(steepest_out_copy(tool.cutting_edge_angle))
-    if angle > tool.cutting_edge_angle + 1e-6:
-        return _finding(run, cut, Level.STOP, angle, limit, f"The path leaves the axis at {figure(angle)} deg, steeper "
-                        f"than the edge at {figure(tool.cutting_edge_angle)} deg: the edge is driven into the shoulder",
+    if angle > tool.cutting_edge_angle + 1e-6 and run.simulation.final_surface[cut.move.index]:
+        return _finding(run, cut, Level.REVIEW, angle, limit, f"The path leaves the axis at {figure(angle)} deg, "
+                        f"steeper than the edge at {figure(tool.cutting_edge_angle)} deg: the wall keeps that angle",
                         "A holder with a larger edge angle (93 or 95 deg).")
     return None
 
