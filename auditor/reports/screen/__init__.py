@@ -8,6 +8,7 @@ from collections.abc import Sequence
 from auditor.findings import Audit, Level
 from auditor.reports import Outcome, Unreadable, View
 from auditor.reports._figures import duration
+from auditor.reports._grounds import by_weight
 from auditor.reports.screen import findings, grounds, tools
 from auditor.reports.screen.paper import COLOURS, Paper, signs
 
@@ -60,7 +61,7 @@ def _verdict(paper: Paper, audit: Audit) -> None:
 def _beside_clear(paper: Paper, audit: Audit) -> None:
     """What the word clear does not cover stands right beside it."""
     if audit.not_judged:
-        names = ", ".join(dict.fromkeys(item.check for item in grounds.by_weight(audit.not_judged)))
+        names = ", ".join(dict.fromkeys(item.check for item in by_weight(audit.not_judged)))
         paper.paragraph(("clear of what was judged; not judged: ", "bold"), names, margin=2)
     else:
         paper.paragraph("clear of what was judged: a prediction, no promise", margin=2)

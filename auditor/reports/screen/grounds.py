@@ -3,17 +3,15 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 
 from auditor.declared.model import Assumption
 from auditor.findings import Audit, Finding, NotJudged
+from auditor.reports._grounds import CAUTION, by_weight
 from auditor.reports.screen.paper import Paper
 
 _BLOCKS_NAMED = 12
 _ASSUMPTIONS_NAMED = 5
-
-# Checks that guard people come first where something could not be judged.
-_GRAVEST = ("chuck-grip", "spindle-speed", "jaw-contact", "tailstock-contact", "bar-whip")
 
 # Defaults that move the figures most come first: which material, which edge, which machine.
 _WEIGHTIEST = (
@@ -21,11 +19,6 @@ _WEIGHTIEST = (
     "pocket_rake", "efficiency", "friction", "edge_radius", "rapid", "tool_change",
 )
 _TOOL = re.compile(r"tools\.(\d+)\.(.+)")
-
-CAUTION = (
-    "A prediction from published laws, not a prove-out. Guards, the speed and grip limits of the machine and chuck "
-    "manuals, local rules and qualified people decide; a clear verdict is no promise."
-)
 
 
 def write(paper: Paper, audit: Audit) -> None:
@@ -42,11 +35,6 @@ def write(paper: Paper, audit: Audit) -> None:
             f"Gauges: {sure} up to the band, {band} the band of the prediction, {value} predicted, {limit} limit."
         )
     paper.paragraph(CAUTION)
-
-
-def by_weight(items: Iterable[NotJudged]) -> list[NotJudged]:
-    """Not-judged items, those that guard people first."""
-    return sorted(items, key=lambda item: _GRAVEST.index(item.check) if item.check in _GRAVEST else len(_GRAVEST))
 
 
 def _title(paper: Paper, text: str) -> None:
