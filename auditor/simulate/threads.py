@@ -7,7 +7,7 @@ that thickness ``infeed * sine`` and area ``infeed * extent`` follow the rules o
 
 from __future__ import annotations
 
-import math
+from collections.abc import Iterator
 from dataclasses import dataclass
 
 import numpy as np
@@ -19,7 +19,10 @@ from auditor.simulate.outline import Direction, Outline
 from auditor.simulate.pieces import Piece, straight
 from auditor.simulate.samples import Edge, Floats, Ints
 
+SAME = 1e-6  # mm
 GRAZING = 1e-4  # mm: an edge that only slides along the flank it cut before takes no chip
+
+Interval = tuple[float, float]
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,15 +46,16 @@ def thread_pass(move: Move, outline: Outline, stock: BaseGeometry) -> ThreadCut 
         return None
     turns = _turns(piece, move.lead)
     sections = shapely.polygons([outline.hull() + _at(piece, turn) for turn in turns])
-    chips = shapely.area(shapely.intersection(sections, stock))
-    cutting = np.flatnonzero(chips > GRAZING**2)
+    chips = shapely.intersection(sections, stock)
+    chip_area = shapely.area(chips)
+    cutting = np.flatnonzero(chip_area > GRAZING**2)
     if len(cutting) == 0:
         return None
     edge = outline.edge(_inward(outline))
     rows = [
-        (turns[turn], low, high, ordinal, float(chips[turn]))
+        (turns[turn], low, high, ordinal, float(chip_area[turn]))
         for turn in cutting
-        for ordinal, (low, high) in enumerate(_engaged(edge, _at(piece, turns[turn]), stock))
+        for ordinal, (low, high) in enumerate(_engaged(edge, _at(piece, turns[turn]), chips[turn], stock.boundary))
     ]
     if not rows:
         return None
@@ -82,29 +86,16 @@ def _inward(outline: Outline) -> Direction:
     return (0.0, -1.0) if abs(nodes[:, 1].min()) < abs(nodes[:, 1].max()) else (0.0, 1.0)
 
 
-def _engaged(edge: Edge, at: tuple[float, float], stock: BaseGeometry) -> list[tuple[float, float]]:
-    """Across-intervals of the edge that lie inside the stock."""
+def _engaged(edge: Edge, at: tuple[float, float], chip: BaseGeometry, surface: BaseGeometry) -> Iterator[Interval]:
+    """Across-intervals of the edge that cut into the stock, not those that slide along a flank cut before."""
     dz, dr = edge.direction
-    nodes = np.stack((edge.along * dz - edge.across * dr, edge.along * dr + edge.across * dz), axis=1) + at
-    inside = shapely.intersection(shapely.linestrings(nodes), stock)
-    intervals = []
-    for part in shapely.get_parts(inside):
-        if part.length < GRAZING:  # a point, where the edge only touches
-            continue
-        middle = shapely.line_interpolate_point(part, 0.5, normalized=True)
-        if shapely.distance(middle, stock.boundary) < GRAZING:
-            continue
-        across = (shapely.get_coordinates(part) - at) @ np.array((-dr, dz))
-        intervals.append((float(across.min()), float(across.max())))
-    return _merged(sorted(intervals))
-
-
-def _merged(intervals: list[tuple[float, float]]) -> list[tuple[float, float]]:
-    """Intervals that touch belong to one stretch."""
-    stretches: list[tuple[float, float]] = []
-    for low, high in intervals:
-        if stretches and low <= stretches[-1][1] + GRAZING:
-            stretches[-1] = (stretches[-1][0], max(high, stretches[-1][1]))
-        else:
-            stretches.append((low, high))
-    return [(low, high) for low, high in stretches if math.isfinite(low) and high > low]
+    corners = (shapely.get_coordinates(chip) - at) @ np.array((-dr, dz))
+    ends = np.unique(np.concatenate((edge.across, np.clip(corners, edge.across[0], edge.across[-1]))))
+    ends = ends[np.append(True, np.diff(ends) > SAME)]
+    across = 0.5 * (ends[:-1] + ends[1:])
+    along = np.interp(across, edge.across, edge.along)
+    middles = shapely.points(at[0] + along * dz - across * dr, at[1] + along * dr + across * dz)
+    cuts = (shapely.distance(middles, chip) < SAME) & (shapely.distance(middles, surface) > GRAZING)
+    begins = np.flatnonzero(cuts & ~np.append(False, cuts[:-1]))
+    behind = np.flatnonzero(cuts & ~np.append(cuts[1:], False)) + 1
+    return ((float(ends[first]), float(ends[last])) for first, last in zip(begins, behind, strict=True))
