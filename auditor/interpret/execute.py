@@ -176,6 +176,8 @@ def _check_repeats(run: Run, words: BlockWords) -> None:
         return
     if len(words.values) > len(words.by_letter) + len(words.functions) + len(words.unknown_codes) + len(words.m_codes):
         _note_repeated(run, words)
+    if words.only_moves:
+        return
     groups = [group_of(function) for function in set(words.functions)]
     for group in sorted(set(groups) - {"one-shot"}):
         if groups.count(group) > 1:

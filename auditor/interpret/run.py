@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import Literal
 
-from auditor.declared.control_settings import SETTINGS, setting
+from auditor.declared.control_settings import SETTINGS, choice, setting
 from auditor.declared.model import Control, Job, Point, System, Tool
 from auditor.interpret import corners
 from auditor.interpret.compensated_run import CompensatedRun
@@ -67,6 +67,13 @@ class Run:
     first_zero: str | None = None  # the work zero taken for the declared Z0
     called_name: str | None = None  # M98 <NAME>
     ended: str | None = None
+
+    doglegs: bool = field(init=False)
+    rapid_speed_at_end: bool = field(init=False)
+
+    def __post_init__(self) -> None:
+        self.doglegs = choice(self.control, "rapid_path") == "dogleg"
+        self.rapid_speed_at_end = choice(self.control, "surface_speed_in_rapid") == "end point"
 
     @property
     def control(self) -> Control:

@@ -9,6 +9,7 @@ from auditor.declared.model import Point
 from auditor.interpret.moves import Feed, Spindle
 
 NOWHERE = Point(0.0, 0.0)
+STANDING = Spindle()
 
 
 @dataclass(slots=True)
@@ -24,10 +25,15 @@ class SpindleState:
     stopped_line: int = 0  # of the last M5, 0 before any
     speed_mode_line: int | None = None  # G96/G97 changed here without S, not yet restated
     unclamped_line: int | None = None  # G96 here without any limit so far
+    commanded: Spindle = STANDING  # as last asked for
 
     def command(self) -> Spindle:
-        """The commanded spindle, as a move carries it."""
-        return Spindle(self.direction, self.mode, self.value if self.certain else None, self.clamp)
+        """The commanded spindle, as moves carry it: one object for all moves under the same command."""
+        value, last = self.value if self.certain else None, self.commanded
+        same = last.direction == self.direction and last.mode == self.mode
+        if not (same and last.value == value and last.clamp == self.clamp):
+            self.commanded = Spindle(self.direction, self.mode, value, self.clamp)
+        return self.commanded
 
 
 @dataclass(slots=True)
@@ -39,10 +45,15 @@ class FeedState:
     certain: bool = True
     line: int = 0  # of the F word
     given_in: Literal["rev", "min"] = "rev"  # the mode in which F was given
+    commanded: Feed | None = None  # as last asked for
 
     def command(self) -> Feed | None:
-        """The commanded feed; None when there is none, or one that moves nothing."""
-        return None if self.value is None or self.value <= 0.0 else Feed(self.mode, self.value)
+        """The commanded feed, one object for all moves under it; None when there is none that moves anything."""
+        if self.value is None or self.value <= 0.0:
+            return None
+        if self.commanded is None or self.commanded.value != self.value or self.commanded.mode != self.mode:
+            self.commanded = Feed(self.mode, self.value)
+        return self.commanded
 
 
 @dataclass(slots=True)

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from dataclasses import replace
 
-from auditor.declared.control_settings import choice
 from auditor.declared.model import Point
 from auditor.interpret import corners
 from auditor.interpret.compensated_run import joined
@@ -81,12 +80,25 @@ def dressed(run: Run, stroke: Stroke) -> Stroke:
     """The stroke with line, block, feed and spindle of the block that made it."""
     feed, spindle = stroke.feed, stroke.spindle or run.state.spindle.command()
     if stroke.kind is Kind.RAPID:
-        if spindle.mode == "surface" and choice(run.control, "surface_speed_in_rapid") == "end point":
+        if spindle.mode == "surface" and run.rapid_speed_at_end:
             spindle = replace(spindle, fixed_diameter=2.0 * abs(stroke.end.r))
     elif feed is None and run.state.feed.certain:
         feed = run.state.feed.command()
-    line, block = stroke.line or run.words.line, stroke.block or run.words.label
-    return replace(stroke, feed=feed, spindle=spindle, line=line, block=block)
+    return Stroke(  # not by replace: this runs for every move of a program
+        stroke.kind,
+        stroke.end,
+        stroke.centre,
+        stroke.clockwise,
+        feed,
+        stroke.lead,
+        stroke.cycle_pass,
+        stroke.thread_depth,
+        stroke.dwell_after,
+        spindle,
+        stroke.line or run.words.line,
+        stroke.block or run.words.label,
+        stroke.reversed_spindle,
+    )
 
 
 def write(
@@ -126,7 +138,7 @@ def write(
         offset=tool.offset,
         compensation=run.cycle_side or run.compensated.side or run.state.compensation,
         thread_depth=stroke.thread_depth,
-        dogleg=choice(run.control, "rapid_path") == "dogleg",
+        dogleg=run.doglegs,
         dwell_after=stroke.dwell_after,
         provisional=_in_doubt(run, stroke.kind),
         new_stock_state=run.stock_in_doubt,
