@@ -64,12 +64,12 @@ def _slim(run: Run, cut: Cut, where: str) -> Finding | None:
     row = cut.row_of_largest(loads.cutting if run.job.workpiece.material.kc11 else loads.area)
     rake, wedge = float(loads.rake[row]), wedge_angle(cut.tool)
     if rake > rake_limit:
-        what, value, limit = f"effective rake {angle(rake)}", rake, rake_limit
+        what, value, limit, which = f"an effective rake of {angle(rake)}", rake, rake_limit, LIMITS[:1]
     elif wedge < wedge_limit:
-        what, value, limit = f"a wedge of {wedge:.0f} deg", wedge, wedge_limit
+        what, value, limit, which = f"a wedge of {wedge:.0f} deg", wedge, wedge_limit, LIMITS[1:2]
     else:
         return None
-    message = f"A slim edge meets {where}: {what} chips there. {origin(run, LIMITS)}"
+    message = f"A slim edge meets {where}: {what} chips there. {origin(run, which)}"
     return finding_at(run, CHECK, Level.REVIEW, row, message, value=value, limit=limit, unit="deg", remedy=REMEDY)
 
 

@@ -134,8 +134,10 @@ def _finding(run: Run, cut: Cut, left: Left) -> Finding:
     assumed = any(item.about == f"tools.{cut.tool.number}.clearance_angle" for item in run.job.assumptions)
     certain = cut.tool.pocket_known and not assumed
     level = Level.STOP if left.angle <= 0.0 and certain else Level.REVIEW
-    shares = f"insert {figure(left.by_insert)}, pocket {left.by_pocket:+.1f}, feed {-left.by_feed:+.1f}, height " \
-             f"{-left.by_height:+.1f} deg"
+    shares = f"insert {figure(left.by_insert)} deg"
+    for name, given in (("pocket", left.by_pocket), ("feed", -left.by_feed), ("height", -left.by_height)):
+        if abs(given) >= 0.05:
+            shares += f", {name} {given:+.1f}"
     fate = "The flank rubs on the work" if left.angle <= 0.0 else "The flank nearly rubs on the work"
     message = f"{fate}: {figure(left.angle)} deg of working clearance are left ({shares}). {origin(run, LIMITS)}"
     if not certain:

@@ -23,7 +23,7 @@ from collections.abc import Iterator
 import numpy as np
 
 from auditor.checks._cuts import SPRING_PASS, Cut, along_axis, cuts
-from auditor.checks._judging import lasting, origin, threshold
+from auditor.checks._judging import lasting, threshold
 from auditor.checks._words import feed, figure, finding_at
 from auditor.checks.breaker_window import LIMITS as WINDOW_LIMITS
 from auditor.checks.breaker_window import chip_length
@@ -44,8 +44,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
             continue
         why = _why(run, cut)
         if why is not None:
-            message = f"The chip comes off as a string and nobody is there to clear it: {why}. " \
-                      f"{origin(run, LIMITS[:1])}"
+            message = f"The chip comes off as a string and nobody is there to clear it: {why}."
             yield finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, words=("F",),
                              remedy="More feed, or an insert with a chip-breaker for this cut.")
 
@@ -58,5 +57,6 @@ def _why(run: Run, cut: Cut) -> str | None:
     if tool.breaker_feed is not None and used < tool.breaker_feed[0]:
         return f"feed {feed(used)} is under the chip-breaker's window from {feed(tool.breaker_feed[0])}"
     if used > 0.0 and deep / used > threshold(run, LIMITS[0]):
-        return f"the chip is {figure(deep / used)} times as wide as thick"
+        return f"the chip is {figure(deep / used)} times as wide as thick, {figure(threshold(run, LIMITS[0]))} is " \
+               f"the most ({LIMITS[0].provenance})"
     return None
