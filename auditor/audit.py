@@ -5,7 +5,7 @@ from __future__ import annotations
 import datetime
 import hashlib
 from collections import Counter
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import replace
 from pathlib import Path
 
@@ -50,8 +50,42 @@ def audit_program(path: str | Path, job_path: str | Path | None = None) -> Audit
 
 
 def audit(job: Job, today: datetime.date | None = None) -> Audit:
-    """Audit the program that a job names."""
-    return _audit(job, today or datetime.date.today(), ())
+    """Audit the program that a job names, with block skip as declared and, where it matters, the other way."""
+    day = today or datetime.date.today()
+    own = _audit(job, day, ())
+    if all(block.skip is None for block in own.run.text.blocks):
+        return own
+    turned = not job.control.block_skip
+    try:
+        other = _audit(replace(job, control=replace(job.control, block_skip=turned)), day, ())
+    except ProgramError:  # nothing moves with the switch the other way
+        return own
+    findings = _judged(own.run, [*own.findings, *_only_in(other, own, turned)], day)
+    return replace(own, findings=tuple(findings), verdict=_verdict(findings, own.coverage))
+
+
+def _only_in(other: Audit, own: Audit, skipping: bool) -> Iterator[Finding]:
+    """What would be wrong with the block-skip switch the other way, as something to decide."""
+    known = {(finding.check, finding.line) for finding in own.findings if finding.level is not Level.NOTE}
+    switch = "on" if skipping else "off"
+    for finding in other.findings:
+        if finding.level is not Level.NOTE and (finding.check, finding.line) not in known:
+            yield Finding(
+                check="program-flow",
+                level=Level.REVIEW,
+                line=finding.line,
+                block=finding.block,
+                tool=finding.tool,
+                message=f"With block skip {switch}: {finding.level}, {finding.check}. {finding.message}",
+                remedy=finding.remedy,
+            )
+
+
+def _judged(run: Run, findings: Iterable[Finding], today: datetime.date) -> list[Finding]:
+    """Findings in program order, within a line the gravest first, with fingerprints and decisions."""
+    order = list(Level)
+    ranked = sorted(findings, key=lambda finding: (finding.line, order.index(finding.level), finding.check))
+    return _accepted(_fingerprinted(ranked, run.text), run.job.accepted, today)
 
 
 def _audit(job: Job, today: datetime.date, later: tuple[Path, ...]) -> Audit:
@@ -68,7 +102,7 @@ def _audit(job: Job, today: datetime.date, later: tuple[Path, ...]) -> Audit:
     prediction = predict(path, simulation, job)
     run = Run(job=job, text=text, path=path, simulation=simulation, prediction=prediction, limits=limits)
     findings, not_judged = _judge(run, all_rules.values())
-    findings = _accepted(_fingerprinted(findings, text), job.accepted, today)
+    findings = _judged(run, findings, today)
     coverage = _coverage(path)
     return Audit(
         run=run,
@@ -136,8 +170,6 @@ def _judge(run: Run, all_rules: Iterable[Rule]) -> tuple[list[Finding], list[Not
                 not_judged.append(answer)
             else:
                 findings.append(answer)
-    # Program order; within a line the gravest first.
-    findings.sort(key=lambda finding: (finding.line, list(Level).index(finding.level), finding.check))
     return findings, not_judged
 
 
