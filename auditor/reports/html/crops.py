@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+import math
 from bisect import bisect_left, bisect_right
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 import shapely
@@ -17,10 +18,14 @@ from auditor.reports._figures import figure
 from auditor.reports.html import section, setting
 from auditor.reports.html.frame import Frame
 from auditor.reports.html.svg import Drawing
-from auditor.simulate.pieces import pieces
+from auditor.simulate.pieces import Piece, pieces
+from auditor.simulate.stock import swept
+from auditor.simulate.tool_outline import tool_outline
 
 WIDTH, HEIGHT = 300.0, 200.0  # px
 _NARROWEST, _WIDEST = 6.0, 90.0  # mm across
+_ON_PATH = 0.02  # mm beside its path at which a point still counts as on it
+_MOST_PIECES = 60  # of an arc that are swept for a picture
 
 
 @dataclass(frozen=True, slots=True)
@@ -53,14 +58,14 @@ def draw(stages: Stages, finding: Finding, number: int, key: str) -> Markup | No
     run = stages.run
     if finding.at is None or finding.move is None:
         return None
-    move = run.path.moves[finding.move]
+    move = _cutting(run, finding.at, run.path.moves[finding.move])
     frame = _frame(run, finding.at, move)
     drawing = Drawing(f"{key}c{number}", WIDTH, HEIGHT, f"The cut of line {finding.line}", _said(finding, frame))
     drawing.add("rect", x=0, y=0, width=WIDTH, height=HEIGHT, class_="field")
-    before, after = frame.inside(stages.before(move.index)), frame.inside(stages.after(move.index))
-    frame.shape(drawing, before, "left", section.hatch(key))
+    now, then = _stock(stages, move, finding.at, frame)
+    frame.shape(drawing, now, "left", section.hatch(key))
     if move.kind is not Kind.RAPID:
-        frame.shape(drawing, before.difference(after), "chip")
+        frame.shape(drawing, now.difference(then), "chip")
     setting.draw(drawing, frame, run.job)
     section.finished(drawing, frame, run)
     drawing.path(frame.points([(frame.z_low, 0.0), (frame.z_high, 0.0)]), "axis")
@@ -68,6 +73,38 @@ def draw(stages: Stages, finding: Finding, number: int, key: str) -> Markup | No
     _tool(drawing, frame, run, finding)
     _scale_bar(drawing, frame)
     return drawing.svg("crop")
+
+
+def _cutting(run: Run, at: Point, move: Move) -> Move:
+    """The move that ends at the finding's place, where the one that is blamed does not lead there."""
+    if _way_to(move, at) is not None:
+        return move
+    later = (other for other in run.path.moves[move.index:] if other.tool == move.tool and other.end is not None)
+    return next((other for other in later if other.end is not None and math.dist(other.end, at) < _ON_PATH), move)
+
+
+def _way_to(move: Move, at: Point) -> list[Piece] | None:
+    """The straight pieces of a move as far as a point on it; None when it does not lead there."""
+    way: list[Piece] = []
+    for piece in pieces(move):
+        along = (at.z - piece.start.z) * piece.direction[0] + (at.r - piece.start.r) * piece.direction[1]
+        beside = (at.z - piece.start.z) * piece.direction[1] - (at.r - piece.start.r) * piece.direction[0]
+        if abs(beside) < _ON_PATH and -_ON_PATH <= along <= piece.length + _ON_PATH:
+            return [*way, replace(piece, length=max(along, 0.0))]
+        way.append(piece)
+    return None
+
+
+def _stock(stages: Stages, move: Move, at: Point, frame: Frame) -> tuple[BaseGeometry, BaseGeometry]:
+    """Stock with the tool where the finding is, and when the move has ended."""
+    before, after = frame.inside(stages.before(move.index)), frame.inside(stages.after(move.index))
+    tool = None if move.tool is None else stages.run.job.tools.get(move.tool)
+    way = _way_to(move, at)
+    if tool is None or way is None or move.kind is Kind.RAPID:
+        return before, after
+    hull = tool_outline(tool).hull()
+    gone = shapely.union_all([frame.inside(swept(hull, piece.step, piece.start)) for piece in way[-_MOST_PIECES:]])
+    return before.difference(gone), after
 
 
 def _frame(run: Run, at: Point, move: Move) -> Frame:

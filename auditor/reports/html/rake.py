@@ -192,12 +192,12 @@ def _angles(drawing: Drawing, tool: Tool, found: Situation) -> None:
     drawing.path([(x, y), _polar(found.rake, 225.0)], "effective")
     _arc(drawing, 0.0, found.rake, 205.0)
     _arc(drawing, 90.0, 90.0 - found.clearance, 118.0)
-    drawing.text(WIDTH - 10, 20, f"effective rake {found.rake:+.0f}°", "angle", text_anchor="end")
+    drawing.text(WIDTH - 10, HEIGHT - 30, f"effective rake {found.rake:+.0f}°", "angle", text_anchor="end")
     drawing.text(WIDTH - 10, HEIGHT - 12, f"wedge {90.0 - tool.pocket_rake - tool.face_rake - found.clearance:.0f}°",
                  "angle", text_anchor="end")
     drawing.text(x - 8, HEIGHT - 12, f"clearance {found.clearance:.0f}°", "angle", text_anchor="end")
     if found.shear is not None:
-        drawing.text(WIDTH - 10, 38, f"shear plane {found.shear:.0f}°", "angle", text_anchor="end")
+        drawing.text(WIDTH - 10, HEIGHT - 48, f"shear plane {found.shear:.0f}°", "angle", text_anchor="end")
 
 
 def _polar(angle: float, reach: float) -> Point:

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 from markupsafe import Markup
 
 from auditor.declared.model import Assumption, Job, Material
-from auditor.findings import Audit, Finding, Level, NotJudged, Rule
+from auditor.findings import Audit, Finding, Level, NotJudged
 from auditor.interpret.moves import NotAudited
 from auditor.reports import Unreadable
 from auditor.reports._figures import duration
@@ -19,6 +19,7 @@ from auditor.reports._marks import Span, block_at, spans
 from auditor.reports._shares import shares
 from auditor.reports.html import curves, section
 from auditor.reports.html.cards import Card, cards
+from auditor.reports.html.explained import Explained, explained
 from auditor.reports.html.listing import Line, listing
 from auditor.reports.html.toolcards import ToolCard, tool_cards
 
@@ -48,7 +49,7 @@ class Sheet:
     not_judged: Sequence[NotJudged]
     assumptions: Sequence[Assumption]
     material: Material
-    rules: Sequence[Rule]
+    rules: Sequence[Explained]
     notes: Sequence[str]
     title_block: tuple[tuple[str, str], ...]
 
@@ -83,7 +84,7 @@ def sheet(audit: Audit, key: str) -> Sheet:
         lines=_lines(audit, single), not_audited=audit.coverage.not_audited, coverage=_coverage(audit),
         not_judged=by_weight(audit.not_judged), assumptions=audit.assumptions,
         material=run.job.workpiece.material,
-        rules=[rule for name, rule in sorted(audit.rules.items()) if name in spoken],
+        rules=[explained(rule, run.limits) for name, rule in sorted(audit.rules.items()) if name in spoken],
         notes=[note.message for note in run.text.notes], title_block=_title_block(run.job, audit),
     )
 
