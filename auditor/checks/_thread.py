@@ -6,6 +6,7 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 
 import numpy as np
+import shapely
 
 from auditor.checks._judging import rows_of
 from auditor.findings import Run
@@ -79,12 +80,18 @@ def _depths(run: Run, group: list[Move]) -> list[float]:
 
 
 def _surface(run: Run, group: list[Move]) -> float | None:
-    """Radius of the metal that the first pass meets."""
-    loads = run.prediction.loads
-    own = rows_of(loads, group[0].index)
-    reach = loads.outermost[own]
-    known = reach[np.isfinite(reach)]
-    return float(known.max()) if len(known) else None
+    """Radius of the metal that the first pass meets halfway along: the bore for passes that go outwards."""
+    stock, own = run.simulation.stock_before.get(group[0].index), rows_of(run.prediction.loads, group[0].index)
+    engaged = run.prediction.loads.z[own][run.prediction.loads.depth[own] > 0.0]
+    if stock is None or not len(engaged):
+        return None
+    z = float(np.median(engaged))
+    across = shapely.intersection(stock, shapely.linestrings([(z, 0.0), (z, stock.bounds[3] + 1.0)]))
+    if shapely.is_empty(across):
+        return None
+    _, inner, _, outer = shapely.bounds(across)
+    first, last = group[0].end_r, group[-1].end_r
+    return float(inner if first is not None and last is not None and last > first else outer)
 
 
 def _run_in(run: Run, group: list[Move]) -> float | None:

@@ -10,10 +10,11 @@ Why
 
 Formula and source
     Grip left = static grip less the jaws' centrifugal force (VDI 3106); a grip from inside gains by speed, which is
-    not credited. Need = the larger of sqrt((2 M / D)^2 + Ff^2) / friction for slipping (VDI 3106, J) and
-    3 x sqrt(Fc^2 + Fp^2) x distance from the jaws / D for tilting (estimate, 2 to 4 without an end stop). With a
-    tailstock or centre nothing tilts. Stop: under grip_safety times the need (1.5, VDI 3106). Review: under
-    grip_safety_squared (2.25: 1.5 for the cut times 1.5 for the chuck). Cutting forces under 50 N are not judged.
+    not credited. Need = the larger of sqrt((2 M / D)^2 + Fz^2) / friction for slipping (VDI 3106; Fz is the pull out
+    of the chuck, a push is taken by its face) and 3 x sqrt(Fc^2 + Fp^2) x distance from the jaws / D for tilting
+    (estimate, 2 to 4 without an end stop). With a tailstock or centre nothing tilts. Stop: under grip_safety times
+    the need (1.5, VDI 3106). Review: under grip_safety_squared (2.25: 1.5 for the cut times 1.5 for the chuck).
+    Cutting forces under 50 N are not judged.
 
 Remedy
     The feed or depth at which the same formulas keep the safety; more grip; a shorter stick-out; a lower speed.
@@ -92,7 +93,8 @@ def _grips(run: Run, loads: Loads) -> tuple[Floats, Floats]:
     holding = run.job.workholding
     grip, friction = holding.grip_diameter or 1.0, holding.friction or USUAL_FRICTION
     turning = np.nan_to_num(loads.torque) * 2000.0 / grip  # N at the gripped diameter
-    slip = grip_for_cut(turning, np.nan_to_num(loads.force_z), grip, grip, friction)
+    pull = np.maximum(-np.nan_to_num(loads.force_z), 0.0)  # a push is taken by the chuck's face
+    slip = grip_for_cut(turning, pull, grip, grip, friction)
     tilt = _tilting(run, loads, grip) if holding.kind == "chuck" else 0.0 * slip
     lost = 0.0 * slip
     if holding.jaw_mass is not None and holding.jaw_radius is not None:

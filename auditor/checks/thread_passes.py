@@ -141,7 +141,8 @@ def _thinnest(run: Run, thread: Thread) -> Doubt | None:
     thin = [infeed for infeed in thread.infeeds if SPRING < infeed < least - 1e-6]
     if not thin:
         return None
-    level = Level.REVIEW if hardening else Level.NOTE
+    closing = [infeed for infeed in thread.infeeds if infeed > SPRING][-1]
+    level = Level.REVIEW if hardening and min(thin) < closing else Level.NOTE  # a light last pass is common
     return Doubt(level, f"A pass takes only {figure(min(thin), 3)} mm and rubs; {figure(least, 3)} mm are wanted "
                  "(common practice).", "Fewer passes, or a larger least pass in the cycle.", min(thin), least, "mm")
 
