@@ -62,6 +62,8 @@ def harmless(text: str) -> str:
     >>> harmless("G1\\tX2\\x1b[31m")
     'G1 X2?[31m'
     """
+    if text.isascii() and text.isprintable():
+        return text
     return "".join(" " if sign == "\t" else "?" if _harmful(sign) else sign for sign in text)
 
 
