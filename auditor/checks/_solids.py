@@ -15,6 +15,7 @@ from auditor.simulate.tool_outline import tool_outline
 
 Floats = NDArray[np.float64]
 
+TOUCH = 0.01  # mm2; a smaller overlap is the chording of a nose
 JAW_HEIGHT = 30.0  # mm the jaws stand out beyond the work they grip, where only the grip is known (common size)
 CENTRE_ANGLE = 60.0  # deg, included, of a lathe centre (common size)
 TAIL_BEHIND = 200.0  # mm of tailstock that is watched behind its centre
@@ -31,6 +32,18 @@ def swept_area(outline: Floats, move: Move) -> BaseGeometry | None:
     if start is None or end is None:
         return None
     return swept(outline, (end.z - start.z, end.r - start.r), start)
+
+
+def entered(outline: Floats, move: Move, zone: BaseGeometry) -> BaseGeometry | None:
+    """Where an outline comes into a body during a move; None where it does not, or stood in it before."""
+    area = swept_area(outline, move)
+    if area is None:
+        return None
+    inside = shapely.intersection(area, zone)
+    if shapely.area(inside) <= TOUCH:
+        return None
+    standing = shapely.convex_hull(shapely.multipoints(outline + np.asarray(move.start)))
+    return None if shapely.area(shapely.intersection(standing, zone)) > TOUCH else inside
 
 
 def jaw_zone(run: Run) -> BaseGeometry | None:

@@ -28,8 +28,8 @@ from auditor.interpret.moves import Kind
 
 CHECK = "air-time"
 LIMITS = (
-    Limit("air_seconds", 5.0, "s", "common practice", "feeding time without cutting"),
-    Limit("air_share", 0.10, "", "common practice", "share of the feeding time without cutting"),
+    Limit("air_seconds", 5.0, "s", "common practice", "longest feeding time without cutting"),
+    Limit("air_share", 0.10, "", "common practice", "largest share of the feeding time without cutting"),
 )
 
 

@@ -28,7 +28,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.bars import overhang_limit
 
 CHECK = "bar-deflection"
-LIMITS = (Limit("shank_overhang", 2.0, "", "common practice", "overhang of a square shank in heights"),)
+LIMITS = (Limit("shank_overhang", 2.0, "", "common practice", "largest overhang of a square shank in heights"),)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:

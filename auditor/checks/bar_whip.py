@@ -29,7 +29,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.bending import whipping_speed
 
 CHECK = "bar-whip"
-LIMITS = (Limit("whip_share", 0.5, "", "common practice", "share of the whirling speed over"),)
+LIMITS = (Limit("whip_share", 0.5, "", "common practice", "largest share of the whirling speed"),)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:

@@ -31,7 +31,7 @@ from auditor.checks._words import depth, feed, figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "breaker-window"
-LIMITS = (Limit("chip_length", 1.0, "m", "common practice", "unbroken chip longer than"),)
+LIMITS = (Limit("chip_length", 1.0, "m", "common practice", "longest unbroken chip"),)
 COMPRESSION = 2.5  # cut length over chip length; 1.5 to 3 for usual steels
 
 

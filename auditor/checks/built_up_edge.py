@@ -31,7 +31,7 @@ from auditor.checks._words import angle, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "built-up-edge"
-LIMITS = (Limit("bue_rake", 15.0, "deg", "common practice", "rake that keeps the edge clean from"),)
+LIMITS = (Limit("bue_rake", 15.0, "deg", "common practice", "least rake that keeps the edge clean"),)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:

@@ -28,7 +28,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.chatter import dynamic_coefficient, limiting_width
 
 CHECK = "chatter-margin"
-LIMITS = (Limit("bar_damping", 0.02, "", "common practice", "damping of the bar"),)
+LIMITS = (Limit("bar_damping", 0.02, "", "common practice", "damping ratio of the bar"),)
 DIRECTION = 0.45  # directional factor of a radial mode, 0.3 to 0.6
 
 

@@ -37,8 +37,8 @@ from auditor.predict.loads import Loads
 
 CHECK = "chuck-grip"
 LIMITS = (
-    Limit("grip_safety", 1.5, "", "published", "grip left over grip needed, at least (VDI 3106)"),
-    Limit("grip_safety_squared", 2.25, "", "published", "grip left over grip needed, better (VDI 3106, both factors)"),
+    Limit("grip_safety", 1.5, "", "published", "least grip left over grip needed (VDI 3106)"),
+    Limit("grip_safety_squared", 2.25, "", "published", "better grip left over grip needed (VDI 3106, both factors)"),
 )
 
 Floats = NDArray[np.float64]

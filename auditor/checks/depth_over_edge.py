@@ -28,10 +28,10 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "depth-over-edge"
 LIMITS = (
-    Limit("edge_share_strong", 2.0 / 3.0, "", "common practice", "usable edge of 75 to 90 degree inserts"),
-    Limit("edge_share_medium", 0.5, "", "common practice", "usable edge of triangles, trigons, 55 degree inserts"),
-    Limit("edge_share_slender", 0.25, "", "common practice", "usable edge of 35 degree inserts"),
-    Limit("round_share", 0.4, "", "common practice", "depth over diameter of round inserts"),
+    Limit("edge_share_strong", 2.0 / 3.0, "", "common practice", "usable share of the edge, 75 to 90 degree inserts"),
+    Limit("edge_share_medium", 0.5, "", "common practice", "usable share of the edge, triangles, trigons, 55 degrees"),
+    Limit("edge_share_slender", 0.25, "", "common practice", "usable share of the edge, 35 degree inserts"),
+    Limit("round_share", 0.4, "", "common practice", "largest depth over diameter, round inserts"),
 )
 
 

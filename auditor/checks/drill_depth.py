@@ -31,10 +31,10 @@ from auditor.interpret.moves import Kind
 
 CHECK = "drill-depth"
 LIMITS = (
-    Limit("drill_depth_steel", 4.0, "", "common practice", "depth in one go over diameter, high-speed steel"),
-    Limit("drill_depth_carbide", 8.0, "", "common practice", "depth in one go over diameter, carbide"),
-    Limit("drill_feed", 0.03, "", "common practice", "feed over diameter"),
-    Limit("drill_off_axis", 0.05, "mm", "common practice", "distance of the drill from the axis"),
+    Limit("drill_depth_steel", 4.0, "", "common practice", "largest depth in one go over diameter, high-speed steel"),
+    Limit("drill_depth_carbide", 8.0, "", "common practice", "largest depth in one go over diameter, carbide"),
+    Limit("drill_feed", 0.03, "", "common practice", "largest feed over diameter"),
+    Limit("drill_off_axis", 0.05, "mm", "common practice", "largest distance of the drill from the axis"),
 )
 
 

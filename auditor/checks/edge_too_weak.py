@@ -30,9 +30,9 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "edge-too-weak"
 LIMITS = (
-    Limit("high_rake", 10.0, "deg", "common practice", "effective rake over"),
-    Limit("small_wedge", 70.0, "deg", "common practice", "wedge under"),
-    Limit("heavy_chip", 1.5, "", "common practice", "chip section in mm2 over"),
+    Limit("high_rake", 10.0, "deg", "common practice", "largest effective rake"),
+    Limit("small_wedge", 70.0, "deg", "common practice", "smallest wedge"),
+    Limit("heavy_chip", 1.5, "", "common practice", "largest chip section in mm2"),
 )
 TOUGH = ("P", "M", "K")
 REMEDY = "A larger nose or a stronger basic shape, and half the feed over the interruption."

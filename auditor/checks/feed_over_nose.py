@@ -29,7 +29,7 @@ from auditor.interpret.moves import Kind
 
 CHECK = "feed-over-nose"
 LIMITS = (
-    Limit("feed_share_of_nose", 0.5, "", "common practice", "feed over nose radius in general"),
+    Limit("feed_share_of_nose", 0.5, "", "common practice", "largest feed over nose radius in general"),
     Limit("feed_share_of_nose_at_most", 0.8, "", "common practice", "feed over nose radius at the very most"),
 )
 

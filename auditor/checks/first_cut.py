@@ -27,7 +27,7 @@ from auditor.checks._words import figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "first-cut"
-LIMITS = (Limit("skin_depth", 0.5, "mm", "common practice", "depth under a rolled, cast or forged skin, at least"),)
+LIMITS = (Limit("skin_depth", 0.5, "mm", "common practice", "least depth under a rolled, cast or forged skin"),)
 SKINS = ("hot rolled", "cast", "forged")
 RAW = 0.05  # mm; an edge that reaches this close to the raw size cuts the raw surface
 USABLE = 2.0 / 3.0

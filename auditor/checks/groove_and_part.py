@@ -31,8 +31,8 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "groove-and-part"
 LIMITS = (
-    Limit("groove_depth", 10.0, "", "common practice", "depth over blade width"),
-    Limit("side_stroke", 0.75, "", "common practice", "side stroke over blade width"),
+    Limit("groove_depth", 10.0, "", "common practice", "largest depth over blade width"),
+    Limit("side_stroke", 0.75, "", "common practice", "largest side stroke over blade width"),
 )
 KINDS: tuple[ToolKind, ...] = ("grooving", "face grooving", "parting")
 CENTRE = 1.5  # mm of radius in which parting slows its feed

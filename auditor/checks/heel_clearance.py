@@ -48,7 +48,7 @@ from auditor.mechanics.clearance import (
 from auditor.mechanics.rake import normal_rake
 
 CHECK = "heel-clearance"
-LIMITS = (Limit("least_clearance", 3.0, "deg", "common practice", "working clearance under"),)
+LIMITS = (Limit("least_clearance", 3.0, "deg", "common practice", "least working clearance"),)
 KINDS: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "parting")
 CENTRE = 5.0  # mm of diameter within which a tool that feeds to the centre is not judged
 

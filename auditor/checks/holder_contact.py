@@ -29,7 +29,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.simulate.samples import Part
 
 CHECK = "holder-contact"
-LIMITS = (Limit("bar_to_bore", 0.8, "", "common practice", "bar over bore diameter"),)
+LIMITS = (Limit("bar_to_bore", 0.8, "", "common practice", "largest bar over bore diameter"),)
 KINDS: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "face grooving", "parting", "drilling")
 TOUCH = 0.1  # mm of the insert's body in the metal
 

@@ -27,15 +27,14 @@ import shapely
 from shapely.geometry.base import BaseGeometry
 
 from auditor.checks._judging import origin, threshold
-from auditor.checks._solids import jaw_zone, outlines, swept_area
+from auditor.checks._solids import Floats, entered, jaw_zone, outlines, swept_area
 from auditor.checks._words import figure, tool_name, z_word
 from auditor.declared.model import Tool
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind, Move
 
 CHECK = "jaw-contact"
-LIMITS = (Limit("jaw_clearance", 1.0, "mm", "common practice", "distance from the jaw face, at least"),)
-TOUCH = 0.01  # mm2
+LIMITS = (Limit("jaw_clearance", 1.0, "mm", "common practice", "least distance from the jaws"),)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
@@ -53,18 +52,15 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         low = min((z for z in (move.start_z, move.end_z) if z is not None), default=math.inf)
         if low + shape[:, 0].min() > face + threshold(run, LIMITS[0]):
             continue
-        area = swept_area(shape, move)
-        finding = _drill(run, move, tool, face) if tool.kind == "drilling" else _outline(run, move, tool, area, zone)
+        finding = _drill(run, move, tool, face) if tool.kind == "drilling" else _outline(run, move, tool, shape, zone)
         if finding is not None:
             yield finding
 
 
-def _outline(run: Run, move: Move, tool: Tool, area: BaseGeometry | None, zone: BaseGeometry) -> Finding | None:
-    if area is None:
-        return None
+def _outline(run: Run, move: Move, tool: Tool, shape: Floats, zone: BaseGeometry) -> Finding | None:
     face = -run.job.workholding.stick_out
-    inside = shapely.intersection(area, zone)
-    if shapely.area(inside) > TOUCH:
+    inside = entered(shape, move, zone)
+    if inside is not None:
         deepest = face - float(shapely.bounds(inside)[0])
         how = "at rapid" if move.kind is Kind.RAPID else "in the cut"
         return run.finding(
@@ -72,9 +68,9 @@ def _outline(run: Run, move: Move, tool: Tool, area: BaseGeometry | None, zone: 
             f"behind the jaw face at {z_word(run, face)}.", value=deepest, limit=0.0, unit="mm", words=("Z",),
             remedy=f"A stick-out {figure(deepest + threshold(run, LIMITS[0]))} mm longer, or a shorter cut.",
         )
-    gap = float(shapely.distance(area, zone))
-    least = threshold(run, LIMITS[0])
-    if gap >= least or move.kind is Kind.RAPID:
+    area, least = swept_area(shape, move), threshold(run, LIMITS[0])
+    gap = float(shapely.distance(area, zone)) if area is not None else least
+    if not 0.0 < gap < least or move.kind is Kind.RAPID:
         return None
     return run.finding(
         CHECK, Level.REVIEW, move, f"{tool_name(run, tool.number)} comes within {figure(gap, 2)} mm of the jaws. "

@@ -32,7 +32,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind
 
 CHECK = "nose-compensation"
-LIMITS = (Limit("edge_break", 2.0, "mm", "common practice", "slopes and arcs longer than"),)
+LIMITS = (Limit("edge_break", 2.0, "mm", "common practice", "longest edge break left uncompensated"),)
 LEVELS = {
     "compensation-left-on": Level.REVIEW,
     "compensation-in-arc": Level.STOP,

@@ -34,8 +34,8 @@ from auditor.mechanics.bending import CERTAINTY
 
 CHECK = "part-deflection"
 LIMITS = (
-    Limit("part_bend", 0.05, "mm", "common practice", "push-off of the work"),
-    Limit("bend_share", 1.0 / 3.0, "", "common practice", "share of the tolerance that bending may take"),
+    Limit("part_bend", 0.05, "mm", "common practice", "largest push-off of the work (where the job sets it)"),
+    Limit("bend_share", 1.0 / 3.0, "", "common practice", "largest share of the tolerance that bending may take"),
 )
 
 

@@ -31,10 +31,10 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "rake-too-blunt"
 LIMITS = (
-    Limit("slender_chuck", 3.0, "", "common practice", "length over diameter in the chuck alone"),
-    Limit("slender_tailstock", 8.0, "", "common practice", "length over diameter with tailstock or centres"),
-    Limit("long_bar", 3.0, "", "common practice", "overhang over diameter of a boring bar"),
-    Limit("thin_wall", 0.1, "", "common practice", "wall over diameter"),
+    Limit("slender_chuck", 3.0, "", "common practice", "largest length over diameter in the chuck alone"),
+    Limit("slender_tailstock", 8.0, "", "common practice", "largest length over diameter with tailstock or centres"),
+    Limit("long_bar", 3.0, "", "common practice", "largest overhang over diameter of a boring bar"),
+    Limit("thin_wall", 0.1, "", "common practice", "smallest wall over diameter"),
 )
 THRUST_PER_DEGREE = 0.045
 

@@ -24,8 +24,12 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+import shapely
+from shapely.geometry.base import BaseGeometry
+
 from auditor.checks._judging import origin, threshold
 from auditor.checks._remedy import length
+from auditor.checks._solids import entered, jaw_zone, outlines, tailstock_zone
 from auditor.checks._words import figure, x_word, z_word
 from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -43,8 +47,10 @@ CUTS_OFF = ("parting", "grooving", "face grooving")
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Rapids that touch, rapids that end too near, and pieces that come loose."""
     for contact in run.simulation.contacts:
-        if run.path.moves[contact.move].kind is Kind.RAPID:
-            yield from _judge_contact(run, contact)
+        yield from _judge_contact(run, contact)
+    for name, zone in (("chuck", jaw_zone(run)), ("tailstock", tailstock_zone(run.job.workholding))):
+        if zone is not None:
+            yield from _judge_body(run, name, zone)
     for piece in run.simulation.loose:
         yield from _judge_piece(run, piece)
 
@@ -66,13 +72,11 @@ def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
             level = Level.REVIEW if assumed else Level.STOP
             message = "The two axes do not run in a straight line: each runs at its own rapid rate, and the bent " \
                 f"path goes through the stock {place}, {deep} deep." + (" The rates are assumed." if assumed else "")
-        case "near":
-            if contact.depth >= threshold(run, LIMITS[0]) - 0.01:
+        case _:
+            if contact.kind != "near" or contact.depth >= threshold(run, LIMITS[0]) - 0.01:
                 return
             level, message = Level.REVIEW, f"The rapid ends {figure(contact.depth, 2)} mm from raw stock {place}; " \
                 f"raw sizes vary. {origin(run, LIMITS)}"
-        case _:
-            level, message = Level.STOP, f"The tool hits the {_body(contact)} at rapid {place}."
     remedy = "Move one axis after the other, or start the rapid further out."
     if contact.kind == "near":
         remedy = "Feed the last millimetre."
@@ -92,8 +96,25 @@ def _pulls_off(run: Run, move: Move, contact: Contact) -> bool:
     return away > 0.0 and abs(contact.r - start.r) < 0.1
 
 
-def _body(contact: Contact) -> str:
-    return "chuck" if contact.kind == "jaw" else "tailstock"
+def _judge_body(run: Run, name: str, zone: BaseGeometry) -> Iterator[Finding]:
+    """Rapids through the chuck's jaws or the tailstock."""
+    low, bottom, high, top = zone.bounds
+    shapes = outlines(run)
+    for move in run.path.moves:
+        start, end = move.start, move.end
+        if move.kind is not Kind.RAPID or move.tool not in shapes or start is None or end is None:
+            continue
+        shape = shapes[move.tool]
+        if min(start.z, end.z) + shape[:, 0].min() > high or max(start.z, end.z) + shape[:, 0].max() < low:
+            continue
+        if min(start.r, end.r) + shape[:, 1].min() > top or max(start.r, end.r) + shape[:, 1].max() < bottom:
+            continue
+        inside = entered(shape, move, zone)
+        if inside is not None:
+            z, r = float(shapely.bounds(inside)[2]), float(shapely.bounds(inside)[3])
+            message = f"The tool hits the {name} at rapid at {x_word(run, r)} {z_word(run, z)}."
+            yield run.finding(CHECK, Level.STOP, move, message, at=Point(z, r),
+                              remedy="Move one axis after the other, or start the rapid further out.")
 
 
 def _judge_piece(run: Run, piece: LoosePiece) -> Iterator[Finding]:

@@ -30,7 +30,7 @@ from auditor.checks._words import figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "slender-part"
-LIMITS = (Limit("slender_equivalent", 4.0, "", "common practice", "stick-out in diameters"),)
+LIMITS = (Limit("slender_equivalent", 4.0, "", "common practice", "largest stick-out in diameters"),)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:

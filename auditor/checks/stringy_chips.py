@@ -30,7 +30,7 @@ from auditor.checks.breaker_window import chip_length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "stringy-chips"
-LIMITS = (Limit("chip_aspect", 15.0, "", "common practice", "depth over feed above"), *WINDOW_LIMITS)
+LIMITS = (Limit("chip_aspect", 15.0, "", "common practice", "largest depth over feed"), *WINDOW_LIMITS)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:

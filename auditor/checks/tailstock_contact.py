@@ -23,13 +23,12 @@ from collections.abc import Iterator
 import shapely
 
 from auditor.checks._judging import cutting_moves
-from auditor.checks._solids import outlines, swept_area, tailstock_zone
+from auditor.checks._solids import entered, outlines, tailstock_zone
 from auditor.checks._words import tool_name, x_word, z_word
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "tailstock-contact"
 LIMITS: tuple[Limit, ...] = ()
-TOUCH = 0.01  # mm2
 AXIS = 0.5  # mm of radius
 
 
@@ -46,12 +45,11 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     shapes = outlines(run)
     for move in run.path.moves:
         tool = run.job.tools.get(move.tool) if move.tool is not None else None
-        area = swept_area(shapes[tool.number], move) if tool is not None and tool.number in shapes else None
-        if area is None or tool is None:
+        if tool is None or tool.number not in shapes or move.start is None:
             continue
-        inside = shapely.intersection(area, zone)
+        inside = entered(shapes[tool.number], move, zone)
         name = tool_name(run, tool.number)
-        if shapely.area(inside) > TOUCH:
+        if inside is not None:
             low, _, _, top = (float(edge) for edge in shapely.bounds(inside))
             message = f"{name} runs into the centre at {x_word(run, top)} {z_word(run, low)}."
             yield run.finding(CHECK, Level.STOP, move, message, words=("X", "Z"),

@@ -35,8 +35,8 @@ from auditor.simulate.samples import Part
 
 CHECK = "thin-lead"
 LIMITS = (
-    Limit("wiping_edge", 3.0, "mm", "common practice", "edge that leans under 15 deg longer than"),
-    Limit("depth_jump", 2.0, "", "common practice", "depth at the shoulder over the usual"),
+    Limit("wiping_edge", 3.0, "mm", "common practice", "longest edge that may lean under 15 deg"),
+    Limit("depth_jump", 2.0, "", "common practice", "largest depth at the shoulder over the usual"),
 )
 LEAN = 15.0  # deg
 WEDGE = 1.0  # mm; what the edge itself left standing at a shoulder is thinner

@@ -35,9 +35,9 @@ from auditor.mechanics.clearance import feed_angle
 
 CHECK = "thread-passes"
 LIMITS = (
-    Limit("thread_run_in", 2.0, "", "common practice", "run-in in leads, at least"),
+    Limit("thread_run_in", 2.0, "", "common practice", "least run-in in leads"),
     Limit("thread_least", 0.05, "mm", "common practice", "thinnest pass"),
-    Limit("thread_flank", 2.0, "deg", "common practice", "flank clearance left at the helix, at least"),
+    Limit("thread_flank", 2.0, "deg", "common practice", "least flank clearance left at the helix"),
 )
 SPRING = 0.005  # mm; a pass thinner than this is a spring pass
 HARDENING_PASS = 0.08  # mm, work-hardening material

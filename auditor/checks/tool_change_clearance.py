@@ -29,7 +29,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Move
 
 CHECK = "tool-change-clearance"
-LIMITS = (Limit("index_clearance", 5.0, "mm", "common practice", "distance from the stock when the turret indexes"),)
+LIMITS = (Limit("index_clearance", 5.0, "mm", "common practice", "least distance from the stock on indexing"),)
 AXIAL = ("boring", "drilling")
 
 

@@ -34,7 +34,7 @@ from auditor.mechanics.copying import minor_edge_angle, steepest_in_copy, steepe
 from auditor.simulate.samples import Part
 
 CHECK = "trailing-edge-contact"
-LIMITS = (Limit("past_centre", 0.8, "mm", "common practice", "way past the centre, or twice the nose radius,"),)
+LIMITS = (Limit("past_centre", 0.8, "mm", "common practice", "longest way past the centre (or twice the nose radius)"),)
 TOUCHES = 0.1  # mm of edge in the metal
 WHOLE_EDGE = 0.9
 STRAIGHT_IN = -85.0  # deg; steeper is facing or plunging, not copying
