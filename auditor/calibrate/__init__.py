@@ -1,0 +1,1 @@
+"""A material's force factor fitted to a logged spindle load."""
