@@ -14,6 +14,7 @@ from auditor.declared.model import Tool, ToolKind
 from auditor.findings import Run
 from auditor.interpret.moves import Kind, Move
 from auditor.mechanics.bending import diameter_error as bent_diameter
+from auditor.predict.loads import Loads
 
 Floats = NDArray[np.float64]
 
@@ -123,11 +124,15 @@ def tolerance_third(run: Run) -> float | None:
 
 
 def diameter_errors(run: Run) -> Floats:
-    """Diameter the work comes out larger by at every row of Loads, mm: 2y + 2 y_t^2/d, NaN where not known.
+    """Diameter the work comes out larger by at every row of the program's Loads, mm."""
+    return bending_errors(run.prediction.loads)
+
+
+def bending_errors(loads: Loads) -> Floats:
+    """Diameter the work comes out larger by at every row, mm: 2y + 2 y_t^2/d, NaN where not known.
 
     y is the push-off by the passive force, y_t the bend downwards by the cutting force.
     """
-    loads = run.prediction.loads
     known = np.isfinite(loads.bend) & np.isfinite(loads.bend_tangential)
     across = np.maximum(2.0 * np.abs(loads.r), SMALLEST_DIAMETER)
     errors = np.full(len(loads.r), np.nan)

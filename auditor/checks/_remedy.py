@@ -82,22 +82,20 @@ def cure(run: Run, excess: Excess, share: Figure) -> str | None:
     spread = max(excess.band[1] / excess.value, 1.0)
     targets = [("Within the limit at ", 1.0)] if excess.value > excess.limit else []
     targets.append(("clear of the prediction's uncertainty at ", 1.0 / spread))
-    parts = [text for lead, target in targets if (text := _ways(run, move, share, target, lead))]
+    parts = [lead + ways for lead, target in targets if (ways := way_out(run, move, share, target))]
     if not parts:
         return None
     sentence = "; ".join(parts)
     return f"{sentence[0].upper()}{sentence[1:]}."
 
 
-def _ways(run: Run, move: Move, share: Figure, target: float, lead: str) -> str:
-    ways = []
-    slower = feed_within(run, move, share, target)
-    if slower is not None:
-        ways.append(feed_word(run, move, slower))
-    shallower = depth_within(run, move, share, target)
+def way_out(run: Run, move: Move, figure: Figure, limit: float) -> str:
+    """The feed or the depth that brings a figure to its limit, in words; empty when neither does."""
+    slower, shallower = feed_within(run, move, figure, limit), depth_within(run, move, figure, limit)
+    ways = [feed_word(run, move, slower)] if slower is not None else []
     if shallower is not None:
         ways.append(f"depth {length(run, shallower)}")
-    return lead + " or at ".join(ways) if ways else ""
+    return " or at ".join(ways)
 
 
 def feed_word(run: Run, move: Move, per_rev: float) -> str:

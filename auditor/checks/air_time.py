@@ -36,7 +36,8 @@ LIMITS = (
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """One note at the block that feeds longest through air."""
     times = np.nan_to_num(run.prediction.moves.time)
-    feeding = np.array([move.kind is not Kind.RAPID for move in run.path.moves], dtype=bool)
+    known = run.job.tools  # what an undeclared tool cuts is not known
+    feeding = np.array([move.kind is not Kind.RAPID and move.tool in known for move in run.path.moves], dtype=bool)
     air = np.where(feeding & ~cutting_moves(run), times, 0.0)
     total, feed_time = float(air.sum()), float(times[feeding].sum())
     most, share = (threshold(run, limit) for limit in LIMITS)

@@ -28,10 +28,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from auditor.checks._judging import SMALL_FORCE, lasting, rows_of, threshold
-from auditor.checks._remedy import depth_within, feed_within, feed_word, length
+from auditor.checks._remedy import way_out
 from auditor.checks._words import figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
-from auditor.interpret.moves import Kind
 from auditor.mechanics.clamping import centrifugal_force, grip_for_cut, grip_for_tilting, grip_left
 from auditor.predict.loads import Loads
 
@@ -123,11 +122,6 @@ def _finding(run: Run, index: int, used: float, share: Floats, least: float, bet
     fate = "The work can slip or tilt out of the jaws" if level is Level.STOP else "The grip is thin for this cut"
     message = f"{fate}: {figure(left / 1000)} kN of grip are left at {float(loads.rpm[row]):.0f} rpm, the cut needs " \
               f"{figure(needed / 1000)} kN; that is {figure(safety, 2)} times, {figure(limit, 2)} is wanted (VDI 3106)."
-    ways = []
-    if move.kind is not Kind.THREAD:
-        slower = feed_within(run, move, lambda what: used_share(run, what), 1.0 / limit)
-        shallower = depth_within(run, move, lambda what: used_share(run, what), 1.0 / limit)
-        ways = [feed_word(run, move, slower)] if slower else []
-        ways += [f"depth {length(run, shallower)}"] if shallower else []
-    remedy = f"Held with {' or '.join(ways)}, or with more grip." if ways else "More grip, or a shorter stick-out."
+    ways = way_out(run, move, lambda what: used_share(run, what), 1.0 / limit)
+    remedy = f"Held at {ways}; or with more grip." if ways else "More grip, or a shorter stick-out."
     return finding_at(run, CHECK, level, row, message, value=safety, limit=limit, unit="", remedy=remedy)

@@ -1,8 +1,8 @@
 """Grooving and parting: is the blade asked for more than it can do?
 
 What
-    Compares the depth of a groove with the blade's width, the depth of a side stroke with the width, and the feed
-    near the centre when parting.
+    Compares the depth of a groove with the blade's width, the depth of a side stroke with the width, and looks at
+    the feed of plunges and near the centre when parting.
 
 Why
     A blade is slim in the one direction in which the chip has no room. Too deep it bends sideways and jams; too
@@ -10,9 +10,9 @@ Why
     breaks the corner.
 
 Formula and source
-    Common practice: depth up to 10 widths (16 with a reinforced blade), side strokes up to 0.75 width, the feed
-    halved or quartered for the last 2 to 3 mm of diameter. Review: over groove_depth or side_stroke; a note: full
-    feed to the centre.
+    Common practice: depth up to 10 widths (16 with a reinforced blade), plunges at 0.05 to 0.2 mm a turn, side
+    strokes up to 0.75 width, the feed halved or quartered for the last 2 to 3 mm of diameter. Review: over
+    groove_depth, plunge_feed or side_stroke; a note: full feed to the centre.
 
 Remedy
     A wider blade, several side strokes, or a block of its own with half the feed for the last 3 mm of diameter.
@@ -33,6 +33,7 @@ CHECK = "groove-and-part"
 LIMITS = (
     Limit("groove_depth", 10.0, "", "common practice", "largest depth over blade width"),
     Limit("side_stroke", 0.75, "", "common practice", "largest side stroke over blade width"),
+    Limit("plunge_feed", 0.2, "mm", "common practice", "largest feed of a plunge"),
 )
 KINDS: tuple[ToolKind, ...] = ("grooving", "face grooving", "parting")
 CENTRE = 1.5  # mm of radius in which parting slows its feed
@@ -46,8 +47,10 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         if width is None or cut.move.start is None or cut.move.end is None:
             continue
         plunges, travel = _plunge(cut)
-        finding = _too_deep(run, cut, width, travel) if plunges else _side_stroke(run, cut, width)
-        finding = finding or _at_centre(run, cut)
+        if plunges:
+            finding = _too_fast(run, cut) or _too_deep(run, cut, width, travel) or _at_centre(run, cut)
+        else:
+            finding = _side_stroke(run, cut, width)
         if finding is not None:
             yield finding
 
@@ -61,6 +64,17 @@ def _plunge(cut: Cut) -> tuple[bool, float]:
     if cut.tool.kind == "face grooving":
         return across[0] > across[1], across[0]
     return across[1] > across[0], across[1]
+
+
+def _too_fast(run: Run, cut: Cut) -> Finding | None:
+    loads = run.prediction.loads
+    used, most = cut.largest(loads.feed), threshold(run, LIMITS[2])
+    if not used > most * (1.0 + 1e-9):
+        return None
+    message = f"The blade is plunged at feed {feed(used)}: the chip fills the groove and the blade breaks. " \
+              f"{origin(run, LIMITS[2:])}"
+    return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=used, limit=most,
+                      unit="mm/rev", words=("F",), remedy=f"At most {feed_word(run, cut.move, most)}.")
 
 
 def _too_deep(run: Run, cut: Cut, width: float, travel: float) -> Finding | None:
@@ -99,7 +113,7 @@ def _side_stroke(run: Run, cut: Cut, width: float) -> Finding | None:
     if deep <= limit * (1.0 + 1e-6):
         return None
     message = f"The side stroke is {figure(deep, 2)} mm deep with a {figure(width)} mm insert: it is torn from its " \
-              f"seat. {origin(run, LIMITS[1:])}"
+              f"seat. {origin(run, LIMITS[1:2])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=deep, limit=limit,
                       unit="mm", remedy=f"Side strokes of {length(run, limit)} at most.")
 

@@ -24,6 +24,7 @@ from collections.abc import Iterator
 
 from auditor.checks._remarks import findings_of
 from auditor.findings import Finding, Level, NotJudged, Run
+from auditor.interpret.moves import Kind
 
 CHECK = "not-understood"
 LIMITS = ()
@@ -50,8 +51,18 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     for finding in findings_of(run, CHECK, LEVELS):
         told.add(finding.line)
         yield finding
+    told |= _cut_by_unknown_tools(run)
     blocks = {block.line: block.label for block in run.text.blocks}
     for missed in run.path.not_audited:
         if missed.line not in told:
             message = f"This block moves the tool and was not audited: {missed.reason}."
             yield Finding(CHECK, Level.REVIEW, missed.line, blocks.get(missed.line), None, message)
+
+
+def _cut_by_unknown_tools(run: Run) -> set[int]:
+    """Lines left out for want of a declared tool: tool-undeclared speaks of the tool, once."""
+    return {
+        move.line
+        for move in run.path.moves
+        if move.kind is not Kind.RAPID and move.tool not in run.job.tools and not move.provisional
+    }

@@ -17,7 +17,8 @@ Formula and source
     force, but never below 2 um, where no figure means anything (common practice).
 
 Remedy
-    The feed or depth at which the same law meets the tolerance; a smaller nose radius; a tailstock.
+    The feed or depth at which the same law bends no more than bend_share of the tolerance, computed for the block; a
+    smaller nose radius; a freer-cutting edge; a tailstock.
 """
 
 from __future__ import annotations
@@ -26,8 +27,9 @@ from collections.abc import Iterator
 
 import numpy as np
 
-from auditor.checks._cuts import Cut, cuts, diameter_errors
+from auditor.checks._cuts import Cut, bending_errors, cuts, diameter_errors
 from auditor.checks._judging import THRUST_SCATTER, threshold
+from auditor.checks._remedy import way_out
 from auditor.checks._words import finding_at, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.bending import CERTAINTY
@@ -75,10 +77,13 @@ def _finishing(run: Run, cut: Cut, error: float, allowed: float) -> Finding | No
     else:
         return None
     message = f"The work bends away and comes out {micro(error)} too large ({micro(low)} to {micro(high)}); " \
-              f"{micro(allowed)} is allowed on the diameter, and bending should take a third of it at most."
+              f"{micro(allowed)} is allowed on the diameter, and bending should take {micro(share)} of it at most."
     row = cut.row_of_largest(run.prediction.loads.bend)
+    others = "a smaller nose radius, a freer-cutting edge or a tailstock"
+    ways = way_out(run, cut.move, bending_errors, share)
+    remedy = f"Bent by no more than that at {ways}; or {others}." if ways else f"{others[0].upper()}{others[1:]}."
     return finding_at(run, CHECK, level, row, message, value=error, band=(low, high), limit=limit, unit="mm",
-                      remedy="A smaller nose radius, less depth, a freer-cutting edge or a tailstock.")
+                      remedy=remedy)
 
 
 def _roughing(run: Run, cut: Cut, error: float) -> Finding | None:

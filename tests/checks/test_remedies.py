@@ -73,6 +73,38 @@ def test_depth_cures(check: str, name: str, diameter: float, tmp_path: Path) -> 
     assert levels(1.05 * found[1]) == [Level.REVIEW]
 
 
+def test_grip_remedy_holds(tmp_path: Path) -> None:
+    program = FOLDER / "chuck-grip" / "thin-grip.nc"
+    (finding,) = judged(program, program, "chuck-grip")
+    (feed,) = [float(text) for text in re.findall(r"F(\d+\.\d+)", finding.remedy or "")]
+    (depth,) = [float(text) for text in re.findall(r"depth (\d+\.?\d*) mm", finding.remedy or "")]
+
+    def levels(changed: Path) -> list[Level]:
+        return [found.level for found in judged(changed, program, "chuck-grip")]
+
+    assert levels(with_feed(program, tmp_path, feed)) == [Level.REVIEW]
+    assert levels(with_feed(program, tmp_path, 1.05 * feed)) == [Level.STOP]
+    assert levels(with_depth(program, tmp_path, 60.0, depth)) == [Level.REVIEW]
+    assert levels(with_depth(program, tmp_path, 60.0, 1.05 * depth)) == [Level.STOP]
+
+
+def test_edge_remedy_cures(tmp_path: Path) -> None:
+    program = FOLDER / "depth-over-edge" / "deep.nc"
+    (finding,) = judged(program, program, "depth-over-edge")
+    (depth,) = [float(text) for text in re.findall(r"Depth (\d+\.?\d*) mm", finding.remedy or "")]
+    assert judged(with_depth(program, tmp_path, 60.0, depth), program, "depth-over-edge") == []
+    assert judged(with_depth(program, tmp_path, 60.0, 1.05 * depth), program, "depth-over-edge")
+
+
+@pytest.mark.parametrize(("check", "name"), [("feed-over-nose", "thread-like"), ("surface-roughness", "too-much-feed")])
+def test_feed_of_geometry_cures(check: str, name: str, tmp_path: Path) -> None:
+    program = FOLDER / check / f"{name}.nc"
+    finding = judged(program, program, check)[0]
+    feed = float(re.findall(r"F(\d+\.\d+)", finding.remedy or "")[0])
+    assert judged(with_feed(program, tmp_path, feed), program, check) == []
+    assert judged(with_feed(program, tmp_path, 1.05 * feed), program, check)
+
+
 def test_rules_hold_a_limit_of_one_meaning() -> None:
     meanings: dict[str, object] = {}
     for rule in rules().values():
