@@ -14,6 +14,7 @@ from auditor.simulate.outline import Corner, Outline
 from auditor.simulate.samples import Part
 
 EDGE_LENGTH_WHEN_UNKNOWN = 15.0  # mm, when neither insert code nor length is declared
+THREAD_FLANK = 3.5  # mm, flank of a thread tool: deep enough for 5 mm of lead, slim at a shoulder (common practice)
 REACH = 60.0  # mm a grooving blade or a drill is followed behind its edge
 
 Vertex = tuple[float, float]
@@ -54,7 +55,7 @@ def _blade(tool: Tool) -> tuple[list[Vertex], list[Part]]:
 
 def _insert(tool: Tool) -> tuple[list[Vertex], list[Part]]:
     """The insert's polygon with the active corner first, counter-clockwise in (x, y), mapped to (z, r)."""
-    length = tool.edge_length or EDGE_LENGTH_WHEN_UNKNOWN
+    length = tool.edge_length or (THREAD_FLANK if tool.kind == "threading" else EDGE_LENGTH_WHEN_UNKNOWN)
     epsilon = math.radians(tool.included_angle)
     turns = _turns(tool.shape, epsilon)
     lengths = [length] * len(turns)
