@@ -7,6 +7,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from auditor.declared.model import Tool
 from auditor.findings import Audit
 from auditor.reports._shares import shares
 
@@ -28,6 +29,11 @@ class ToolUse:
     time: float  # s
 
 
+def called(tool: Tool) -> str:
+    """A tool as it is spoken of: station first."""
+    return tool.name if tool.name.startswith(f"T{tool.number}") else f"T{tool.number} {tool.name}"
+
+
 def uses(audit: Audit) -> tuple[ToolUse, ...]:
     """The tools in the order of their first move."""
     run = audit.run
@@ -41,7 +47,8 @@ def uses(audit: Audit) -> tuple[ToolUse, ...]:
         cuts = mine & cutting
         tool = run.job.tools.get(number)
         found.append(ToolUse(
-            number=number, name="not declared" if tool is None else tool.name, kind="" if tool is None else tool.kind,
+            number=number, name=f"T{number} not declared" if tool is None else called(tool),
+            kind="" if tool is None else tool.kind,
             depth=_largest(figures.depth[cuts]), feed=_largest(figures.feed_rev[cuts]),
             speed=_largest(figures.speed_high[cuts]), force=_largest(figures.cutting[cuts]),
             share=_largest(share[mine[loads.move]]), time=float(np.nansum(figures.time[mine])),

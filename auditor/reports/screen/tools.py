@@ -17,10 +17,9 @@ def write(paper: Paper, audit: Audit) -> None:
     head = ("Tool: its largest", "does", "depth", "feed", "m/min", "force", "power", "time")
     _row(paper, head, style="bold")
     for use in found:
-        name = use.name if use.name.startswith(f"T{use.number}") else f"T{use.number} {use.name}"
         share = "-" if use.share is None else f"{100.0 * use.share:.0f} %"
         _row(paper, (
-            name, use.kind, _cell(use.depth, "mm", ".1f"), _cell(use.feed, "", ".2f"), _cell(use.speed, "", ".0f"),
+            use.name, use.kind, _cell(use.depth, "mm", ".1f"), _cell(use.feed, "", ".2f"), _cell(use.speed, "", ".0f"),
             figure(use.force, "N"), share, duration(use.time),
         ))
 
