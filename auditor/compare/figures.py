@@ -15,9 +15,9 @@ from auditor.declared.model import Tool, ToolKind
 from auditor.findings import Run
 from auditor.mechanics.clearance import normal_clearance, orthogonal_clearance
 from auditor.mechanics.copying import minor_edge_angle
-from auditor.mechanics.life import taylor_life
 from auditor.mechanics.rake import normal_rake
 from auditor.mechanics.roughness import average_roughness, real_to_ideal
+from auditor.predict.edge_use import edge_use
 
 ALL_KINDS: tuple[ToolKind, ...] = (
     "turning", "boring", "grooving", "face grooving", "parting", "threading", "drilling",
@@ -72,7 +72,7 @@ def figures_of(run: Run, number: int) -> ToolFigures:
         work_bend=largest(np.array([cut.largest(errors) for cut in own])),
         tool_bend=largest(np.array([bar_push_off(run, cut) for cut in own])) if tool.kind == "boring" else None,
         roughness=_roughness(run, own),
-        edges=_edges(run, tool, mine),
+        edges=edge_use(tool, run.path.moves, figures),
         time=float(np.nansum(figures.time[mine])),
     )
 
@@ -115,13 +115,3 @@ def _minor(tool: Tool) -> float:
     if tool.shape == "R":
         return ROUND_MINOR
     return max(float(minor_edge_angle(tool.cutting_edge_angle, tool.included_angle)), LEAST_MINOR)
-
-
-def _edges(run: Run, tool: Tool, mine: NDArray[np.bool_]) -> float | None:
-    """Share of an edge that one part uses up: cutting time over life, at every move's highest speed."""
-    if tool.taylor is None:
-        return None
-    figures = run.prediction.moves
-    cutting = mine & (figures.cutting_time > 0.0) & (figures.speed_high > 0.0)
-    life = taylor_life(figures.speed_high[cutting], *tool.taylor)
-    return float(np.sum(figures.cutting_time[cutting] / 60.0 / life))
