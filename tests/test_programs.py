@@ -1,6 +1,6 @@
 """Whole programs as shops write them, each with the job it is meant for.
 
-Twenty clean ones of all three code tables: every motion block is understood, none is stopped, and what they take off
+Two dozen clean ones of all three code tables: every motion block is understood, none is stopped, and what they take off
 is the difference of two solids of revolution that are written down here by hand from the drawing. Ten with blocks that
 cannot be read or followed: exactly those are named, the rest is still audited.
 """
@@ -132,6 +132,16 @@ CLEAN: dict[str, Left] = {
     ),
     "sleeve-c": Left(((0, 58), (-2, 62), (-40, 62)), ((0, 46), (-2, 42), (-45, 42))),
     "spool-type-two": Left(((0, 44), (-12, 44), (-22, 36), (-40, 36), (-46, 44), (-62, 44))),
+    "gland-oneblock": Left(
+        ((0, 22), (-1, 24), (-27, 24), (-27, 20.5), (-30, 20.5)), thread=thread(0.92, 1.5, 27.0, 23.4),
+    ),
+    "step-macro-call": Left(((0, 38), (-25, 38))),
+    "step-incremental": Left(((0, 42), *fillet(-20, 46, 2), (-30, 46))),
+    "cap-c": Left(
+        ((0, 20), (-2, 20), (-2, 42), (-22, 42), (-22, 36), (-27, 36), (-27, 42), (-40, 42)),
+        ((0, 20), (-26.36, 20), (-30, 0)),
+        thread=thread(0.92, 1.5, 18.0, 41.4),
+    ),
 }
 
 NOT_AUDITED: dict[str, dict[int, str]] = {
