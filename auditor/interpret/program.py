@@ -12,7 +12,7 @@ from auditor.interpret.execute import carry_out
 from auditor.interpret.flow import EndlessError, Flow
 from auditor.interpret.library import Library
 from auditor.interpret.log import Log
-from auditor.interpret.moves import Interpretation, Remark
+from auditor.interpret.moves import Interpretation, Kind, Remark
 from auditor.interpret.run import Run
 from auditor.interpret.state import State
 from auditor.interpret.travel import check_limited, settle
@@ -41,6 +41,7 @@ def interpret(text: ProgramText, job: Job) -> Interpretation:
     run = _run_for(text, job, log)
     _work_through(run)
     _close(run)
+    _leave_out_unknown_tools(run, text)
     return Interpretation(
         moves=tuple(log.moves),
         remarks=tuple(log.remarks),
@@ -160,6 +161,21 @@ def _close(run: Run) -> None:
     _check_arc_sense(run)
     _check_coolant(run)
     _note_uncalled(run)
+
+
+def _leave_out_unknown_tools(run: Run, text: ProgramText) -> None:
+    """Cuts of a tool that is not declared are not audited; the stock they would have taken stands."""
+    moves, tools = run.log.moves, run.job.tools
+    texts = {block.line: block.text for block in text.blocks}
+    in_doubt = False
+    for place, move in enumerate(moves):
+        if in_doubt:
+            moves[place] = replace(move, new_stock_state=True)
+        if move.kind is not Kind.RAPID and move.tool not in tools:
+            unknown = "which tool stands at work is not known"
+            reason = unknown if move.tool is None else f"tool {move.tool} is not declared"
+            run.log.add_not_audited(move.line, texts.get(move.line, ""), reason)
+            in_doubt = True
 
 
 def _check_arc_sense(run: Run) -> None:

@@ -17,7 +17,7 @@ from auditor.simulate.pieces import arc_sweep
 
 
 def move_figures(moves: Sequence[Move], loads: Loads, piece: Ints, job: Job) -> MoveFigures:
-    """Ranges and largest values along each move; a feed move in air has zero loads, a rapid none.
+    """Ranges and largest values along each move; a feed move in air has zero loads, a rapid or unknown tool none.
 
     ``piece`` (k,) is the straight piece of each row of Loads.
     """
@@ -27,7 +27,8 @@ def move_figures(moves: Sequence[Move], loads: Loads, piece: Ints, job: Job) -> 
     rpm_high, rpm_low = commands.rpm(index, near), commands.rpm(index, far)
     feed = np.fmax(commands.feed_per_rev(index, rpm_high), commands.feed_per_rev(index, rpm_low))
     rapid = np.array([move.kind is Kind.RAPID for move in moves], dtype=bool)
-    air = np.where(rapid, np.nan, 0.0)
+    known = np.array([move.tool in job.tools for move in moves], dtype=bool)
+    air = np.where(rapid | ~known, np.nan, 0.0)
     first, owner = _first_rows(loads)
 
     def largest(values: Floats, otherwise: Floats) -> Floats:
