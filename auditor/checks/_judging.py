@@ -8,7 +8,7 @@ as the one cut it is.
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
@@ -20,6 +20,7 @@ from auditor.predict.loads import Loads
 Floats = NDArray[np.float64]
 
 THRUST_SCATTER = 0.5  # one-sided relative; the two published ways to thrust differ by 1.5 to 1.7 on light cuts
+MOST_CURED = 20  # blocks a check for which a way out is computed
 SMALL_FORCE = 50.0  # N; below it a predicted force is smaller than what is not modelled (seals, chips, way friction)
 _GRAVITY = {Level.STOP: 0, Level.REVIEW: 1, Level.NOTE: 2}
 
@@ -33,6 +34,7 @@ class Excess:
     value: float
     band: tuple[float, float]
     limit: float
+    curable: bool = True  # whether a way out is worth computing: the gravest blocks only, each takes a while
 
     @property
     def level(self) -> Level:
@@ -148,7 +150,9 @@ def worst_by_block(excesses: Iterable[Excess]) -> list[Excess]:
         other = kept.get(excess.move.line)
         if other is None or excess.gravity < other.gravity:
             kept[excess.move.line] = excess
-    return [kept[line] for line in sorted(kept)]
+    gravest = sorted(kept.values(), key=lambda excess: excess.gravity)[:MOST_CURED]
+    lines = {excess.move.line for excess in gravest}
+    return [replace(kept[line], curable=line in lines) for line in sorted(kept)]
 
 
 def one_per_block(verdicts: Iterable[Finding | NotJudged]) -> Iterator[Finding | NotJudged]:

@@ -77,7 +77,7 @@ def _last_within(value: Callable[[int], float], most: int, limit: float) -> int:
 def cure(run: Run, excess: Excess, share: Figure) -> str | None:
     """Feed or depth that brings ``share`` (figure over limit) to 1, and what clears the band as well."""
     move = excess.move
-    if move.kind is Kind.THREAD:
+    if move.kind is Kind.THREAD or not excess.curable:
         return None
     spread = max(excess.band[1] / excess.value, 1.0)
     targets = [("Within the limit at ", 1.0)] if excess.value > excess.limit else []

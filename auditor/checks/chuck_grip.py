@@ -27,7 +27,7 @@ from collections.abc import Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from auditor.checks._judging import SMALL_FORCE, lasting, rows_of, threshold
+from auditor.checks._judging import MOST_CURED, SMALL_FORCE, lasting, rows_of, threshold
 from auditor.checks._remedy import way_out
 from auditor.checks._words import figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -75,8 +75,9 @@ def _judge_moves(run: Run) -> Iterator[Finding]:
         line = run.path.moves[int(index)].line
         if used > max(1.0 / better, worst.get(line, (0.0, 0))[0]):
             worst[line] = (used, int(index))
+    gravest = sorted(worst.values(), reverse=True)[:MOST_CURED]
     for used, index in worst.values():
-        yield _finding(run, index, used, share, least, better)
+        yield _finding(run, index, used, share, limits=(least, better), curable=(used, index) in gravest)
 
 
 def used_share(run: Run, loads: Loads) -> Floats:
@@ -112,16 +113,18 @@ def _tilting(run: Run, loads: Loads, grip: float) -> Floats:
     return np.asarray(grip_for_tilting(across, radial, lever, grip))
 
 
-def _finding(run: Run, index: int, used: float, share: Floats, least: float, better: float) -> Finding:
+def _finding(
+    run: Run, index: int, used: float, share: Floats, *, limits: tuple[float, float], curable: bool
+) -> Finding:
     loads, move = run.prediction.loads, run.path.moves[index]
     own = rows_of(loads, index)
     row = own.start + int(np.nanargmax(share[own]))
     needed, left = (float(column[row]) for column in _grips(run, loads))
-    safety = 1.0 / used
+    safety, (least, better) = 1.0 / used, limits
     level, limit = (Level.STOP, least) if safety < least else (Level.REVIEW, better)
     fate = "The work can slip or tilt out of the jaws" if level is Level.STOP else "The grip is thin for this cut"
     message = f"{fate}: {figure(left / 1000)} kN of grip are left at {float(loads.rpm[row]):.0f} rpm, the cut needs " \
               f"{figure(needed / 1000)} kN; that is {figure(safety, 2)} times, {figure(limit, 2)} is wanted (VDI 3106)."
-    ways = way_out(run, move, lambda what: used_share(run, what), 1.0 / limit)
+    ways = way_out(run, move, lambda what: used_share(run, what), 1.0 / limit) if curable else ""
     remedy = f"Held at {ways}; or with more grip." if ways else "More grip, or a shorter stick-out."
     return finding_at(run, CHECK, level, row, message, value=safety, limit=limit, unit="", remedy=remedy)

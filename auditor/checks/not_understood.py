@@ -30,6 +30,7 @@ CHECK = "not-understood"
 LIMITS = ()
 LEVELS = {
     "syntax": Level.REVIEW,
+    "earlier-part": Level.REVIEW,
     "arithmetic": Level.REVIEW,
     "unknown-g": Level.REVIEW,
     "unknown-m": Level.NOTE,

@@ -28,7 +28,7 @@ from collections.abc import Iterator
 import numpy as np
 
 from auditor.checks._cuts import Cut, bending_errors, cuts, diameter_errors
-from auditor.checks._judging import THRUST_SCATTER, threshold
+from auditor.checks._judging import MOST_CURED, THRUST_SCATTER, threshold
 from auditor.checks._remedy import way_out
 from auditor.checks._words import finding_at, micro
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -47,13 +47,14 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if allowed is None:
         yield NotJudged(CHECK, "neither workpiece.diameter_tolerance nor limits.part_bend is declared")
         return
-    errors = diameter_errors(run)
+    errors, cured = diameter_errors(run), 0
     for cut in cuts(run):
         error = cut.largest(errors)
         if not error > CERTAINTY:
             continue
         if run.simulation.final_surface[cut.move.index]:
-            finding = _finishing(run, cut, error, allowed)
+            finding = _finishing(run, cut, error, allowed, curable=cured < MOST_CURED)
+            cured += finding is not None
         else:
             finding = _roughing(run, cut, error)
         if finding is not None:
@@ -67,7 +68,7 @@ def allowed_error(run: Run) -> float | None:
     return run.job.workpiece.diameter_tolerance
 
 
-def _finishing(run: Run, cut: Cut, error: float, allowed: float) -> Finding | None:
+def _finishing(run: Run, cut: Cut, error: float, allowed: float, *, curable: bool) -> Finding | None:
     low, high = run.prediction.band(error, THRUST_SCATTER)
     share = threshold(run, LIMITS[1]) * allowed
     if error > allowed:
@@ -80,7 +81,7 @@ def _finishing(run: Run, cut: Cut, error: float, allowed: float) -> Finding | No
               f"{micro(allowed)} is allowed on the diameter, and bending should take {micro(share)} of it at most."
     row = cut.row_of_largest(run.prediction.loads.bend)
     others = "a smaller nose radius, a freer-cutting edge or a tailstock"
-    ways = way_out(run, cut.move, bending_errors, share)
+    ways = way_out(run, cut.move, bending_errors, share) if curable else ""
     remedy = f"Bent by no more than that at {ways}; or {others}." if ways else f"{others[0].upper()}{others[1:]}."
     return finding_at(run, CHECK, level, row, message, value=error, band=(low, high), limit=limit, unit="mm",
                       remedy=remedy)

@@ -10,8 +10,9 @@ Why
     part-proven program then behaves differently one day.
 
 Formula and source
-    The text itself; common practice. Stop: the control cannot go on (target missing, endless loop, beyond
-    travel). Review: the outcome depends on something outside the program. Note: habits worth knowing.
+    The text itself; common practice. A program with blocks to be skipped is judged with the switch in both positions,
+    and what is wrong in the other one only is a review here. Stop: the control cannot go on (target missing, endless
+    loop, beyond travel). Review: the outcome depends on something outside the program. Note: habits worth knowing.
 
 Remedy
     As named in the message.
@@ -33,8 +34,8 @@ REVIEWS = (
     "speed-in-thread", "tool-in-motion",
 )
 NOTES = (
-    "m-codes-many", "repeats-main", "spindle-left-on", "coolant", "work-zero-changed", "local-shift", "home-unknown",
-    "paren", "semicolon", "safe-start",
+    "block-skip", "m-codes-many", "repeats-main", "spindle-left-on", "coolant", "work-zero-changed", "local-shift",
+    "home-unknown", "paren", "semicolon", "safe-start",
 )
 LEVELS = {
     **dict.fromkeys(STOPS, Level.STOP),
@@ -45,16 +46,5 @@ LEVELS = {
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Everything odd about the way the program runs."""
-    by_run = {
-        "stop-unattended": Level.REVIEW if run.job.unattended else Level.NOTE,  # nobody is there to press the button
-        "block-skip": Level.REVIEW if _skips_motion(run) else Level.NOTE,
-    }
-    yield from findings_of(run, CHECK, LEVELS | by_run)
-
-
-def _skips_motion(run: Run) -> bool:
-    """Whether a switch on the panel changes the path."""
-    return any(
-        block.skip is not None and any(word.letter in ("X", "Z", "U", "W") for word in block.words)
-        for block in run.text.blocks
-    )
+    stop_word = Level.REVIEW if run.job.unattended else Level.NOTE  # nobody is there to press the button
+    yield from findings_of(run, CHECK, LEVELS | {"stop-unattended": stop_word})
