@@ -1,8 +1,7 @@
-"""What the spindle can give at a speed, and how spindle power and torque are judged against it."""
+"""How spindle power and torque are judged against what the spindle can give."""
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterator
 from dataclasses import replace
 
@@ -13,22 +12,9 @@ from auditor.checks._judging import SMALL_FORCE, Excess, over_limit, worst_by_bl
 from auditor.declared.model import Machine
 from auditor.findings import Run
 from auditor.predict.loads import Loads
+from auditor.predict.spindle import power_at
 
 Floats = NDArray[np.float64]
-
-
-def power_at(machine: Machine, rpm: Floats) -> Floats:
-    """Motor power, kW, for as long as one likes: as the curve has it, constant torque below its first point."""
-    speeds, powers = (np.array(column) for column in zip(*machine.power_curve, strict=True))
-    inside = np.interp(rpm, speeds, powers)
-    power: Floats = np.where(rpm < speeds[0], powers[0] * rpm / speeds[0], inside)
-    return power
-
-
-def torque_at(machine: Machine, rpm: Floats) -> Floats:
-    """Torque at the spindle nose, N m, that belongs to that power."""
-    with np.errstate(divide="ignore", invalid="ignore"):
-        return power_at(machine, rpm) * machine.efficiency * 30_000.0 / (math.pi * rpm)
 
 
 def share_of_spindle(machine: Machine, loads: Loads, *, above_base: bool) -> Floats:

@@ -30,9 +30,10 @@ import numpy as np
 
 from auditor.checks._judging import Excess, threshold
 from auditor.checks._remedy import cure
-from auditor.checks._spindle import in_units, overloads, power_at, share_of_spindle
+from auditor.checks._spindle import in_units, overloads, share_of_spindle
 from auditor.checks._words import figure, finding_over, percent
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
+from auditor.predict.spindle import power_at
 
 CHECK = "spindle-power"
 LIMITS = (

@@ -28,10 +28,11 @@ import numpy as np
 
 from auditor.checks._judging import Excess, threshold
 from auditor.checks._remedy import cure
-from auditor.checks._spindle import in_units, overloads, share_of_spindle, torque_at
+from auditor.checks._spindle import in_units, overloads, share_of_spindle
 from auditor.checks._words import finding_over, percent
 from auditor.checks.spindle_power import LIMITS as POWER_LIMITS
 from auditor.findings import Finding, Level, NotJudged, Run
+from auditor.predict.spindle import torque_at
 
 CHECK = "spindle-torque"
 LIMITS = POWER_LIMITS

@@ -10,7 +10,6 @@ from numpy.typing import NDArray
 
 from auditor.checks._bending import bar_push_off
 from auditor.checks._cuts import Cut, cuts, diameter_errors, wedge_angle
-from auditor.checks._spindle import power_at
 from auditor.declared.model import Tool, ToolKind
 from auditor.findings import Run
 from auditor.mechanics.clearance import normal_clearance, orthogonal_clearance
@@ -18,6 +17,7 @@ from auditor.mechanics.copying import minor_edge_angle
 from auditor.mechanics.rake import normal_rake
 from auditor.mechanics.roughness import average_roughness, real_to_ideal
 from auditor.predict.edge_use import edge_use
+from auditor.predict.spindle import power_at
 
 ALL_KINDS: tuple[ToolKind, ...] = (
     "turning", "boring", "grooving", "face grooving", "parting", "threading", "drilling",

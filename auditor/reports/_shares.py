@@ -7,24 +7,10 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from auditor.declared.model import Machine
 from auditor.findings import Run
-from auditor.mechanics.power import torque_from_power
+from auditor.predict.spindle import power_at
 
 Floats = NDArray[np.float64]
-
-
-def spindle_power(machine: Machine, rpm: Floats) -> Floats:
-    """Motor power in kW that the spindle has at a speed: constant torque below the curve's first point."""
-    speeds, powers = (np.array(column) for column in zip(*machine.power_curve, strict=True))
-    share = np.clip(rpm / speeds[0], 1e-9, 1.0)
-    return np.asarray(np.interp(rpm, speeds, powers) * share, dtype=np.float64)
-
-
-def spindle_torque(machine: Machine, rpm: Floats) -> Floats:
-    """Torque in N m at the spindle nose that belongs to that power."""
-    turning = np.where(rpm > 0.0, rpm, np.nan)
-    return np.asarray(torque_from_power(spindle_power(machine, turning) * machine.efficiency, turning))
 
 
 @dataclass(frozen=True, slots=True)
@@ -43,7 +29,7 @@ def shares(run: Run) -> Shares:
     nothing = np.full(loads.move.shape, np.nan)
     allowed = run.limits.get("power_share", 1.0)
     with np.errstate(divide="ignore", invalid="ignore"):
-        spindle = loads.motor_power / (allowed * spindle_power(machine, loads.rpm))
+        spindle = loads.motor_power / (allowed * power_at(machine, loads.rpm))
         thrust = np.fmax(
             np.abs(loads.force_x) / machine.thrust_x if machine.thrust_x else nothing,
             np.abs(loads.force_z) / machine.thrust_z if machine.thrust_z else nothing,

@@ -10,6 +10,7 @@ from __future__ import annotations
 import math
 
 from auditor.declared.model import Tool
+from auditor.interpret.compensation import TIP_VECTORS
 from auditor.simulate.outline import Corner, Outline
 from auditor.simulate.samples import Part
 
@@ -18,11 +19,6 @@ THREAD_FLANK = 3.5  # mm, flank of a thread tool: deep enough for 5 mm of lead, 
 REACH = 60.0  # mm a grooving blade or a drill is followed behind its edge
 
 Vertex = tuple[float, float]
-
-TIP_VECTORS: dict[int, tuple[int, int]] = {  # imaginary tip seen from the nose centre: (z, r)
-    0: (0, 0), 1: (1, 1), 2: (-1, 1), 3: (-1, -1), 4: (1, -1),
-    5: (1, 0), 6: (0, 1), 7: (-1, 0), 8: (0, -1), 9: (0, 0),
-}  # fmt: skip
 
 
 def tool_outline(tool: Tool) -> Outline:
@@ -90,7 +86,7 @@ def _reversed(vertices: list[Vertex], sides: list[Part]) -> tuple[list[Vertex], 
     return [vertices[0], *vertices[:0:-1]], sides[::-1]
 
 
-def _signs(tool: Tool) -> tuple[int, int]:
+def _signs(tool: Tool) -> tuple[float, float]:
     """Where the nose points: (z, r), from the tip number, else from kind and hand."""
     z, r = TIP_VECTORS[tool.tip]
     return (

@@ -11,8 +11,9 @@ from markupsafe import Markup
 from auditor.findings import Audit, Finding, Run
 from auditor.interpret.moves import Kind
 from auditor.mechanics.bending import diameter_error
+from auditor.predict.spindle import power_at, torque_at
 from auditor.reports._figures import duration, figure
-from auditor.reports._shares import Floats, force_limits, seconds, spindle_power, spindle_torque, starts
+from auditor.reports._shares import Floats, force_limits, seconds, starts
 from auditor.reports.html.envelope import Envelope, envelope
 from auditor.reports.html.frame import steps
 from auditor.reports.html.svg import Drawing
@@ -46,9 +47,9 @@ def curves(run: Run) -> list[Curve]:
     bound = np.full(error.shape, np.nan if allowed_error is None else 1000.0 * allowed_error)
     return [
         _banded(run, "Motor power", "kW", loads.motor_power, loads.scatter,
-                allowed * spindle_power(machine, loads.rpm)),
+                allowed * power_at(machine, loads.rpm)),
         _banded(run, "Torque at the spindle", "N m", loads.torque, loads.scatter,
-                allowed * spindle_torque(machine, loads.rpm)),
+                allowed * torque_at(machine, loads.rpm)),
         _banded(run, "Cutting force", "N", loads.cutting, loads.scatter, force_limits(run)),
         _banded(run, "Diameter error by bending of the work", "um", error, np.full(error.shape, _THRUST_SCATTER),
                 bound),
