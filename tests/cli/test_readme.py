@@ -3,13 +3,22 @@
 from __future__ import annotations
 
 import re
+import shutil
+import subprocess
+from collections.abc import Iterator
 from pathlib import Path
+from typing import Any
+from xml.etree import ElementTree
 
 import pytest
 from click import Context
+from click.testing import CliRunner
 
 from auditor.cli import turnaudit
 from auditor.declared.jobs import load_job
+from auditor.declared.schemas import job_schema
+from auditor.reports import formats
+from auditor.shift import read_plan
 
 HOUSE = Path(__file__).parents[2]
 README = (HOUSE / "README.md").read_text(encoding="utf-8")
@@ -21,12 +30,84 @@ def blocks(language: str) -> list[str]:
 
 
 def test_its_job_file_is_a_valid_one(tmp_path: Path) -> None:
-    (job_file,) = blocks("toml")
+    job_file, _ = blocks("toml")
     (tmp_path / "part.nc").write_text("G0 X1.\n", encoding="ascii")
     (tmp_path / "part.job.toml").write_text(job_file, encoding="utf-8")
     job = load_job(tmp_path / "part.job.toml")
     assert (job.batch, job.unattended, job.machine.speed_limit, set(job.tools)) == (60, True, 4500.0, {1})
     assert [(decision.check, decision.tool) for decision in job.accepted] == [("breaker-window", 1)]
+
+
+def test_its_plan_of_a_shift_is_a_valid_one(tmp_path: Path) -> None:
+    _, plan_file = blocks("toml")
+    (tmp_path / "night.toml").write_text(plan_file, encoding="utf-8")
+    plan = read_plan(tmp_path / "night.toml")
+    assert (plan.length, plan.name, plan.unattended, plan.change_over) == (9 * 3600.0, "Friday night", True, 720.0)
+    (job,) = plan.jobs
+    assert (job.batch, job.part_change, dict(job.edges)) == (120, 25.0, {1: 4, 2: 2})
+
+
+def _keys(schema: Any) -> Iterator[str]:
+    """Every key that any table of a schema knows."""
+    if isinstance(schema, dict):
+        yield from schema.get("properties", {})
+        for part in schema.values():
+            yield from _keys(part)
+    elif isinstance(schema, list):
+        for part in schema:
+            yield from _keys(part)
+
+
+def test_its_reference_holds_every_key_of_a_job_file() -> None:
+    written = {text for line in README.splitlines() for text in re.findall(r"`([^`]+)`", line)}
+    words = {word for text in written for word in re.findall(r"[A-Za-z0-9_]+", text)}
+    assert set(_keys(job_schema())) - words == set()
+
+
+def test_its_table_of_formats_holds_every_format() -> None:
+    assert set(re.findall(r"^\| `(\w+)` \|", README.split("| `--format` |")[1].split("\n\n")[0], re.MULTILINE)) == (
+        set(formats()) - {"html"}
+    )
+
+
+def test_its_tour_can_be_taken(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    shutil.copytree(HOUSE / "fixtures" / "demo", tmp_path / "fixtures" / "demo")
+    monkeypatch.chdir(tmp_path)
+    tour = README.split("## A tour of five minutes")[1].split("\n## ")[0]
+    commands = re.findall(r"`turnaudit ([^`]+)`", tour)
+    statuses = [CliRunner().invoke(turnaudit, command.split()).exit_code for command in commands]
+    # stop, explained, the same with pictures, corrected, kept, nothing new, drafted
+    assert statuses == [1, 0, 1, 0, 1, 0, 0]
+    assert {"tour.html", "known.json", "guess.job.toml"} <= {path.name for path in tmp_path.iterdir()}
+
+
+def test_its_recipe_for_ci_is_a_sound_script() -> None:
+    (recipe,) = blocks("bash")
+    shell = shutil.which("bash")
+    if shell is None:
+        pytest.skip("no bash here to read the script")
+    subprocess.run([shell, "-n"], input=recipe, text=True, check=True)
+
+
+def test_its_pictures_stand_alone() -> None:
+    pictures = re.findall(r"!\[(.+?)\]\((.+?)\)", README)
+    assert len(pictures) == 2
+    for said, name in pictures:
+        assert len(said) > 20
+        text = (HOUSE / name).read_text(encoding="utf-8")
+        root = ElementTree.fromstring(text)
+        assert root.tag == "{http://www.w3.org/2000/svg}svg"
+        assert len(list(root.iter())) > 50
+        assert not re.search(r"https?:(?!//www\.w3\.org/2000/svg)|@import|<script|<image", text)
+
+
+def test_hook_for_users_runs_a_command_that_exists() -> None:
+    hooks = (HOUSE / ".pre-commit-hooks.yaml").read_text(encoding="utf-8")
+    (entry,) = re.findall(r"^  entry: turnaudit (\w+)$", hooks, re.MULTILINE)
+    (pattern,) = re.findall(r"^  files: (.+)$", hooks, re.MULTILINE)
+    assert entry in COMMANDS
+    assert all(re.search(pattern, name) for name in ("a.nc", "b/c.TAP", "d.cnc", "e.job.toml"))
+    assert not re.search(pattern, "pyproject.toml")
 
 
 def test_two_commands_set_up_everything() -> None:
