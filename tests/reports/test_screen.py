@@ -15,7 +15,7 @@ from auditor.declared.model import Assumption
 from auditor.errors import Fault
 from auditor.findings import Audit, Level, NotJudged
 from auditor.reports import Unreadable, View, report
-from auditor.reports._shares import spindle_power
+from auditor.predict.spindle import power_at
 from auditor.reports._uses import uses
 from auditor.reports.screen.gauge import CELLS, draw
 from auditor.reports.screen.paper import Paper
@@ -222,7 +222,7 @@ def test_gauge_shows_the_figure_on_its_side_of_the_limit(value: float, limit: fl
 def test_power_the_spindle_has() -> None:
     # Constant torque below base speed: half the speed, half the power. Constant power above.
     machine = builders.job().machine
-    assert spindle_power(machine, np.array([575.0, 1150.0, 4000.0])).tolist() == [7.5, 15.0, 15.0]
+    assert power_at(machine, np.array([575.0, 1150.0, 4000.0])).tolist() == [7.5, 15.0, 15.0]
 
 
 def test_a_line_for_each_tool_with_its_largest_figures() -> None:
