@@ -15,7 +15,7 @@ from auditor.simulate.outline import Corner, Outline
 from auditor.simulate.samples import Part
 
 EDGE_LENGTH_WHEN_UNKNOWN = 15.0  # mm, when neither insert code nor length is declared
-THREAD_FLANK = 3.5  # mm, flank of a thread tool: deep enough for 5 mm of lead, slim at a shoulder (common practice)
+THREAD_FLANK = 2.8  # mm, flank of a thread tool: deep enough for 4 mm of lead, slim at a shoulder (common practice)
 REACH = 60.0  # mm a grooving blade or a drill is followed behind its edge
 
 Vertex = tuple[float, float]
