@@ -14,8 +14,8 @@ from rich.cells import cell_len
 from auditor.declared.model import Assumption
 from auditor.errors import Fault
 from auditor.findings import Audit, Level, NotJudged
-from auditor.reports import Unreadable, View, report
 from auditor.predict.spindle import power_at
+from auditor.reports import Unreadable, View, report
 from auditor.reports._uses import uses
 from auditor.reports.screen.gauge import CELLS, draw
 from auditor.reports.screen.paper import Paper
