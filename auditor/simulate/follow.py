@@ -15,7 +15,7 @@ from auditor.interpret.moves import Interpretation, Kind, Move
 from auditor.simulate.engage import Stretches, engagement
 from auditor.simulate.outline import Outline
 from auditor.simulate.pieces import Piece, path_length, pieces, straight
-from auditor.simulate.rapids import dogleg_contact, near_contact
+from auditor.simulate.rapids import arrival_contact, dogleg_contact, near_contact
 from auditor.simulate.runs import runs
 from auditor.simulate.samples import Contact, Edge, Floats, Ints, LoosePiece, Samples, Simulation
 from auditor.simulate.shares import swept_volume
@@ -92,10 +92,12 @@ class Follower:
         """Carry out one move, or a run of cuts that lie on one line."""
         move = run[0]
         tool = self.job.tools.get(move.tool) if move.tool is not None else None
-        if tool is None or tool.kind == "stop" or move.start is None or move.end is None:
+        if tool is None or tool.kind == "stop" or move.end is None:
             return
         outline = self._outline(tool)
-        if move.kind is Kind.RAPID:
+        if move.start is None:
+            self._arrive(move, outline)
+        elif move.kind is Kind.RAPID:
             self._rapid(move, outline)
         elif move.kind is Kind.THREAD and tool.kind == "threading":
             self._thread(move, outline)
@@ -181,6 +183,13 @@ class Follower:
         if move.dogleg:
             self._note(dogleg_contact(move, outline, before, self.job.machine, SCRATCH))
         self._note(near_contact(move, outline, before, self.raw))
+
+    def _arrive(self, move: Move, outline: Outline) -> None:
+        """A rapid from a place not known: its way is not judged, but it must not end inside the stock."""
+        contact = arrival_contact(move, outline, self.stock, SCRATCH) if move.kind is Kind.RAPID else None
+        if contact is not None and move.end is not None:
+            self.contacts.append(contact)
+            self._remove(move, swept(outline.hull(), (0.0, 0.0), move.end))
 
     def _first_engaged(self, first: int) -> Point:
         """Where the programmed point stands when the edge first meets the stock."""

@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import Literal
+
 import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
@@ -30,12 +32,27 @@ def dogleg_contact(
         if piece is None:
             continue
         hit = shapely.intersection(stock, swept(outline.hull(), piece.step, piece.start))
-        if hit.area > scratch**2:
-            z_low, r_low, z_high, r_high = hit.bounds
-            depth = min(z_high - z_low, r_high - r_low)
-            if depth > scratch:
-                return Contact(move.index, "dogleg", z_high, r_high, depth)
+        contact = _contact(move, "dogleg", hit, scratch)
+        if contact is not None:
+            return contact
     return None
+
+
+def arrival_contact(move: Move, outline: Outline, stock: BaseGeometry, scratch: float) -> Contact | None:
+    """Contact where a rapid ends, for one whose start is not known."""
+    if move.end is None:
+        return None
+    hit = shapely.intersection(stock, swept(outline.hull(), (0.0, 0.0), move.end))
+    return _contact(move, "rapid", hit, scratch)
+
+
+def _contact(move: Move, kind: Literal["rapid", "dogleg"], hit: BaseGeometry, scratch: float) -> Contact | None:
+    """The contact that an overlap with the stock amounts to; scratches are none."""
+    if hit.area <= scratch**2:
+        return None
+    z_low, r_low, z_high, r_high = hit.bounds
+    depth = min(z_high - z_low, r_high - r_low)
+    return Contact(move.index, kind, z_high, r_high, depth) if depth > scratch else None
 
 
 def _corner(start: Point, end: Point, machine: Machine) -> Point:

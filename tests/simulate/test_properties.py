@@ -6,6 +6,7 @@ import math
 from dataclasses import replace
 from itertools import pairwise
 
+import numpy as np
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
@@ -13,7 +14,21 @@ from hypothesis import strategies as st
 from auditor.declared.model import Point
 from auditor.predict import predict
 from auditor.simulate import simulate
-from tests.simulate.workshop import BORER, COPIER, KNIFE, ROUGHER, TOOLS, Path, bar, cut, deepest, interpreted, job
+from tests.simulate.workshop import (
+    BLADE,
+    BORER,
+    COPIER,
+    KNIFE,
+    ROUGHER,
+    TOOLS,
+    Path,
+    bar,
+    cut,
+    deepest,
+    depths,
+    interpreted,
+    job,
+)
 
 STEPS = st.lists(
     st.tuples(st.floats(-9.0, 4.0), st.floats(-4.0, 5.0)).filter(lambda step: math.hypot(*step) > 0.05),
@@ -24,6 +39,24 @@ LONG_STEPS = st.lists(
     min_size=1, max_size=4,
 )  # fmt: skip
 TOOL = st.sampled_from([ROUGHER, COPIER])
+
+
+@given(steps=STEPS, tool=st.sampled_from([ROUGHER, COPIER, KNIFE, BLADE]))
+@settings(max_examples=40, deadline=None)
+def test_depth_along_the_path_is_the_area_that_goes(steps: list[tuple[float, float]], tool: object) -> None:
+    """Every point of the edge sweeps fresh stock: extent times way is the area cut out of the half-section."""
+    path = path_of(steps, tool.number)  # type: ignore[attr-defined]
+    clear = Path(1.0, 45.0, tool=tool.number).to(1.0, 29.0)  # type: ignore[attr-defined]
+    for move in path.moves:
+        clear.to(move.end_z, move.end_r)
+    simulation = cut(clear, bar())
+    if simulation.loose:
+        return
+    before = sorted(simulation.stock_before.items())
+    for (index, stock), (_, rest) in pairwise([*before, (None, simulation.final)]):
+        positions, depth = depths(simulation, index)
+        swept = np.sum(np.diff(positions) * 0.5 * (depth[1:] + depth[:-1]))
+        assert swept == pytest.approx(stock.area - rest.area, rel=1e-4, abs=2e-3)
 
 
 def path_of(steps: list[tuple[float, float]], tool: int) -> Path:

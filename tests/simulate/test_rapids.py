@@ -7,6 +7,7 @@ from dataclasses import replace
 
 import pytest
 
+from auditor.declared.model import Point
 from tests.simulate.workshop import KNIFE, MACHINE, Path, bar, cut, shaped
 
 
@@ -69,3 +70,15 @@ def test_close_to_a_turned_surface_is_everyday() -> None:
 def test_drawing_away_from_raw_stock_is_no_approach() -> None:
     simulation = cut(Path(0.2, 25.0, tool=KNIFE.number).rapid(0.6, 25.0), bar())
     assert simulation.contacts == ()
+
+
+def test_a_first_rapid_from_nowhere_must_not_end_inside_the_stock() -> None:
+    """No tool change position declared: the way is not known, its end is."""
+    for end, kinds in ((Point(-20.0, 25.0), ["rapid"]), (Point(2.0, 25.0), [])):
+        path = Path(0.0, 0.0, tool=KNIFE.number).rapid(*end)
+        path.moves[0] = replace(path.moves[0], start_z=None, start_r=None)
+        simulation = cut(path.to(-30.0, 25.0), bar())
+        assert [contact.kind for contact in simulation.contacts] == kinds
+        assert all(contact.depth > 4.9 for contact in simulation.contacts)
+        # the tool stands in a hole of its own shape; the cut begins there
+        assert (simulation.removed[0] > 0.0) == bool(kinds)
