@@ -106,13 +106,19 @@ def _theoretical_ends(start: Point, legs: Sequence[Leg]) -> list[Point]:
                 raise _fault(leg, "a line given by its angle alone needs a following line with X, Z and an angle")
             here = _crossing(here, leg, legs[index + 1])
         else:
-            here = _end(here, leg)
+            here = sharp_end(here, leg)
         ends.append(here)
     return ends
 
 
-def _end(start: Point, leg: Leg) -> Point:
-    """End of a leg of which at most one coordinate follows from the angle."""
+def sharp_end(start: Point, leg: Leg) -> Point:
+    """End of a leg, its corner not yet broken, of which at most one coordinate follows from the angle.
+
+    Raises
+    ------
+    CycleFault
+        Topic ``cycle-corner``: the coordinate left out does not follow from the angle.
+    """
     if leg.angle is None or (leg.end_z is not None and leg.end_r is not None):
         return Point(start.z if leg.end_z is None else leg.end_z, start.r if leg.end_r is None else leg.end_r)
     sine, cosine = math.sin(math.radians(leg.angle)), math.cos(math.radians(leg.angle))

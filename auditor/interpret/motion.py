@@ -7,7 +7,7 @@ import math
 from auditor.declared.control_settings import amount, choice
 from auditor.declared.model import Point
 from auditor.interpret.arcs import Arc, arc_by_centre, arc_by_radius
-from auditor.interpret.corners import Leg
+from auditor.interpret.corners import Leg, sharp_end
 from auditor.interpret.cutting_conditions import check_cut
 from auditor.interpret.cycles.call import CycleFault, Stroke
 from auditor.interpret.moves import Feed, Kind
@@ -124,9 +124,8 @@ def straight(run: Run, words: BlockWords) -> None:
     run.chain.words.append(words)
     check_cut(run)
     if leg.needs_following:
-        run.state.z, run.state.r = leg.end_z, leg.end_r
-        if leg.angle is None:
-            run.state.z, run.state.r = end_point(run, words)
+        start = None if leg.angle_only else run.state.position
+        run.state.z, run.state.r = (leg.end_z, leg.end_r) if start is None else sharp_end(start, leg)
     else:
         close_chain(run)
 

@@ -14,6 +14,7 @@ from auditor.declared.model import Point
 from auditor.interpret.corners import Leg, draw
 from auditor.interpret.cycles.call import CycleFault
 from auditor.interpret.moves import Kind
+from tests.interpret.programs import carried_out, rows
 
 FIXTURE = Path(__file__).parents[2] / "fixtures" / "language" / "cycle_examples.json"
 
@@ -107,3 +108,28 @@ def test_rounding_touches_both_sides(first: float, turn: float, sense: int, radi
         assert math.hypot(*across) == pytest.approx(radius, abs=1e-9)
         assert across[0] * math.cos(direction) + across[1] * math.sin(direction) == pytest.approx(0.0, abs=1e-9)
     assert arc.clockwise == (sense < 0)
+
+
+# found by the second statement (tests/interpret/reference): distances were taken twice from a block with a corner word
+@pytest.mark.parametrize(
+    ("system", "blocks"),
+    [
+        ("A", "G1 U20.,C1. F.1\nW-20.,R2.\nU10."),
+        ("B", "G91 G1 X20.,C1. F.1\nZ-20.,R2.\nX10."),
+        ("A", "G1 X20.,C1. F.1\nZ-20.,R2.\nX30."),
+    ],
+)
+def test_distances_to_broken_corners(system: str, blocks: str) -> None:
+    found = carried_out(f"G97 S500 M3\nG0 X0. Z0.\n{blocks}", system=system)
+    assert rows(found)[1:] == [
+        ("F", 18.0, 0.0),
+        ("F", 20.0, -1.0),
+        ("F", 20.0, -18.0),
+        ("CW", 24.0, -20.0),
+        ("F", 30.0, -20.0),
+    ]
+
+
+def test_a_distance_from_a_corner_that_an_angle_gives() -> None:
+    found = carried_out("G97 S500 M3\nG0 X20. Z0.\nG1 X40.,A135.,C1. F.1\nW-10.")
+    assert rows(found)[-1] == ("F", 40.0, pytest.approx(-20.0))  # 10 mm of radius at 45 degrees, then 10 mm more

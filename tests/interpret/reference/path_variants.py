@@ -1,0 +1,172 @@
+"""Random plain paths: arcs, broken corners, nose radius compensation. Bounds are in mm."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from math import hypot, pi
+
+from tests.interpret.reference.contours import placed
+from tests.interpret.reference.corners import Corner, Place, angle, broken
+from tests.interpret.reference.nose import compensated
+from tests.interpret.reference.pen import Pen
+from tests.interpret.reference.steps import Frame, Piece, Step, arc
+
+
+def arcs(pen: Pen) -> None:
+    """Arcs by R and by I and K, straight moves between them, incremental words."""
+    pen.start(pen.size(20, 40), 0.0)
+    for _ in range(pen.rng.randint(2, 6)):
+        z, r = pen.here()
+        if pen.rng.random() < 0.4:
+            words = pen.axes(pen.x + pen.size(-8, 12), z - pen.size(0, 8))
+            pen.write(pen.g("G1"), *words)
+            pen.note(Step("F", pen.x, pen.z))
+            continue
+        kind = pen.rng.choice(["CW", "CCW"])
+        z1, r1 = z - pen.size(1, 8), r + pen.size(-3, 6)
+        chord = hypot(z1 - z, r1 - r)
+        piece = arc(kind, z, r, z1, r1, round(chord * pen.rng.uniform(0.55, 2.0), 2 if not pen.inch else 3))
+        centre = pen.arc_words(piece)
+        words = pen.axes(2 * r1, z1)
+        pen.write(pen.g({"CW": "G2", "CCW": "G3"}[kind]), *words, *centre, pen.feed_word(0.1))
+        pen.note(piece.step())
+    pen.rapid(pen.size(90, 120), None)
+
+
+def corner_words(pen: Pen) -> None:
+    """Chamfers and fillets between straight moves."""
+    pen.start(0.0 if pen.rng.random() < 0.5 else pen.size(10, 20), pen.size(0, 2))
+    start: Place = pen.here()
+    points: list[tuple[Place, Corner]] = []
+    place = start
+    turn = pen.rng.random() < 0.5
+    for _ in range(pen.rng.randint(2, 5)):
+        turn = not turn
+        dz, dr = -pen.size(8, 16), pen.size(6, 12)
+        mix = pen.rng.random() < 0.3
+        place = (
+            round(place[0] + (dz if turn or mix else 0.0), 6),
+            round(place[1] + (dr if not turn or mix else 0.0), 6),
+        )
+        word: Corner = pen.rng.choice([None, ("C", pen.size(0.5, 2)), ("R", pen.size(0.5, 2))])
+        points.append((place, word))
+    points[-1] = (points[-1][0], None)
+    chain = [start, *(p for p, _ in points)]
+    points = [
+        (p, None if w and abs(angle(chain[i], p, chain[i + 2]) - pi) < 0.05 else w)
+        for i, (p, w) in enumerate(points[:-1])
+    ] + [points[-1]]
+    steps = broken(start, points)
+    for (z, r), word in points:
+        words = pen.axes(2 * r, z)
+        pen.write(pen.g("G1"), *words, *([f",{word[0]}" + pen.number(word[1])] if word else []))
+        pen.note(steps.pop(0), *([steps.pop(0)] if word else []))
+    pen.rapid(pen.size(120, 140), None)
+
+
+def compensation(pen: Pen) -> None:
+    """Nose radius compensation along lines and arcs, plain."""
+    _compensated(pen, in_finish=False)
+
+
+def compensated_finish(pen: Pen) -> None:
+    """Compensation within the finishing cycle."""
+    _compensated(pen, in_finish=True)
+
+
+def _compensated(pen: Pen, in_finish: bool) -> None:
+    inside = pen.rng.random() < 0.3
+    pen.nose = pen.rng.choice([0.4, 0.8, 1.2])
+    pen.tip = 2 if inside else 3
+    nose = pen.mm(pen.nose)
+    side = 1 if inside else -1
+    pieces: list[Piece] = [Piece("F", 0.0, 0.0, -pen.size(3, 6), pen.size(1, 5))]
+    for _ in range(pen.rng.randint(2, 5)):
+        z, r = pieces[-1].z1, pieces[-1].r1
+        dz, dr = pen.size(4, 10), pen.size(3, 6)
+        kind = pen.rng.choice(["cylinder", "taper", "shoulder", "fillet", "round", "dip"])
+        if kind == "cylinder":
+            pieces.append(Piece("F", z, r, z - dz, r))
+        elif kind == "taper":
+            pieces.append(Piece("F", z, r, z - dz, r + dr))
+        elif kind == "shoulder":
+            pieces += [Piece("F", z, r, z - dz, r), Piece("F", z - dz, r, z - dz, r + dr)]
+        elif kind == "fillet":
+            pieces += [Piece("F", z, r, z - dz, r), arc("CW", z - dz, r, z - dz - dr, r + dr, dr)]
+            z, r = pieces[-1].z1, pieces[-1].r1
+            pieces.append(Piece("F", z, r, z, r + dr))
+        elif kind == "round":
+            pieces += [Piece("F", z, r, z, r + dr), arc("CCW", z, r + dr, z - dr, r + 2 * dr, dr),
+                       Piece("F", z - dr, r + 2 * dr, z - dr - dz, r + 2 * dr)]  # fmt: skip
+        else:  # an acute corner to go round: out along a face, back down a falling flank
+            pieces += [Piece("F", z, r, z, r + 2 * dr), Piece("F", z, r + 2 * dr, z - 2 * dr, r + dr * 1.5)]
+            z, r = pieces[-1].z1, pieces[-1].r1
+            pieces.append(Piece("F", z, r, z - dz, r))
+    z, r = pieces[-1].z1, pieces[-1].r1
+    pieces.append(Piece("F", z, r, z, r + pen.size(3, 5)))
+    height = max(piece.r1 for piece in pieces)
+    base = pen.size(5, 12) if not inside else height + pen.size(5, 10)
+    frame = Frame(False, 1, -1 if inside else 1)
+    shape = placed([p for p in pieces if hypot(p.z1 - p.z0, p.r1 - p.r0) > 0], frame, pen.size(0, 2), base)
+    sign = -1 if inside else 1
+    xs, zs = 2 * (shape[0].r0 + sign * pen.size(3, 6)), shape[0].z0 + pen.size(3, 6)
+    steps = compensated(shape, side, nose, pen.tip)
+    away = 2 * (shape[-1].r1 + sign * pen.size(3, 6)), shape[-1].z1
+    comp = pen.g("G42" if side < 0 else "G41")
+    pen.start(xs, zs)
+    if in_finish:
+        _finish_compensated(pen, shape, steps, comp, away, xs, zs)
+        return
+    if pen.rng.random() < 0.3:
+        pen.write(comp)
+        comp = ""
+    words = pen.axes(2 * shape[0].r0, shape[0].z0)
+    pen.write(comp, pen.g("G1"), *words, pen.feed_word(0.1))
+    pen.note(steps[0])
+    _compensated_blocks(pen, shape, steps[1:])
+    words = pen.axes(away[0], None)
+    pen.write("G40", pen.g("G1"), *words)
+    pen.note(Step("F", away[0], away[1]))
+    pen.rapid(pen.size(120, 150), 50.0)
+
+
+def _compensated_blocks(pen: Pen, pieces: Sequence[Piece], steps: list[Step]) -> None:
+    """Blocks of the contour; an acute corner gives its block a second step."""
+    steps = list(steps)
+    for number, piece in enumerate(pieces):
+        code = pen.g({"F": "G1", "CW": "G2", "CCW": "G3"}[piece.kind])
+        centre = pen.arc_words(piece) if piece.is_arc else []
+        words = pen.axes(2 * piece.r1, piece.z1)
+        pen.write(code, *words, *centre)
+        pen.note(steps.pop(0))
+        links = len(steps) - (len(pieces) - number - 1)
+        if links and _acute(piece, pieces[number + 1] if number + 1 < len(pieces) else None):
+            pen.note(steps.pop(0))
+
+
+def _acute(piece: Piece, after: Piece | None) -> bool:
+    if after is None or piece.is_arc or after.is_arc:
+        return False
+    a, b = (piece.z1 - piece.z0, piece.r1 - piece.r0), (after.z1 - after.z0, after.r1 - after.r0)
+    return a[0] * b[0] + a[1] * b[1] < 0
+
+
+def _finish_compensated(
+    pen: Pen, pieces: Sequence[Piece], steps: list[Step], comp: str, away: tuple[float, float], xs: float, zs: float
+) -> None:
+    """Compensation on in ns and off in nf."""
+    numbers = (10, 20)
+    mode = pen.rng.choice(["G0", "G1"])
+    opening = Step("R" if mode == "G0" else "F", steps[0].x, steps[0].z)
+    pen.write(pen.g("finish"), "P10", "Q20")
+    pen.note(opening, *steps[1:], Step("F", away[0], away[1]), Step("R", xs, zs))
+    pen.write("M30")
+    words = pen.axes(2 * pieces[0].r0, pieces[0].z0)
+    pen.write(comp, pen.g(mode), *words, n=numbers[0])
+    for piece in pieces:
+        code = pen.g({"F": "G1", "CW": "G2", "CCW": "G3"}[piece.kind])
+        centre = pen.arc_words(piece) if piece.is_arc else []
+        words = pen.axes(2 * piece.r1, piece.z1)
+        pen.write(code, *words, *centre)
+    words = pen.axes(away[0], None)
+    pen.write("G40", pen.g("G1"), *words, n=numbers[1])
