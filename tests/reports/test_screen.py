@@ -143,7 +143,12 @@ def test_clear_never_stands_alone() -> None:
     beside = shown(builders.audit(not_judged=items)).splitlines()[1]
     assert beside.strip() == "clear of what was judged; not judged: chuck-grip, bar-whip, edge-life"
     brief = shown(builders.audit(not_judged=items), brief=True)
-    assert beside in brief
+    assert brief == "○ CLEAR  drive-stub.nc   not judged: chuck-grip, bar-whip, edge-life\n"
+    several = [NotJudged(f"check-with-a-long-name-{number}", "why") for number in range(9)] + items
+    line = shown(builders.audit(not_judged=several), brief=True)
+    assert "not judged: chuck-grip" in line
+    assert line.endswith(" more\n")
+    assert len(line) <= 81
     assert "no promise" in shown(builders.audit())
 
 

@@ -9,7 +9,7 @@ from dataclasses import dataclass
 Place = tuple[float, float]
 Box = tuple[float, float, float, float]
 
-_APART = 25.0  # px between two numbers
+_APART = 29.0  # px between two numbers
 _RINGS = (24.0, 40.0, 58.0, 78.0, 100.0, 124.0, 150.0)
 _TURNS = 16
 _EDGE = 12.0

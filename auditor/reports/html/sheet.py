@@ -9,11 +9,11 @@ from dataclasses import dataclass
 from markupsafe import Markup
 
 from auditor.declared.model import Assumption, Job, Material
-from auditor.findings import Audit, Finding, Level, NotJudged
+from auditor.findings import Audit, Finding, NotJudged
 from auditor.interpret.moves import NotAudited
 from auditor.reports import Unreadable
 from auditor.reports._figures import duration
-from auditor.reports._grounds import by_weight
+from auditor.reports._grounds import by_weight, counts
 from auditor.reports._groups import groups
 from auditor.reports._marks import Span, block_at, spans
 from auditor.reports._shares import shares
@@ -99,15 +99,6 @@ def name_of(path: str) -> str:
     return path.replace("\\", "/").rstrip("/").rpartition("/")[2] or path
 
 
-def counts(audit: Audit) -> str:
-    """How many findings of which level, in words."""
-    told = (
-        (audit.count(Level.STOP), "must be fixed"), (audit.count(Level.REVIEW), "to decide"),
-        (audit.count(Level.NOTE), "to know"), (len(audit.coverage.not_audited), "not checked"),
-    )
-    return ", ".join(f"{number} {what}" for number, what in told if number) or "no findings"
-
-
 def _marked(single: Sequence[tuple[int, Finding]], audit: Audit) -> list[section.Mark]:
     ranked = sorted(
         single, key=lambda item: (item[1].accepted is not None, _GRAVE.index(item[1].level), item[1].line)
@@ -120,12 +111,25 @@ def _heading(audit: Audit) -> tuple[tuple[str, str], ...]:
     run, job = audit.run, audit.run.job
     batch = "" if job.batch is None else f"{job.batch} parts" + (", unattended" if job.unattended else "")
     facts = (
-        ("job file", "none" if job.path is None else name_of(job.path)), ("machine", job.machine.name),
-        ("held in", job.workholding.name), ("material", job.workpiece.material.name), ("batch", batch),
+        ("job file", "none" if job.path is None else name_of(job.path)), ("machine", _machine(job)),
+        ("held in", _held(job)), ("material", job.workpiece.material.name), ("batch", batch),
         ("program", f"code system {run.path.system}, {run.path.units}"),
         ("time", f"cutting {duration(audit.totals.cutting_time)} of {duration(audit.totals.time)}"),
     )
     return tuple((name, value) for name, value in facts if value)
+
+
+def _machine(job: Job) -> str:
+    """The machine by its name, where it has one, and by what matters here."""
+    machine = job.machine
+    figures = f"{max(power for _, power in machine.power_curve):g} kW, {machine.speed_limit:.0f} rpm"
+    return figures if machine.name == "machine" else f"{machine.name}, {figures}"
+
+
+def _held(job: Job) -> str:
+    work = job.workholding
+    figures = f"{work.kind}, stick-out {work.stick_out:g} mm"
+    return figures if work.name == "workholding" else f"{work.name}, {figures}"
 
 
 def _beside_clear(audit: Audit) -> str | None:

@@ -5,15 +5,16 @@ from __future__ import annotations
 import re
 from collections.abc import Sequence
 
-from auditor.findings import Audit, Level
+from auditor.findings import Audit
 from auditor.reports import Outcome, Unreadable, View
 from auditor.reports._figures import duration
-from auditor.reports._grounds import by_weight
+from auditor.reports._grounds import by_weight, counts
 from auditor.reports.screen import findings, grounds, tools
 from auditor.reports.screen.paper import COLOURS, Paper, signs
 
 __all__ = ["join", "render", "signs"]
 
+_NAME = 24  # columns a program's name keeps in the first line
 _STYLING = re.compile(r"\x1b\[[0-9;]*m")
 
 
@@ -44,18 +45,27 @@ def join(parts: Sequence[str], several: bool) -> str:
 def _verdict(paper: Paper, audit: Audit) -> None:
     """Shape, word, program, and how many findings of which level."""
     word = audit.verdict.upper()
-    counts = ", ".join(
-        f"{number} {what}" for number, what in (
-            (audit.count(Level.STOP), "must be fixed"), (audit.count(Level.REVIEW), "to decide"),
-            (audit.count(Level.NOTE), "to know"), (len(audit.coverage.not_audited), "not checked"),
-        ) if number
-    ) or "no findings"
     lead = f"{paper.sign(audit.verdict)} {word}"
-    room = paper.view.width - len(lead) - len(counts) - 5
+    told = _told(audit, paper.view.width - len(lead) - _NAME - 5)
+    room = paper.view.width - len(lead) - len(told) - 5
     name = paper.fit_path(audit.run.text.path, max(room, 12))
-    paper.row((lead, COLOURS[audit.verdict]), "  ", name, "   ", counts)
-    if audit.verdict == "clear":
+    paper.row((lead, COLOURS[audit.verdict]), "  ", name, "   ", told)
+    if audit.verdict == "clear" and not paper.view.brief:
         _beside_clear(paper, audit)
+
+
+def _told(audit: Audit, room: int) -> str:
+    """What there is to see to; beside the word clear, by name as far as the line holds it, what was not judged."""
+    told = counts(audit)
+    names = list(dict.fromkeys(item.check for item in by_weight(audit.not_judged)))
+    if audit.verdict != "clear" or not names:
+        return told
+    for kept in range(len(names), 0, -1):
+        more = f" and {len(names) - kept} more" if kept < len(names) else ""
+        longer = told.replace(f"{len(names)} not judged", f"not judged: {', '.join(names[:kept])}{more}")
+        if len(longer) <= room:
+            return longer
+    return told
 
 
 def _beside_clear(paper: Paper, audit: Audit) -> None:
