@@ -46,7 +46,9 @@ def _surface_length(
     neighbours = samples.piece[first] == samples.piece[second]
     first, second = first[neighbours], second[neighbours]
     paths = shapely.linestrings(np.stack((points[first], points[second]), axis=1))
-    on = shapely.length(shapely.intersection(paths, surface))
+    on = np.zeros(len(paths))
+    near = shapely.intersects(surface, paths)  # quick on a prepared shape; most paths were turned away since
+    on[near] = shapely.length(shapely.intersection(paths[near], surface))
     return np.bincount(samples.move[first], weights=on, minlength=moves).astype(np.float64)
 
 
