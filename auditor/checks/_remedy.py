@@ -9,7 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from auditor.checks._judging import Excess, lasting, rows_of
-from auditor.checks._words import INCH, feed, figure
+from auditor.checks._words import INCH, feed, length
 from auditor.findings import Run
 from auditor.interpret.moves import Kind, Move
 from auditor.predict.loads import Loads
@@ -103,10 +103,5 @@ def feed_word(run: Run, move: Move, per_rev: float) -> str:
     scale = INCH if run.path.units == "in" else 1.0
     if move.feed is not None and move.feed.mode == "min":
         rpm = _largest(run.prediction.loads.rpm, run, move)
-        return f"F{per_rev * rpm / scale:.0f}" if rpm else f"{feed(per_rev)} mm a turn"
+        return f"F{per_rev * rpm / scale:.0f}" if rpm else f"{length(run, per_rev, 3)} a turn"
     return f"F{math.floor(per_rev / scale * 1e4) / 1e4:.4f}" if scale != 1.0 else f"F{feed(per_rev)}"
-
-
-def length(run: Run, value: float) -> str:
-    """A length as the program's units have it."""
-    return f"{figure(value / INCH, 3)} in" if run.path.units == "in" else f"{figure(value, 2)} mm"

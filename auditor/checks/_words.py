@@ -10,6 +10,7 @@ from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Run
 
 INCH = 25.4
+MOST_PLACES = 4
 
 
 def figure(value: float, decimals: int = 1) -> str:
@@ -59,6 +60,22 @@ def z_word(run: Run, z: float) -> str:
     return f"Z{figure(z / INCH, 4)}" if run.path.units == "in" else f"Z{figure(z, 2)}"
 
 
+def length(run: Run, value: float, decimals: int = 2) -> str:
+    """A length in the program's units; what rounds to nothing gets more places, never "0 in"."""
+    if run.path.units == "in":
+        value, decimals, unit = value / INCH, decimals + 1, "in"
+    else:
+        unit = "mm"
+    while decimals < MOST_PLACES and value != 0.0 and round(value, decimals) == 0.0:
+        decimals += 1
+    return f"{figure(value, decimals)} {unit}"
+
+
+def thousandths(run: Run, value: float) -> str:
+    """A small length: thousandths of a millimetre, in inch programs tenths of a thousandth of an inch."""
+    return f"{value / INCH:.4f} in" if run.path.units == "in" else f"{value:.3f} mm"
+
+
 def tool_name(run: Run, number: int | None) -> str:
     """What a setter calls the tool."""
     if number is None:
@@ -71,10 +88,12 @@ def situation(run: Run, row: int) -> str:
     """T1 CNMG 120408 at X46, depth 5.0, feed 0.45, 180 m/min, cutting force 4460 N, effective rake +6 deg."""
     loads = run.prediction.loads
     move = run.path.moves[int(loads.move[row])]
+    inches = "{:.4f}".format if run.path.units == "in" else None
+    unit = INCH if inches else 1.0
     parts = [
         f"{tool_name(run, move.tool)} at {x_word(run, float(loads.r[row]))}",
-        _known("depth {}", loads.depth[row], depth),
-        _known("feed {}", loads.feed[row], feed),
+        _known("depth {}", float(loads.depth[row]) / unit, inches or depth),
+        _known("feed {}", float(loads.feed[row]) / unit, inches or feed),
         _known("{} m/min", loads.speed_high[row], "{:.0f}".format),
         _known("cutting force {}", loads.cutting[row], force),
         _known("effective rake {}", loads.rake[row], angle),

@@ -22,8 +22,8 @@ from collections.abc import Iterator
 
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import lasting, threshold
-from auditor.checks._remedy import depth_within, length
-from auditor.checks._words import figure, finding_at
+from auditor.checks._remedy import depth_within
+from auditor.checks._words import figure, finding_at, length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "depth-over-edge"

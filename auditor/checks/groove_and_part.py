@@ -24,8 +24,8 @@ from collections.abc import Iterator
 
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import lasting, origin, threshold
-from auditor.checks._remedy import feed_word, length
-from auditor.checks._words import feed, figure, finding_at
+from auditor.checks._remedy import feed_word
+from auditor.checks._words import feed, figure, finding_at, length
 from auditor.declared.model import ToolKind
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 

@@ -12,9 +12,10 @@ Why
 Formula and source
     Geometry of the half-section, exact. Stop: contact in the straight path; contact in the bent path (review
     when the machine's rapid rates are not declared, since they shape it); contact with chuck or tailstock.
-    A tool that only lifts off along the shoulder it has cut wipes away the wedge its edge left: a note up to
-    0.2 mm, a review up to 0.6. Review: a rapid that ends nearer than rapid_clearance to a raw surface; a loose
-    piece. Common practice.
+    A tool that draws away from the surface it has just cut and grazes less than 0.05 mm: a note. One that lifts
+    off along the shoulder it has cut wipes away the wedge its edge left: a note up to 0.2 mm, a review up to 0.6.
+    Review: a rapid that ends nearer to a raw surface than rapid_clearance (rolled, cast or forged) or
+    rapid_clearance_bright (bright or sawn); a loose piece. Common practice.
 
 Remedy
     Move one axis after the other, or start the rapid further out; feed the last millimetre to a raw surface.
@@ -22,25 +23,32 @@ Remedy
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 
 import shapely
 from shapely.geometry.base import BaseGeometry
 
 from auditor.checks._judging import origin, threshold
-from auditor.checks._remedy import length
 from auditor.checks._solids import entered, jaw_zone, outlines, tailstock_zone
-from auditor.checks._words import figure, x_word, z_word
+from auditor.checks._words import figure, length, x_word, z_word
 from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind, Move
 from auditor.simulate.samples import Contact, LoosePiece
+from auditor.simulate.tool_outline import tool_outline
 
 CHECK = "rapid-in-stock"
-LIMITS = (Limit("rapid_clearance", 1.0, "mm", "common practice", "least distance of a rapid's end from a raw surface"),)
+LIMITS = (
+    Limit("rapid_clearance", 1.0, "mm", "common practice", "least distance from a rolled, cast or forged surface"),
+    Limit("rapid_clearance_bright", 0.5, "mm", "common practice", "least distance from a bright or sawn surface"),
+)
+TRUE_SKINS = ("bright", "sawn")  # known to a few tenths of a millimetre
 SMALLEST_PIECE = 5.0  # mm3; what is smaller is swarf
-GRAZE = 0.2  # mm; what a 95 degree edge leaves at a shoulder over the usual lift-off
+GRAZE = 0.05  # mm; a wipe of the surface the tool is just leaving
+LIFT_OFF = 0.2  # mm; what a 95 degree edge leaves at a shoulder over the usual lift-off
 SHOULDER_WEDGE = 0.6  # mm
+LEAST_SINE = 1e-6  # a rapid flatter than this to the surface does not leave it
 CUTS_OFF = ("parting", "grooving", "face grooving")
 
 
@@ -60,32 +68,64 @@ def _judge_contact(run: Run, contact: Contact) -> Iterator[Finding]:
     at = Point(contact.z, contact.r)
     place = f"at {x_word(run, contact.r)} {z_word(run, contact.z)}"
     deep = length(run, contact.depth)
-    match contact.kind:
-        case "rapid" if _pulls_off(run, move, contact):
-            level = Level.NOTE if contact.depth <= GRAZE else Level.REVIEW
-            message = f"The tool wipes along the shoulder it has just cut at rapid {place}, {deep} deep."
-        case "rapid":
-            level, message = Level.STOP, f"The tool hits the stock at rapid {place}, {deep} deep. " \
-                "What it would have broken out is counted as cut from here on."
-        case "dogleg":
-            assumed = any(item.about.startswith("machine.rapid") for item in run.job.assumptions)
-            level = Level.REVIEW if assumed else Level.STOP
-            message = "The two axes do not run in a straight line: each runs at its own rapid rate, and the bent " \
-                f"path goes through the stock {place}, {deep} deep." + (" The rates are assumed." if assumed else "")
-        case _:
-            if contact.kind != "near" or contact.depth >= threshold(run, LIMITS[0]) - 0.01:
-                return
-            level, message = Level.REVIEW, f"The rapid ends {figure(contact.depth, 2)} mm from raw stock {place}; " \
-                f"raw sizes vary. {origin(run, LIMITS)}"
     remedy = "Move one axis after the other, or start the rapid further out."
     if contact.kind == "near":
-        remedy = "Feed the last millimetre."
-    elif level is not Level.STOP and contact.kind == "rapid":
+        clearance = LIMITS[1 if run.job.workpiece.skin in TRUE_SKINS else 0]
+        if contact.depth >= threshold(run, clearance) - 1e-6:
+            return
+        level, message = Level.REVIEW, f"The rapid ends {deep} from raw stock {place}; raw sizes vary. " \
+            f"{origin(run, (clearance,))}"
+        remedy = f"Stop the rapid {length(run, threshold(run, clearance))} or more short, and feed from there."
+    elif contact.depth < GRAZE and _leaves(run, move):
+        level, remedy = Level.NOTE, "Feed the lift-off if the mark matters."
+        message = f"The tool grazes the surface it is leaving as it draws away at rapid, {deep} {place}."
+    elif contact.kind == "rapid" and _lifts_off(run, move, contact):
+        level = Level.NOTE if contact.depth <= LIFT_OFF else Level.REVIEW
+        message = f"The tool wipes along the shoulder it has just cut at rapid {place}, {deep} deep."
         remedy = "Feed the lift-off, or lift off along Z first."
+    elif contact.kind == "rapid":
+        level, message = Level.STOP, f"The tool hits the stock at rapid {place}, {deep} deep. " \
+            "What it would have broken out is counted as cut from here on."
+    elif contact.kind == "dogleg":
+        assumed = any(item.about.startswith("machine.rapid") for item in run.job.assumptions)
+        level = Level.REVIEW if assumed else Level.STOP
+        message = "The two axes do not run in a straight line: each runs at its own rapid rate, and the bent " \
+            f"path goes through the stock {place}, {deep} deep." + (" The rates are assumed." if assumed else "")
+    else:
+        return
     yield run.finding(CHECK, level, move, message, at=at, value=contact.depth, unit="mm", remedy=remedy)
 
 
-def _pulls_off(run: Run, move: Move, contact: Contact) -> bool:
+def _leaves(run: Run, move: Move) -> bool:
+    """Whether a rapid draws away from the surface that the same tool cut up to the rapid's start."""
+    before = run.path.moves[move.index - 1] if move.index else None
+    start, end = move.start, move.end
+    if before is None or before.kind in (Kind.RAPID, Kind.THREAD) or before.tool != move.tool:
+        return False
+    normal = _away(run, before)
+    if normal is None or start is None or end is None or before.end != start:
+        return False
+    along = normal[0] * (end.z - start.z) + normal[1] * (end.r - start.r)
+    return along > LEAST_SINE * math.hypot(end.z - start.z, end.r - start.r)
+
+
+def _away(run: Run, cut: Move) -> tuple[float, float] | None:
+    """Unit vector (z, r) square to where a cut ends, from the surface it leaves towards the tool's body."""
+    tool = run.job.tools.get(cut.tool) if cut.tool is not None else None
+    if tool is None or cut.start is None or cut.end is None:
+        return None
+    dz, dr = cut.end.z - cut.start.z, cut.end.r - cut.start.r
+    if cut.centre is not None:  # an arc ends square to its radius
+        dz, dr = cut.centre.r - cut.end.r, cut.end.z - cut.centre.z
+    size = math.hypot(dz, dr)
+    if size == 0.0:
+        return None
+    middle = tool_outline(tool).hull().mean(axis=0)
+    side = 1.0 if middle[1] * dz - middle[0] * dr > 0.0 else -1.0
+    return -side * dr / size, side * dz / size
+
+
+def _lifts_off(run: Run, move: Move, contact: Contact) -> bool:
     """Whether the tool only draws away from its own surface and takes the wedge its edge left at the shoulder."""
     start, end = move.start, move.end
     if start is None or end is None or contact.depth > SHOULDER_WEDGE or abs(end.z - start.z) > 1e-6:
