@@ -16,11 +16,18 @@ def block_at(text: ProgramText, line: int) -> Block | None:
 
 
 def spans(finding: Finding, block: Block | None) -> tuple[Span, ...]:
-    """Columns (0-based, end excluded) of the words the finding names; empty when the line holds none of them."""
+    """Columns (0-based, end excluded) of the words the finding names; empty when the line holds none of them.
+
+    A letter names all words of that address, a whole word ("G90") itself alone.
+    """
     if block is None:
         return ()
     named = {word.upper() for word in finding.words}
-    marked = [(word.start, word.end) for word in block.words if word.letter.upper() in named]
+    marked = [
+        (word.start, word.end)
+        for word in block.words
+        if word.letter.upper() in named or block.text[word.start : word.end].upper() in named
+    ]
     if not marked and block.fault is not None and finding.check == "not-understood":
         marked = [(block.fault.start, max(block.fault.end, block.fault.start + 1))]
     return tuple(sorted(marked))

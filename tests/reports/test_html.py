@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+import math
+import re
+from dataclasses import replace
 from html.parser import HTMLParser
 
 import pytest
@@ -9,6 +12,8 @@ import pytest
 from auditor.declared.model import Acceptance
 from auditor.errors import Fault
 from auditor.findings import Audit
+from auditor.interpret.moves import Kind
+from auditor.predict.loads import Prediction
 from auditor.reports import Outcome, Unreadable, View, report
 from tests.reports import builders, hostile
 
@@ -68,6 +73,30 @@ def accepted() -> Audit:
 def test_is_well_formed(outcome: Outcome) -> None:
     reader = read(page(outcome))
     assert reader.open == []
+
+
+@pytest.mark.parametrize("changed", [
+    {"feed_rev": 0.0}, {"feed_rev": 1e-5, "depth": 1e-4}, {"feed_rev": math.nan}, {"depth": 0.0}, {"time": math.nan}, {"cutting_time": 0.0},
+    {"rpm_low": math.nan, "rpm_high": math.nan}, {"cutting": math.nan, "rake": math.nan},
+])
+def test_odd_figures_make_no_broken_picture(changed: dict[str, float]) -> None:
+    prediction = Prediction(
+        builders.loads((1, 1), position=[0.0, 42.0], z=[2.0, -40.0], r=[28.0, 28.0]),
+        builders.figures([builders.NOWHERE, {**builders.CUT, **changed}, builders.NOWHERE, builders.NOWHERE]), 1.0,
+    )
+    text = page(builders.audit([builders.power_finding(), builders.power_finding(fingerprint="2", value=math.nan)],
+                               verdict="stop", prediction=prediction))
+    assert read(text).open == []
+    assert not re.search(r'="[^"]*\b(nan|inf)\b', text)
+
+
+def test_program_that_only_moves_in_the_air_has_a_page() -> None:
+    rapids = [move for move in builders.moves() if move.kind is Kind.RAPID]
+    moved = [replace(move, index=index) for index, move in enumerate(rapids)]
+    prediction = Prediction(builders.loads(()), builders.figures([builders.NOWHERE] * len(moved)), 1.0)
+    text = page(builders.audit(moved=moved, prediction=prediction, simulated=builders.simulation([0.0] * len(moved))))
+    assert read(text).open == []
+    assert "Loads along the program" not in text
 
 
 def test_hostile_text_stays_text() -> None:

@@ -44,7 +44,8 @@ def curves(run: Run) -> list[Curve]:
     part_bend = run.job.limits.get("part_bend")
     error = 1000.0 * _diameter_error(run)
     allowed_error = 2.0 * part_bend.value if part_bend is not None else tolerance
-    bound = np.full(error.shape, np.nan if allowed_error is None else 1000.0 * allowed_error)
+    finishing = run.simulation.final_surface[loads.move]  # roughing may bend: the next cut takes it away
+    bound = np.where(finishing, np.nan if allowed_error is None else 1000.0 * allowed_error, np.nan)
     return [
         _banded(run, "Motor power", "kW", loads.motor_power, loads.scatter,
                 allowed * power_at(machine, loads.rpm)),
@@ -158,18 +159,18 @@ def _times(drawing: Drawing, span: float, height: float) -> None:
 def _ticks(drawing: Drawing, numbered: Sequence[tuple[int, Finding]], begin: Floats, span: float, key: str) -> None:
     """Numbers of the stops and reviews above the strips, where they fit."""
     taken = -99.0
-    moments = sorted(
-        (float(begin[finding.move]), number, finding) for number, finding in numbered
+    moments = sorted({
+        (float(begin[finding.move]), number, str(finding.level)) for number, finding in numbered
         if finding.move is not None and finding.level != "note" and finding.accepted is None
-    )
-    for second, number, finding in moments:
+    })
+    for second, number, level in moments:
         x = _x(second, span)
-        drawing.path([(x, 20), (x, _TOP - 4)], f"moment {finding.level}")
+        drawing.path([(x, 20), (x, _TOP - 4)], f"moment {level}")
         if x - taken < 16.0:
             continue
         taken = x
         with drawing.inside("a", href=f"#{key}f{number}"):
-            drawing.text(x, 15, str(number), f"moment-number {finding.level}", text_anchor="middle")
+            drawing.text(x, 15, str(number), f"moment-number {level}", text_anchor="middle")
 
 
 def _said(run: Run, strips: Sequence[Curve], at: Floats) -> str:

@@ -15,6 +15,7 @@ from auditor.reports.html.svg import Drawing
 
 WIDTH, HEIGHT = 330.0, 250.0  # px
 _LEFT, _RIGHT, _TOP, _FOOT = 44.0, 12.0, 16.0, 38.0
+_LEAST_FEED, _LEAST_DEPTH = 0.01, 0.05  # the axes reach at least so far
 _MOST = 400  # cuts drawn
 
 Placing = Callable[[float, float], tuple[float, float]]  # feed and depth to a place in the picture
@@ -36,7 +37,7 @@ def dots(run: Run, tool: int) -> list[Dot]:
     found: dict[tuple[float, float], list[int]] = {}
     for move in run.path.moves:
         depth, feed = float(figures.depth[move.index]), float(figures.feed_rev[move.index])
-        if move.tool == tool and depth > 0.0 and np.isfinite(feed):
+        if move.tool == tool and depth > 0.0 and feed > 0.0:
             found.setdefault((round(feed, 3), round(depth, 2)), []).append(move.index)
     made = [
         Dot(feed, depth, float(np.nansum(figures.cutting_time[moves])), tuple(moves))
@@ -52,8 +53,8 @@ def draw(run: Run, tool: Tool, numbers: Mapping[int, tuple[int, str]], key: str)
         return None
     drawing = Drawing(f"{key}w{tool.number}", WIDTH, HEIGHT, f"Depth and feed of T{tool.number}", _said(tool, found))
     feeds, depths = tool.breaker_feed or (0.0, 0.0), tool.breaker_depth or (0.0, 0.0)
-    far = 1.15 * max(feeds[1], max(dot.feed for dot in found))
-    deep = 1.15 * max(depths[1], max(dot.depth for dot in found), tool.nose_radius)
+    far = 1.15 * max(_LEAST_FEED, feeds[1], *(dot.feed for dot in found))
+    deep = 1.15 * max(_LEAST_DEPTH, depths[1], tool.nose_radius, *(dot.depth for dot in found))
 
     def place(feed: float, depth: float) -> tuple[float, float]:
         return (_LEFT + feed / far * (WIDTH - _LEFT - _RIGHT), HEIGHT - _FOOT - depth / deep * (HEIGHT - _FOOT - _TOP))
