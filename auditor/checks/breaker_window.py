@@ -63,9 +63,15 @@ def _judge_side(
     for outside, limit, side in sides:
         chip = chip_length(run, cut, outside)
         if chip > threshold(run, LIMITS[0]):
-            row = cut.rows.start + int(np.argmax(np.where(outside, np.abs(figures - limit), -1.0)))
+            row = cut.rows.start + _longest_stretch(run, cut, outside)
             return _finding(run, cut, name, float(figures[row - cut.rows.start]), limit, side, chip, row)
     return None
+
+
+def _longest_stretch(run: Run, cut: Cut, outside: NDArray[np.bool_]) -> int:
+    """Row of the cut at which the longest steady stretch outside the window begins."""
+    steps = np.diff(run.prediction.loads.travel[cut.rows])
+    return int(np.argmax(np.where(outside[:-1] & outside[1:], steps, -1.0)))
 
 
 def chip_length(run: Run, cut: Cut, outside: NDArray[np.bool_]) -> float:

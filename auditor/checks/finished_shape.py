@@ -10,8 +10,8 @@ Why
 
 Formula and source
     Exact geometry of the half-section, within half the diameter tolerance (0.05 mm where none is declared). Inner
-    corners may keep the nose radius of the finishing tool. Stop: a gouge. Review: metal left. The block named is the
-    cut that came nearest to the place.
+    corners may keep the nose radius of the finishing tool, threads may cut into it. Stop: a gouge. Review: metal
+    left. The block named is the cut that came nearest to the place.
 
 Remedy
     Look at that block's words; for slopes and arcs at nose-radius compensation first.
@@ -29,7 +29,7 @@ from shapely.geometry.base import BaseGeometry
 from auditor.checks._words import figure, micro, x_word, z_word
 from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
-from auditor.interpret.moves import Move
+from auditor.interpret.moves import Kind, Move
 
 CHECK = "finished-shape"
 LIMITS: tuple[Limit, ...] = ()
@@ -65,6 +65,7 @@ def _judge_outline(
         gouged = shapely.difference(_shrunk(under, slack), metal)
         left = shapely.difference(metal, shapely.buffer(_opened(under, _corner(run), outwards=True), slack,
                                                         join_style="mitre"))
+    gouged = shapely.difference(gouged, _threaded(run, high=span.bounds[3], inside=inside))
     # what stands beyond the outline's ends may leave the nose radius in the corner there
     for level, area, what, margin in (
         (Level.STOP, gouged, "is cut into", slack), (Level.REVIEW, left, "keeps metal on it", slack + _corner(run)),
@@ -72,6 +73,18 @@ def _judge_outline(
         worst = max(shapely.get_parts(shapely.intersection(area, _inner(span, margin))), key=shapely.area, default=None)
         if worst is not None and shapely.area(worst) > SPECK:
             yield _finding(run, level, worst, what, slack)
+
+
+def _threaded(run: Run, high: float, *, inside: bool) -> BaseGeometry:
+    """Where threads are cut: an outline does not draw them, their depth is judged by thread-passes."""
+    far = 0.0 if inside else high
+    zones = []
+    for move in run.path.moves:
+        if move.kind is Kind.THREAD and move.start and move.end and move.lead and move.start.z != move.end.z:
+            flank = move.lead / 2.0 if move.end.z > move.start.z else -move.lead / 2.0  # the V is wider than its tip
+            first, last = (move.start.z - flank, move.start.r), (move.end.z + flank, move.end.r)
+            zones.append(shapely.polygons([first, last, (last[0], far), (first[0], far)]))
+    return shapely.union_all(zones)
 
 
 def _under(outline: tuple[Point, ...]) -> BaseGeometry:

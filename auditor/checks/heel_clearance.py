@@ -14,8 +14,9 @@ Formula and source
     add up to 90 degrees). The feed turns the cutting direction by atan(f / pi d), which the main edge loses; an
     edge above centre loses asin(2 e / d) outside and gains it in a bore. In a bore of radius R an insert of
     thickness v needs atan((R - sqrt(R^2 - v^2)) / v), or its heel touches. Stop: nothing left. Review: under
-    least_clearance (common practice). Near the centre, where feeding inwards takes all clearance, nothing is
-    judged. Where the tilt of the pocket is not known no stop rests on it.
+    least_clearance, or rake and clearance turned by more than height_turn (common practice). Near the centre, where
+    feeding inwards takes all clearance, nothing is judged. Where the tilt of the pocket is not known no stop rests
+    on it.
 
 Remedy
     An insert with clearance (letters B, C, P, D), a pocket that tilts more, the edge on centre height, or for a
@@ -41,6 +42,7 @@ from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.clearance import (
     bore_heel_clearance,
     feed_angle,
+    height_angle,
     height_effect,
     normal_clearance,
     orthogonal_clearance,
@@ -48,7 +50,10 @@ from auditor.mechanics.clearance import (
 from auditor.mechanics.rake import normal_rake
 
 CHECK = "heel-clearance"
-LIMITS = (Limit("least_clearance", 3.0, "deg", "common practice", "least working clearance"),)
+LIMITS = (
+    Limit("least_clearance", 3.0, "deg", "common practice", "least working clearance"),
+    Limit("height_turn", 2.0, "deg", "common practice", "largest turn of rake and clearance by height"),
+)
 KINDS: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "parting")
 CENTRE = 5.0  # mm of diameter within which a tool that feeds to the centre is not judged
 
@@ -75,10 +80,10 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         left = _left(run, cut, turned[cut.rows])
         if left is not None and left.angle < threshold(run, LIMITS[0]):
             yield _finding(run, cut, left)
-        elif cut.tool.kind == "boring":
-            finding = _judge_heel(run, cut)
-            if finding is not None:
-                yield finding
+            continue
+        finding = _judge_height(run, cut) or (_judge_heel(run, cut) if cut.tool.kind == "boring" else None)
+        if finding is not None:
+            yield finding
 
 
 def _left(run: Run, cut: Cut, turned: Floats) -> Left | None:
@@ -139,7 +144,7 @@ def _finding(run: Run, cut: Cut, left: Left) -> Finding:
         if abs(given) >= 0.05:
             shares += f", {name} {given:+.1f}"
     fate = "The flank rubs on the work" if left.angle <= 0.0 else "The flank nearly rubs on the work"
-    message = f"{fate}: {figure(left.angle)} deg of working clearance are left ({shares}). {origin(run, LIMITS)}"
+    message = f"{fate}: {figure(left.angle)} deg of working clearance are left ({shares}). {origin(run, LIMITS[:1])}"
     if not certain:
         message += " The tilt of the pocket is assumed."
     return finding_at(run, CHECK, level, left.row, message, value=left.angle, limit=threshold(run, LIMITS[0]),
@@ -152,6 +157,24 @@ def _remedy(tool: Tool) -> str:
     if tool.insert_clearance == 0.0:
         return "An insert with clearance (letters B, C, P, D), or a pocket tilted to about -6 deg."
     return "An insert with more clearance."
+
+
+def _judge_height(run: Run, cut: Cut) -> Finding | None:
+    """An edge so far off centre that rake and clearance are not what they seem, though none is used up."""
+    loads, height = run.prediction.loads, cut.tool.centre_height
+    diameter = 2.0 * np.abs(loads.r[cut.rows])[loads.depth[cut.rows] > 0.0]
+    if _to_centre(cut):
+        diameter = diameter[diameter >= CENTRE]
+    if not height or not len(diameter):
+        return None
+    turn, most = float(height_angle(abs(height), diameter.min())), threshold(run, LIMITS[1])
+    if turn <= most:
+        return None
+    side = "above" if height > 0.0 else "below"
+    message = f"The edge stands {figure(abs(height), 2)} mm {side} centre: at {figure(float(diameter.min()))} mm that " \
+              f"turns rake and clearance by {figure(turn)} deg. {origin(run, LIMITS[1:])}"
+    return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=turn, limit=most,
+                      unit="deg", remedy="Set the edge on centre height.")
 
 
 def _judge_heel(run: Run, cut: Cut) -> Finding | None:

@@ -9,7 +9,8 @@ Why
     edge into itself. Hard work breaks a slim one. Titanium and nickel harden under a blunt one.
 
 Formula and source
-    Common practice. Plastics: effective rake 0 deg or more, clearance 10 deg or more, edge radius 20 um at most.
+    Common practice. Plastics: effective rake 0 deg or more, clearance 7 deg or more (a note under 10), edge radius
+    20 um at most.
     Aluminium and copper: rake 5 deg or more, edge radius 20 um at most. Brass and other short-chip non-ferrous: rake
     5 deg at most (note). Work over 45 HRC with ceramic or CBN: rake -5 deg or less, or a chamfered land. Titanium
     and nickel alloys: no negative rake in finishing cuts, feed 0.05 or more. Review, once a tool; a note where the
@@ -25,13 +26,14 @@ from collections.abc import Iterator
 
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._words import angle, figure, finding_at
-from auditor.declared.model import Material
+from auditor.declared.model import Material, Tool
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.clearance import normal_clearance
 
 CHECK = "rake-for-material"
 LIMITS: tuple[Limit, ...] = ()
 SHARP = 0.020  # mm of edge radius
+LEAST_CLEARANCE, GOOD_CLEARANCE = 7.0, 10.0  # deg, plastics
 HARD = 425.0  # HB, about 45 HRC
 HARD_CUTTERS = ("ceramic", "cbn")
 
@@ -54,15 +56,11 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
 def _fault(run: Run, material: Material, cut: Cut, rake: float) -> str | None:
     """What does not suit, in words."""
     tool = cut.tool
-    dull = tool.edge_radius > SHARP
     if material.group == "O":
-        clearance = float(normal_clearance(tool.insert_clearance, tool.pocket_rake))
-        if rake < 0.0 or clearance < 10.0 or dull:
-            return f"plastic wants a sharp edge with rake and clearance (rake {angle(rake)}, clearance " \
-                   f"{figure(clearance)} deg, edge rounded {figure(tool.edge_radius * 1000)} um)"
-    elif material.group == "N" and material.chips == "long":
-        if rake < 5.0 or dull:
-            return f"it welds on and burrs (rake {angle(rake)}, edge rounded {figure(tool.edge_radius * 1000)} um)"
+        return _plastic(tool, rake)
+    if material.group == "N" and material.chips == "long":
+        poor = [*_if(rake < 5.0, f"rake {angle(rake)}, 5 deg or more is wanted"), *_dull(tool)]
+        return f"it welds on and burrs ({'; '.join(poor)})" if poor else None
     elif material.group == "N":
         return f"a steep edge digs in (rake {angle(rake)})" if rake > 5.0 else None
     elif material.group == "H" or (material.hardness or 0.0) > HARD:
@@ -72,6 +70,25 @@ def _fault(run: Run, material: Material, cut: Cut, rake: float) -> str | None:
     elif material.group == "S":
         return _heat_resistant(run, cut, rake)
     return None
+
+
+def _plastic(tool: Tool, rake: float) -> str | None:
+    clearance = float(normal_clearance(tool.insert_clearance, tool.pocket_rake))
+    poor = [
+        *_if(rake < 0.0, f"rake {angle(rake)}, 0 deg or more is wanted"),
+        *_if(clearance < LEAST_CLEARANCE, f"clearance {figure(clearance)} deg, {LEAST_CLEARANCE:.0f} or more is wanted"),
+        *_dull(tool),
+    ]
+    return f"plastic smears and is pushed away instead of cut ({'; '.join(poor)})" if poor else None
+
+
+def _dull(tool: Tool) -> list[str]:
+    return _if(tool.edge_radius > SHARP, f"edge rounded {figure(tool.edge_radius * 1000)} um, "
+                                         f"{SHARP * 1000:.0f} at most is wanted")
+
+
+def _if(fails: bool, words: str) -> list[str]:  # noqa: FBT001
+    return [words] if fails else []
 
 
 def _heat_resistant(run: Run, cut: Cut, rake: float) -> str | None:
