@@ -51,44 +51,44 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         fault = _fault(run, material, cut, float(loads.rake[row]))
         if fault is not None:
             yield _finding(run, cut, row, fault)
+        elif material.group == "O" and _clearance(cut.tool) < GOOD_CLEARANCE:
+            message = f"Clearance {figure(_clearance(cut.tool))} deg is usual in {material.name}; " \
+                      f"{GOOD_CLEARANCE:.0f} deg or more is preferred (common practice)."
+            yield finding_at(run, CHECK, Level.NOTE, row, message)
 
 
 def _fault(run: Run, material: Material, cut: Cut, rake: float) -> str | None:
     """What does not suit, in words."""
     tool = cut.tool
     if material.group == "O":
-        return _plastic(tool, rake)
+        poor = [*_under(rake, 0.0, "rake"), *_under(_clearance(tool), LEAST_CLEARANCE, "clearance"), *_dull(tool)]
+        return f"plastic smears and is pushed away instead of cut ({'; '.join(poor)})" if poor else None
     if material.group == "N" and material.chips == "long":
-        poor = [*_if(rake < 5.0, f"rake {angle(rake)}, 5 deg or more is wanted"), *_dull(tool)]
+        poor = [*_under(rake, 5.0, "rake"), *_dull(tool)]
         return f"it welds on and burrs ({'; '.join(poor)})" if poor else None
-    elif material.group == "N":
-        return f"a steep edge digs in (rake {angle(rake)})" if rake > 5.0 else None
-    elif material.group == "H" or (material.hardness or 0.0) > HARD:
+    if material.group == "N":
+        return f"a steep edge digs in (rake {angle(rake)}, +5 deg at most is wanted)" if rake > 5.0 else None
+    if material.group == "H" or (material.hardness or 0.0) > HARD:
         flat = tool.land_width == 0.0 or tool.land_rake >= 0.0
         if tool.substrate in HARD_CUTTERS and rake > -5.0 and flat:
-            return f"a {tool.substrate} edge breaks without a negative rake or a chamfer (rake {angle(rake)})"
-    elif material.group == "S":
-        return _heat_resistant(run, cut, rake)
-    return None
+            return f"a {tool.substrate} edge breaks without a chamfer or a rake of -5 deg or less (rake {angle(rake)})"
+        return None
+    return _heat_resistant(run, cut, rake) if material.group == "S" else None
 
 
-def _plastic(tool: Tool, rake: float) -> str | None:
-    clearance = float(normal_clearance(tool.insert_clearance, tool.pocket_rake))
-    poor = [
-        *_if(rake < 0.0, f"rake {angle(rake)}, 0 deg or more is wanted"),
-        *_if(clearance < LEAST_CLEARANCE, f"clearance {figure(clearance)} deg, {LEAST_CLEARANCE:.0f} or more is wanted"),
-        *_dull(tool),
-    ]
-    return f"plastic smears and is pushed away instead of cut ({'; '.join(poor)})" if poor else None
+def _clearance(tool: Tool) -> float:
+    return float(normal_clearance(tool.insert_clearance, tool.pocket_rake))
+
+
+def _under(has: float, wanted: float, name: str) -> list[str]:
+    """The fault in words, where an angle is smaller than wanted."""
+    return [f"{name} {figure(has)} deg, {wanted:.0f} or more is wanted"] if has < wanted - 1e-6 else []
 
 
 def _dull(tool: Tool) -> list[str]:
-    return _if(tool.edge_radius > SHARP, f"edge rounded {figure(tool.edge_radius * 1000)} um, "
-                                         f"{SHARP * 1000:.0f} at most is wanted")
-
-
-def _if(fails: bool, words: str) -> list[str]:  # noqa: FBT001
-    return [words] if fails else []
+    """The fault in words, where the edge is rounded too much."""
+    rounded, most = tool.edge_radius * 1000.0, SHARP * 1000.0
+    return [f"edge rounded {figure(rounded)} um, {most:.0f} at most is wanted"] if tool.edge_radius > SHARP else []
 
 
 def _heat_resistant(run: Run, cut: Cut, rake: float) -> str | None:
@@ -106,7 +106,7 @@ def _finding(run: Run, cut: Cut, row: int, fault: str) -> Finding:
     assumed = any(item.about in guessed for item in run.job.assumptions)
     brass = material.group == "N" and material.chips == "short"
     level = Level.NOTE if assumed or brass else Level.REVIEW
-    message = f"The edge does not suit {material.name}: {fault} (common practice)."
+    message = f"The edge does not suit {material.name}: {fault}. Common practice."
     if assumed:
         message += " Part of the insert's geometry is assumed."
     return finding_at(run, CHECK, level, row, message, remedy="A geometry made for this material.")

@@ -63,7 +63,8 @@ def carry_out(run: Run, block: Block) -> None:
         run.note(fault)
         run.not_audited(fault.message)
     if run.strokes == strokes and run.words.values:
-        run.compensated.blank_blocks += 1
+        if run.chain is None or run.chain.words[-1] is not run.words:  # a line held for its corner does move
+            run.compensated.blank_blocks += 1
     elif run.strokes != strokes:
         calls.call_after_motion(run)
 
