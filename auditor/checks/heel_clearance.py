@@ -171,8 +171,8 @@ def _judge_height(run: Run, cut: Cut) -> Finding | None:
     if turn <= most:
         return None
     side = "above" if height > 0.0 else "below"
-    message = f"The edge stands {figure(abs(height), 2)} mm {side} centre: at {figure(float(diameter.min()))} mm that " \
-              f"turns rake and clearance by {figure(turn)} deg. {origin(run, LIMITS[1:])}"
+    message = f"The edge stands {figure(abs(height), 2)} mm {side} centre: at {figure(float(diameter.min()))} mm " \
+              f"that turns rake and clearance by {figure(turn)} deg. {origin(run, LIMITS[1:])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=turn, limit=most,
                       unit="deg", remedy="Set the edge on centre height.")
 
