@@ -156,7 +156,7 @@ def _write(answers: Sequence[Answer], several: bool, choices: Choices) -> None:
     else:
         click.echo(text.encode("utf-8", "replace"), nl=False)
     for answer in answers:
-        if not (on_screen and sys.stdout.isatty()):  # a terminal shows the reasons in the report already
+        if not (on_screen and sys.stdout.isatty()) or choices.quiet:  # else the report on the terminal has told why
             _talk.complain(answer.faults)
         if not (on_screen or choices.quiet or answer.faults):
             _talk.say(answer.in_words())

@@ -216,6 +216,13 @@ def test_quiet_leaves_only_the_verdict(check: Check) -> None:
     assert check("stop.nc", "--quiet", "--format", "json").stderr == ""
 
 
+def test_quiet_is_one_line_a_program_and_says_why_on_standard_error(check: Check) -> None:
+    declare("stop.nc", "clear.nc")
+    result = check("stop.nc", "clear.nc", "missing.nc", "--quiet")
+    assert [line[:9].strip() for line in result.stdout.splitlines()] == ["■ STOP  s", "○ CLEAR", "✕ UNREADA"]
+    assert "missing.nc: no such file" in result.stderr
+
+
 def test_screen_file_holds_every_sign(check: Check) -> None:
     declare("stop.nc")
     check("stop.nc", "--output", "report.txt")

@@ -127,7 +127,7 @@ def test_verdict_comes_first_and_is_said_in_words() -> None:
 
 def test_clear_never_stands_alone() -> None:
     text = " ".join(read(page(builders.audit(not_judged=[builders.NO_GRIP]))).texts)
-    assert text.index("Clear of what was judged. Not judged: chuck-grip.") < text.index("Where")
+    assert text.index("Clear of what was judged: a prediction, no promise. Not judged: chuck-grip.") < text.index("Where")
 
 
 def test_says_what_it_rests_on() -> None:

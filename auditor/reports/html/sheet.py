@@ -137,7 +137,8 @@ def _beside_clear(audit: Audit) -> str | None:
     if audit.verdict != "clear":
         return None
     names = ", ".join(dict.fromkeys(item.check for item in by_weight(audit.not_judged)))
-    return f"Clear of what was judged. Not judged: {names}." if names else "Clear of what was judged."
+    promise = "Clear of what was judged: a prediction, no promise."
+    return f"{promise} Not judged: {names}." if names else promise
 
 
 def _coverage(audit: Audit) -> str:

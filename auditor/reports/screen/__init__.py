@@ -96,5 +96,5 @@ def _unreadable(paper: Paper, outcome: Unreadable) -> None:
         (lead, COLOURS["unreadable"]), "  ", paper.fit_path(outcome.path, paper.view.width - len(lead) - 20),
         "   not audited",
     )
-    for fault in outcome.faults:
+    for fault in () if paper.view.brief else outcome.faults:
         paper.paragraph(str(fault), margin=2, hang=4)
