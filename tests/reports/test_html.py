@@ -76,7 +76,8 @@ def test_is_well_formed(outcome: Outcome) -> None:
 
 
 @pytest.mark.parametrize("changed", [
-    {"feed_rev": 0.0}, {"feed_rev": 1e-5, "depth": 1e-4}, {"feed_rev": math.nan}, {"depth": 0.0}, {"time": math.nan}, {"cutting_time": 0.0},
+    {"feed_rev": 0.0}, {"feed_rev": 1e-5, "depth": 1e-4},
+    {"feed_rev": math.nan}, {"depth": 0.0}, {"time": math.nan}, {"cutting_time": 0.0},
     {"rpm_low": math.nan, "rpm_high": math.nan}, {"cutting": math.nan, "rake": math.nan},
 ])
 def test_odd_figures_make_no_broken_picture(changed: dict[str, float]) -> None:
@@ -127,7 +128,8 @@ def test_verdict_comes_first_and_is_said_in_words() -> None:
 
 def test_clear_never_stands_alone() -> None:
     text = " ".join(read(page(builders.audit(not_judged=[builders.NO_GRIP]))).texts)
-    assert text.index("Clear of what was judged: a prediction, no promise. Not judged: chuck-grip.") < text.index("Where")
+    beside = "Clear of what was judged: a prediction, no promise. Not judged: chuck-grip."
+    assert text.index(beside) < text.index("Where")
 
 
 def test_says_what_it_rests_on() -> None:
