@@ -13,6 +13,7 @@ import numpy as np
 from shapely.geometry.base import BaseGeometry
 
 from auditor.checks import rules
+from auditor.checks._judging import one_per_block
 from auditor.declared.jobs import job_beside, load_job
 from auditor.declared.model import Acceptance, Assumption, EarlierPart, Job, LimitValue, Point
 from auditor.errors import DeclarationError, Fault, ProgramError
@@ -34,6 +35,8 @@ from auditor.parse import read_program
 from auditor.parse.blocks import ProgramText
 from auditor.predict import predict
 from auditor.simulate import simulate
+
+FLOW = "program-flow"  # the check that speaks of what the block-skip switch changes
 
 
 def audit_program(path: str | Path, job_path: str | Path | None = None) -> Audit:
@@ -60,23 +63,30 @@ def audit(job: Job, today: datetime.date | None = None) -> Audit:
         other = _audit(replace(job, control=replace(job.control, block_skip=turned)), day, ())
     except ProgramError:  # nothing moves with the switch the other way
         return own
-    findings = _judged(own.run, [*own.findings, *_only_in(other, own, turned)], day)
+    flow = [*_only_in(other, own, turned), *(finding for finding in own.findings if finding.check == FLOW)]
+    rest = [finding for finding in own.findings if finding.check != FLOW]
+    merged = [verdict for verdict in one_per_block(flow) if isinstance(verdict, Finding)]
+    findings = _judged(own.run, [*rest, *merged], day)
     return replace(own, findings=tuple(findings), verdict=_verdict(findings, own.coverage))
 
 
 def _only_in(other: Audit, own: Audit, skipping: bool) -> Iterator[Finding]:
     """What would be wrong with the block-skip switch the other way, as something to decide."""
     known = {(finding.check, finding.line) for finding in own.findings if finding.level is not Level.NOTE}
+    known |= {(FLOW, remark.line) for remark in other.run.path.remarks if remark.topic == "stop-unattended"}
     switch = "on" if skipping else "off"
-    for finding in other.findings:
+    does = {Level.STOP: "stops this block", Level.REVIEW: "asks for a review of it"}
+    for finding in sorted(other.findings, key=lambda finding: list(Level).index(finding.level)):
         if finding.level is not Level.NOTE and (finding.check, finding.line) not in known:
             yield Finding(
-                check="program-flow",
+                check=FLOW,
                 level=Level.REVIEW,
                 line=finding.line,
                 block=finding.block,
                 tool=finding.tool,
-                message=f"With block skip {switch}: {finding.level}, {finding.check}. {finding.message}",
+                message=f"With block skip {switch}, {finding.check} {does[finding.level]}: {finding.message}",
+                at=finding.at,
+                words=finding.words,
                 remedy=finding.remedy,
             )
 

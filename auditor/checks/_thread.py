@@ -39,10 +39,15 @@ def threads(run: Run) -> Iterator[Thread]:
         if group and (move.kind is not Kind.THREAD or move.tool != group[0].tool or move.lead != group[0].lead):
             yield _thread(run, group)
             group = []
-        if move.kind is Kind.THREAD and move.lead and move.tool is not None:
+        if move.kind is Kind.THREAD and move.lead and move.tool is not None and not _on_axis(move):
             group.append(move)
     if group:
         yield _thread(run, group)
+
+
+def _on_axis(move: Move) -> bool:
+    """Whether a move runs on the spindle axis: a tap, whose passes are the tap's own business."""
+    return abs(move.start_r or 0.0) < 1e-6 and abs(move.end_r or 0.0) < 1e-6
 
 
 def _thread(run: Run, group: list[Move]) -> Thread:

@@ -10,9 +10,8 @@ Why
 
 Formula and source
     The text against control.whole_numbers. Stop where the reading in least increments is declared and a word comes
-    out under 0.1 mm. Review where that setting is not declared, or where increments are declared. Note where
-    millimetres are declared, and for decimals and blanks. Common practice. The first block is named, with the number
-    of others like it.
+    out under 0.1 mm. Review where that setting is not declared. Note where it is, and for decimals and blanks. Common
+    practice. The first block is named, with the number of others like it.
 
 Remedy
     Write the point in every length word; it is read alike everywhere.
@@ -55,4 +54,4 @@ def _level(run: Run, topic: str) -> Level:
     if topic != "plain-number":
         return Level.NOTE
     assumed = any(item.about == "control.whole_numbers" for item in run.job.assumptions)
-    return Level.REVIEW if assumed or run.job.control.whole_numbers == "increments" else Level.NOTE
+    return Level.REVIEW if assumed else Level.NOTE

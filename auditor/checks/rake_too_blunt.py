@@ -16,7 +16,7 @@ Formula and source
     under thin_wall. Common practice. Review.
 
 Remedy
-    The effective rake at which the same law brings the bending to a third of the tolerance.
+    The effective rake, or the feed or depth, at which the same law brings the bending to a third of the tolerance.
 """
 
 from __future__ import annotations
@@ -24,9 +24,10 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from auditor.checks._bending import bar_push_off, slenderness, wall_share
-from auditor.checks._cuts import Cut, cuts, diameter_errors, tolerance_third
-from auditor.checks._judging import threshold
-from auditor.checks._words import angle, figure, finding_at, micro
+from auditor.checks._cuts import Cut, bending_errors, cuts, diameter_errors, tolerance_third
+from auditor.checks._judging import MOST_CURED, threshold
+from auditor.checks._remedy import way_out
+from auditor.checks._words import angle, figure, finding_at, thousandths
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "rake-too-blunt"
@@ -45,7 +46,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if third is None:
         yield NotJudged(CHECK, "workpiece.diameter_tolerance is not declared")
         return
-    errors = diameter_errors(run)
+    errors, cured = diameter_errors(run), 0
     for cut in cuts(run):
         if not run.simulation.final_surface[cut.move.index]:
             continue
@@ -56,7 +57,9 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         error = cut.largest(errors) + 2.0 * bar_push_off(run, cut)
         weak = _weakness(run, cut, row) if error > third else None
         if weak is not None:
-            yield _finding(run, row, rake, weak, error, third)
+            ways = "" if cured >= MOST_CURED else way_out(run, cut.move, bending_errors, third)
+            cured += 1
+            yield _finding(run, row, rake, weak, error, third, ways)
 
 
 def _weakness(run: Run, cut: Cut, row: int) -> str | None:
@@ -75,9 +78,10 @@ def _weakness(run: Run, cut: Cut, row: int) -> str | None:
     return None
 
 
-def _finding(run: Run, row: int, rake: float, weak: str, error: float, third: float) -> Finding:
+def _finding(run: Run, row: int, rake: float, weak: str, error: float, third: float, ways: str) -> Finding:
     steps = (1.0 - third / error) / THRUST_PER_DEGREE
     message = f"The blunt edge (effective rake {angle(rake)}) pushes where it matters: {weak}, and the diameter " \
-              f"comes out {micro(error)} too large, more than a third of the tolerance (common practice)."
+              f"comes out {thousandths(run, error)} too large, more than a third of the tolerance (common practice)."
     return finding_at(run, CHECK, Level.REVIEW, row, message, value=error, limit=third, unit="mm",
-                      remedy=f"A freer-cutting edge with about {angle(rake + steps)} of effective rake.")
+                      remedy=f"A freer-cutting edge with about {angle(rake + steps)} of effective rake"
+                             f"{f'; or {ways}' if ways else ''}.")

@@ -25,6 +25,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator
 
+import numpy as np
+
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._edges import engaged_lengths, path_angle
 from auditor.checks._judging import origin, threshold
@@ -35,6 +37,7 @@ from auditor.simulate.samples import Part
 
 CHECK = "trailing-edge-contact"
 LIMITS = (Limit("past_centre", 0.8, "mm", "common practice", "longest way past the centre (or twice the nose radius)"),)
+AIR = 0.005  # mm of depth; less is a tool that passes by
 TOUCHES = 0.1  # mm of edge in the metal
 WHOLE_EDGE = 0.9
 STRAIGHT_IN = -85.0  # deg; steeper is facing or plunging, not copying
@@ -43,7 +46,10 @@ STRAIGHT_IN = -85.0  # deg; steeper is facing or plunging, not copying
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Moves that drive the wrong part of the insert into the work."""
     minor, body = engaged_lengths(run, Part.MINOR), engaged_lengths(run, Part.BACK)
+    depths = run.prediction.loads.depth
     for cut in cuts(run, ("turning", "boring", "parting", "grooving")):
+        if not cut.largest(depths) > AIR:
+            continue
         finding = _past_centre(run, cut)
         if finding is None and cut.tool.kind in ("turning", "boring") and cut.tool.shape != "R":
             index = cut.move.index
@@ -57,7 +63,9 @@ def _past_centre(run: Run, cut: Cut) -> Finding | None:
     if end is None or start is None or cut.tool.kind == "boring" or start.r <= end.r:
         return None
     allowed = max(2.0 * cut.tool.nose_radius, threshold(run, LIMITS[0]))
-    if end.r >= -allowed - 1e-9:
+    loads = run.prediction.loads
+    engaged = np.abs(loads.r[cut.rows][loads.depth[cut.rows] > AIR])
+    if end.r >= -allowed - 1e-9 or not len(engaged) or engaged.min() > allowed:  # a bored face ends before the centre
         return None
     level = Level.STOP if -end.r > allowed + 1.0 else Level.REVIEW
     message = f"The tool runs {figure(-end.r, 2)} mm past the centre, to {x_word(run, end.r)}: there the work turns " \
