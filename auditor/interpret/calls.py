@@ -24,8 +24,8 @@ _REPEATED = {"I": 4, "J": 5, "K": 6}  # each further set lies 3 higher, ten sets
 
 @m_code(Phase.AFTER, 98, 198)
 def subprogram_call(run: Run, words: BlockWords) -> None:
-    """M98: run another program, or blocks of this one (H), and come back."""
-    local = words.integer("H")
+    """M98: run another program, or blocks of this one (H, or Q without P), and come back."""
+    local = words.integer("Q") if words.integer("H") is None else words.integer("H")
     if local is not None and words.number("P") is None and run.called_name is None:
         _call_within(run, words, local)
         return

@@ -24,7 +24,11 @@ def modal_cycle(run: Run, words: BlockWords) -> None:
     """A cycle that stays in force: every block with axis words repeats it."""
     name = run.state.drilling or run.state.motion
     assert name is not None
-    _carry_out(run, words, name, None)
+    try:
+        _carry_out(run, words, name, None)
+    except CycleFault:
+        run.state.motion = run.state.drilling = None  # the blocks behind would repeat what was not understood
+        raise
 
 
 @action(*MULTIPLE_CYCLES)

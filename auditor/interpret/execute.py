@@ -73,10 +73,10 @@ def act(run: Run, words: BlockWords) -> None:
     """Let every word of the block take effect, in the order of a control."""
     if run.state.data_input and not words.calls("data input end"):
         return
-    _check_repeats(run, words)
+    refused = _check_repeats(run, words)
     check_numbers(run, words)
     if words.only_moves:
-        _act_once_or_move(run, words)
+        _act_once_or_move(run, words, refused)
         return
     try:
         if not _takes_all_words(words):
@@ -84,7 +84,7 @@ def act(run: Run, words: BlockWords) -> None:
                 _take_effect(run, words, phase)
             _check_codes(run, words)
             _set_motion(run, words)
-        _act_once_or_move(run, words)
+        _act_once_or_move(run, words, refused)
     finally:  # a motion that cannot be followed takes no end and no call away
         _take_effect(run, words, Phase.AFTER)
 
@@ -145,7 +145,9 @@ def _set_motion(run: Run, words: BlockWords) -> None:
             run.state.drilling = function if function in DRILLING_CYCLES else None
 
 
-def _act_once_or_move(run: Run, words: BlockWords) -> None:
+def _act_once_or_move(run: Run, words: BlockWords, refused: str | None) -> None:
+    if refused is not None:
+        raise NotUnderstood(refused)
     once = [function for function in words.functions if function in ACTIONS]
     if once:
         ACTIONS[once[-1]](run, words)
@@ -171,14 +173,19 @@ def _refuse_live(run: Run, live: list[str]) -> None:
     raise NotUnderstood(f"{what}: milling and second spindles are not followed", "axis-not-modelled", tuple(live))
 
 
-def _check_repeats(run: Run, words: BlockWords) -> None:
-    """Words and code groups that stand twice: the last acts, some controls refuse."""
+def _check_repeats(run: Run, words: BlockWords) -> str | None:
+    """Words and code groups that stand twice: the last acts, or the control refuses the block, for the reason given."""
     if _takes_all_words(words):
-        return
+        return None
+    refused = None
     if len(words.values) > len(words.by_letter) + len(words.functions) + len(words.unknown_codes) + len(words.m_codes):
-        _note_repeated(run, words)
-    if words.only_moves:
-        return
+        refused = _note_repeated(run, words)
+    if not words.only_moves:
+        _check_repeated_codes(run, words)
+    return refused
+
+
+def _check_repeated_codes(run: Run, words: BlockWords) -> None:
     groups = [group_of(function) for function in set(words.functions)]
     for group in sorted(set(groups) - {"one-shot"}):
         if groups.count(group) > 1:
@@ -194,9 +201,16 @@ def _check_repeats(run: Run, words: BlockWords) -> None:
         )
 
 
-def _note_repeated(run: Run, words: BlockWords) -> None:
+def _note_repeated(run: Run, words: BlockWords) -> str | None:
+    """Say which words stand twice; why the control refuses the block, if it does."""
+    refuses = choice(run.control, "repeated_words") == "refuse"
     seen: set[str] = set()
+    refused = None
     for value in words.values:
         if value.letter in seen and value.letter not in "GM":
-            run.remark("word-repeated", f"{value.letter} stands twice in the block: the last one acts", value.letter)
+            twice = f"{value.letter} stands twice in the block"
+            acts = "this control refuses it" if refuses else "the last one acts"
+            run.remark("word-repeated", f"{twice}: {acts}", value.letter)
+            refused = twice if refuses else None
         seen.add(value.letter)
+    return refused

@@ -106,8 +106,8 @@ def _carry_out(run: Run, blocks: tuple[Block, ...], compensate: bool) -> list[Bl
             _check_allowed(words)
             if not ready:
                 _check_first(run, words)
-            if not compensate:
-                words = _without_compensation(words)
+            if not run.profile_is_cut:  # roughing along the tip path has no use for the move that leaves it
+                words = _without_compensation(words, off_only=compensate)
             act(run, words)
         except (NotUnderstood, ExpressionFault, UnknownValues) as problem:
             text = f"the profile cannot be followed (line {line}): {problem}"
@@ -119,9 +119,9 @@ def _carry_out(run: Run, blocks: tuple[Block, ...], compensate: bool) -> list[Bl
     return ready
 
 
-def _without_compensation(words: BlockWords) -> BlockWords:
-    kept = tuple(function for function in words.functions if group_of(function) != "compensation")
-    return replace(words, functions=kept)
+def _without_compensation(words: BlockWords, *, off_only: bool) -> BlockWords:
+    dropped = {"compensation off"} if off_only else {"compensation off", "compensation left", "compensation right"}
+    return replace(words, functions=tuple(function for function in words.functions if function not in dropped))
 
 
 def _check_first(run: Run, words: BlockWords) -> None:

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from auditor.declared.control_settings import choice
 from auditor.declared.model import Point
+from auditor.interpret.cutting_conditions import check_cut
 from auditor.interpret.cycles.call import Stroke
 from auditor.interpret.motion import end_point, has_axis_words, millimetres, rapid, x_factor
 from auditor.interpret.moves import Kind
@@ -105,8 +106,19 @@ def machine_position(run: Run, words: BlockWords) -> None:
     new_z = state.z if z is None else None if zero is None else zero.z + z
     new_r = state.r if x is None else None if zero is None else zero.r + x * x_factor(run)
     if choice(run.control, "machine_position_move") == "active" and state.motion != "rapid":
-        raise NotUnderstood("a cut in machine coordinates", "unsupported")
+        _feed(run, new_z, new_r)
+        return
     _rapid(run, new_z, new_r)
+
+
+def _feed(run: Run, z: float | None, r: float | None) -> None:
+    """A move in machine coordinates by a control that keeps G1 there."""
+    state = run.state
+    if state.motion != "feed" or state.position is None or z is None or r is None:
+        state.z, state.r = z, r
+        raise NotUnderstood("a cut in machine coordinates that cannot be placed", "position-unknown", ("G",))
+    check_cut(run)
+    travel(run, Stroke(Kind.FEED, Point(z, r)))
 
 
 @action("reference check")

@@ -88,6 +88,8 @@ def tool_word(run: Run, words: BlockWords) -> None:
         run.lean_on("short_tool_word", "the tool word")
     if call.tool is not None:
         _index(run, words, call.tool)
+    if offset is not None and offset != tool.offset:
+        _shift_at_once(run, number)
     tool.offset, tool.line, tool.certain = offset, words.line, True
     if call.tool is not None and offset not in (None, 0, call.tool):
         run.remark(
@@ -96,6 +98,21 @@ def tool_word(run: Run, words: BlockWords) -> None:
             "T",
             remedy=f"offset {call.tool}, unless a second offset is meant",
         )
+
+
+def _shift_at_once(run: Run, number: Number) -> None:
+    """Controls that shift the axes with the T word itself: harmless only at the places made for it."""
+    if choice(run.control, "offset_acts") != "at once":
+        return
+    machine = run.job.machine
+    if run.state.position in (machine.tool_change, machine.home, machine.second_home):
+        return
+    run.remark(
+        "tool-in-motion",
+        f"T{number.text} moves the axes by its offset at once, by an amount that only the control knows",
+        "T",
+        remedy="call the tool at its change position",
+    )
 
 
 def _index(run: Run, words: BlockWords, number: int) -> None:

@@ -82,23 +82,23 @@ class _Reader:
         parts = sections(self.lines)
         self.notes.extend(parts.notes)
         for index in parts.data:
-            for block in self._line(index + 1, self.lines[index]):
+            for block in self._line(index + 1, self.lines[index], parts.closing.get(index)):
                 if block.fault is not None and index in parts.titles:
                     self.notes.append(TextNote("comment", block.line, _TITLE))
                 else:
                     yield block
 
-    def _line(self, line: int, text: str) -> Iterator[Block]:
+    def _line(self, line: int, text: str, end: int | None) -> Iterator[Block]:
         if len(text) > faults.LONGEST_LINE:
             yield Block(line, text, fault=faults.long_line(text))
             return
         # The block number goes first, so that lines that differ in nothing else are known.
         front = _PLAIN_NUMBER.match(text)
         first = front.end() if front else text.index("%") + 1 if is_mark(text) else 0
-        key = (first, text[first:])
+        key = (first, text[first:end])
         readings = self.known.get(key)
         if readings is None:
-            codes = clean(text, first, self.semicolon, self.nesting)
+            codes = clean(text[:end], first, self.semicolon, self.nesting)
             readings = self.known[key] = [_read(code, text) for code in codes]
         number = int(front[1]) if front else None
         for reading in readings:

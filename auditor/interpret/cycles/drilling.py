@@ -31,7 +31,7 @@ class _Hole:
 
 
 def expand(call: CycleCall) -> Expansion:
-    """One hole, or as many as K says; Z, R, Q and P hold for the blocks behind."""
+    """One hole, or as many as K says; Z, R, Q, P and the initial level hold for the blocks behind."""
     stored = _stored(call)
     hole = _hole(call, stored)
     repeats = count_word(call, "K")
@@ -44,6 +44,7 @@ def expand(call: CycleCall) -> Expansion:
         here = _make(call, hole, strokes)
         if call.return_to_initial:
             here = moved(here, strokes, Kind.RAPID, hole.at(hole.initial))
+    stored |= {"initial": hole.initial, "left_at": here.z}
     return Expansion(tuple(strokes), point_remarks(call, "Q"), stored, _leaned_on(call, hole))
 
 
@@ -83,8 +84,8 @@ def _dwell(call: CycleCall) -> float | None:
 
 
 def _hole(call: CycleCall, stored: dict[str, float]) -> _Hole:
-    initial = call.start.z
-    level = _level(call, stored.get("level"))
+    initial = _initial(call)
+    level = _level(call, stored.get("level"), initial)
     if "z" in stored:
         bottom = stored["z"] if call.absolute else level + stored["z"]
     elif "w" in stored:
@@ -100,14 +101,21 @@ def _hole(call: CycleCall, stored: dict[str, float]) -> _Hole:
     return _Hole(call.start.r if r is None else r, level, bottom, initial, peck, stored.get("dwell", 0.0))
 
 
-def _level(call: CycleCall, written: float | None) -> float:
+def _initial(call: CycleCall) -> float:
+    """Z where the first hole began, as long as nothing but the cycle has moved the tool since."""
+    if "initial" in call.stored and abs(call.start.z - call.stored["left_at"]) <= SAME:
+        return call.stored["initial"]
+    return call.start.z
+
+
+def _level(call: CycleCall, written: float | None, initial: float) -> float:
     """Z of the R level: from the initial level on, or a position of its own."""
     if written is None:
-        return call.start.z
+        return initial
     reading = choice(call.control, "drill_level")
     by_system = call.control.system != "A" and call.absolute
     absolute = reading == "absolute" or (reading == "by system" and by_system)
-    return written if absolute else call.start.z + written
+    return written if absolute else initial + written
 
 
 def _make(call: CycleCall, hole: _Hole, strokes: list[Stroke]) -> Point:

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 
-from auditor.declared.control_settings import amount, switch
+from auditor.declared.control_settings import amount, choice, switch
 from auditor.declared.model import Point
 from auditor.interpret.cycles.call import CycleCall, CycleFault, Expansion, Stroke
 from auditor.interpret.cycles.readings import end_r, end_z, has, moved, thread_lead
@@ -48,16 +48,23 @@ def _box(call: CycleCall) -> _Box:
     r, z = end_r(call), end_z(call)
     r = call.stored.get("end_r", call.start.r) if r is None else r
     z = call.stored.get("end_z", call.start.z) if z is None else z
-    taper = None
-    # older programs write the taper as I (along X) or K (along Z)
-    for letter in ("R", "K" if call.name == "facing cycle" else "I"):
-        if taper is None:
-            taper = call.length(letter)
+    taper = _taper(call)
     if taper is None:
         taper = call.stored.get("taper", 0.0) if switch(call.control, "taper_stays") else 0.0
     if Point(z, r) == call.start:
         raise CycleFault("cycle-depth", "the cycle ends where it starts: it cuts nothing", ("X", "Z"))
     return _Box(Point(z, r), taper)
+
+
+def _taper(call: CycleCall) -> float | None:
+    """The taper as R, in older programs as I (along X) or K (along Z), which are the only ones some controls know."""
+    older = call.length("K" if call.name == "facing cycle" else "I")
+    taper = call.length("R")
+    if choice(call.control, "taper_letter") == "R":
+        return older if taper is None else taper
+    if taper is not None:
+        raise CycleFault("cycle-depth", "R is no word of this cycle where the taper is written as I or K", ("R",))
+    return older
 
 
 def _turning(call: CycleCall, box: _Box) -> tuple[Stroke, ...]:

@@ -68,7 +68,7 @@ def wall_strokes(
 ) -> Iterator[tuple[Stroke, Spot]]:
     """Strokes up the wall behind a stretch, to the level above or to the wall's own top."""
     for piece in pieces[wall:]:
-        if piece.end.height <= height + SAME:
+        if piece.end.height <= height + SAME or height >= ceiling - SAME:
             return
         if piece.end.height > ceiling + SAME:
             top = Spot(piece.along_at(ceiling), ceiling)

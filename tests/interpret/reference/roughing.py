@@ -193,7 +193,7 @@ class _Pockets:
         piece = self.rising[stretch.wall]
         rest = [piece.cut_at(self.path[-1].x / 2)[1], *self.rising[stretch.wall + 1 :]]
         for piece in rest:
-            if piece.r1 <= piece.r0 + NEAR:
+            if piece.r1 <= piece.r0 + NEAR or piece.r0 >= top - NEAR:
                 return
             if piece.r1 > top + NEAR:
                 self.path.append(piece.cut_at(top)[0].step())
