@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from itertools import pairwise
+
 import numpy as np
 import pytest
 from anastruct import SystemElements
@@ -25,7 +27,7 @@ def frame_compliance(lengths: list[float], diameters: list[float], load: float, 
     ends = np.cumsum(lengths)
     nodes = sorted({0.0, *ends.tolist(), load})
     frame = SystemElements()
-    for left, right in zip(nodes[:-1], nodes[1:], strict=True):
+    for left, right in pairwise(nodes):
         diameter = diameters[int(np.searchsorted(ends, 0.5 * (left + right)))]
         frame.add_element([[left, 0.0], [right, 0.0]], EA=STIFF, EI=MODULUS * np.pi / 64.0 * diameter**4)
     last = len(nodes)

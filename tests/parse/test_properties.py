@@ -21,7 +21,9 @@ ADDRESSES = [*"ABCDEFGHIJKLMPQRSTUVWXYZ", ",C", ",R", ",A"]
 numbers = st.from_regex(r"[+-]?([0-9]{1,4}(\.[0-9]{0,3})?|\.[0-9]{1,3})", fullmatch=True)
 typed_words = st.tuples(st.sampled_from(ADDRESSES), numbers).map("".join)
 typed_blocks = st.lists(typed_words, min_size=1, max_size=8)
-options = st.fixed_dictionaries({"semicolon": st.sampled_from(["comment", "end of block"]), "comment_nesting": st.booleans()})
+options = st.fixed_dictionaries(
+    {"semicolon": st.sampled_from(["comment", "end of block"]), "comment_nesting": st.booleans()}
+)
 
 
 def check_places(program: ProgramText) -> None:
