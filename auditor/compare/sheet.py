@@ -60,6 +60,8 @@ def comparison_sheet(comparison: Comparison | None, study: RakeStudy | None, vie
         for variant in comparison.others:
             _changed(paper, variant)
     if study is not None:
+        if comparison is not None:
+            paper.gap()
         _rake_table(paper, study)
     return paper.text()
 
@@ -161,7 +163,6 @@ def _change_line(change: Change) -> str:
 
 
 def _rake_table(paper: Paper, study: RakeStudy) -> None:
-    paper.gap()
     head = (f"Rake on the heaviest cut, line {study.move.line}: depth {study.depth:.2f} mm, feed {study.feed:.2f} mm, "
             f"{study.speed:.0f} m/min, mean chip {study.chip:.3f} mm")
     paper.paragraph((head, "bold"))
@@ -187,7 +188,7 @@ _READING = (
 def _rake_cells(row: RakeRow, now: bool) -> list[str]:
     rubs = " rubs" if row.clearance <= 0.0 else ""
     return [
-        f"{row.rake:+.0f}{' *' if now else ''}", f"{row.shear_angle:.0f}", f"{row.chip_ratio:.2f}",
+        f"{row.rake:+.1f} *" if now else f"{row.rake:+g}", f"{row.shear_angle:.0f}", f"{row.chip_ratio:.2f}",
         f"{row.chip_thickness:.2f}", _bare(row.cutting, "N"), _bare(row.passive, "N"), _bare(row.motor_power, "kW"),
         f"{row.wedge:.0f}", f"{row.clearance:.0f}{rubs}",
     ]  # fmt: skip

@@ -18,8 +18,8 @@ _INCH_SIGNS = re.compile("[”“″]|''")
 
 _BEFORE: dict[str, Role] = {
     **dict.fromkeys(
-        ("DIA", "DIAM", "DIAMETER", "DIAMETRE", "DIAMETRO", "DM", "PHI", "OD", "D", "DURCHMESSER", "AUSSEN", "ROUND",
-         "ROND", "RUND", "TONDO", "REDONDO", "BAR", "STANGE", "BARRE", "BARRA", "DE"), "diameter"),
+        ("DIA", "DIAM", "DIAMETER", "DIAMETRE", "DIAMETRO", "DM", "RD", "PHI", "OD", "D", "DURCHMESSER", "AUSSEN",
+         "ROUND", "ROND", "RUND", "TONDO", "REDONDO", "BAR", "STANGE", "BARRE", "BARRA", "DE"), "diameter"),
     **dict.fromkeys(("ID", "BORE", "INNEN", "DI", "INT"), "inside"),
     **dict.fromkeys(
         ("L", "LG", "LEN", "LENGTH", "LONG", "LAENGE", "LANG", "LONGUEUR", "LUNGHEZZA", "LUNG", "LARGO", "LONGITUD",

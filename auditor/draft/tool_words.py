@@ -6,6 +6,7 @@ import re
 from collections.abc import Callable, Iterable, Iterator, Sequence
 from dataclasses import dataclass, field
 
+from auditor.declared.iso_codes import CodeError
 from auditor.declared.iso_holders import decode_holder
 from auditor.declared.iso_inserts import decode_insert
 from auditor.declared.model import ToolKind
@@ -13,7 +14,6 @@ from auditor.draft.guesses import Guess, Sure, quantity, text_value
 from auditor.draft.sayings import Saying
 from auditor.draft.sizes import Size, sizes
 from auditor.draft.vocabulary import KINDS_BY_CLAIM, LEFT, SUBSTRATES, TOOL_KINDS, holds, named
-from auditor.errors import TurnauditError
 
 _INSERT = re.compile(
     r"(?<![A-Z0-9])[ABCDEHKLMRSTVW][NABCDEFGP][ACEFGHJKLMNU][NRFAMGWTQUBHCJX][ -]?"
@@ -75,7 +75,7 @@ def _codes(saying: Saying) -> Iterator[tuple[str, Guess]]:
         for match in pattern.finditer(saying.text):
             try:
                 decode(match[0])
-            except TurnauditError:
+            except CodeError:
                 continue
             yield key, Guess(text_value(match[0]), "sure" if saying.marked else "likely", saying.place)
 

@@ -129,10 +129,12 @@ def _without_names(text: str) -> str:
 
 
 def _measures(text: str) -> Iterator[Size]:
-    """Numbers that can be sizes of stock: marked, right behind the label, or behind another and an X."""
-    for size in sizes(text):
+    """Numbers that can be sizes of stock: marked, right behind the label, or joined to another by an X."""
+    found = sizes(text)
+    joined = [size.lead == "X" for size in found] + [False]
+    for number, size in enumerate(found):
         label = holds(size.lead, STOCK_LABELS)
-        placed = size.lead == "X" or (label is not None and label.end() == len(size.lead))
+        placed = joined[number] or joined[number + 1] or (label is not None and label.end() == len(size.lead))
         if size.value > 0.0 and (size.role in _KEYS or (size.role is None and placed)):
             yield size
 
