@@ -107,9 +107,9 @@ def _known(template: str, value: float, words: Callable[[float], str]) -> str:
 
 
 def finding_over(run: Run, check: str, excess: Excess, message: str, unit: str, remedy: str | None) -> Finding:
-    """The finding of the default rule: value, band, limit, place and situation filled in."""
+    """The finding of the default rule: value, band, limit, place and situation filled in, the feed word marked."""
     figures = {"value": excess.value, "band": excess.band, "limit": excess.limit, "unit": unit, "remedy": remedy}
-    return finding_at(run, check, excess.level, excess.row, message, **figures)
+    return finding_at(run, check, excess.level, excess.row, message, words=("F",), **figures)
 
 
 def finding_at(run: Run, check: str, level: Level, row: int, message: str, **figures: object) -> Finding:
