@@ -70,8 +70,8 @@ def _deeds(number: int, line: int, moves: Sequence[Move], front: float) -> Deeds
         kinds[act.kind] += count
     kind, most = kinds.most_common(1)[0] if kinds else (None, 0)
     inside = votes[BORE] > votes[TURN]
-    if kind == "threading" or (kind in ("grooving", "parting") and THREAD in votes):
-        kind = "threading"
+    if kind == "grooving" and PART in votes:  # it opens the groove it parts off in
+        kind = "parting"
     return Deeds(
         tool=number, line=line, kind=kind, clear=most >= 0.8 * kinds.total() > 0,
         acts=tuple(dict.fromkeys(act.what for act in votes)),
@@ -140,7 +140,8 @@ def _across(move: Move, after: tuple[float, float] | None, front: float) -> Act 
         return PART if move.end.z < front - BEHIND else FACE
     if turns_back and move.end.z < front - SHORT:
         return GROOVE
-    return None
+    lifts_off = after is not None and after[0] > STEEP * abs(after[1])
+    return FACE if inwards and lifts_off and move.end.z >= front - SHORT else None
 
 
 def _way_out(moves: Sequence[Move], index: int) -> float:

@@ -43,7 +43,7 @@ def sayings(text: ProgramText, tools: Mapping[int, int]) -> list[Saying]:
         for comment in block.comments:
             said, quote = upper(comment.text), _short(remark_text(comment.text))
             if said and not _CODE.match(said):
-                near = _tool_near(text.blocks, index, calls)
+                near = None if block.program is not None else _tool_near(text.blocks, index, calls)  # a title
                 found += _parts(Saying(block.line, said, quote, near, marked=index in calls), tools)
     return found
 
