@@ -9,12 +9,13 @@ Why
     before the torque turns it.
 
 Formula and source
-    Grip left = static grip less the jaws' centrifugal force (VDI 3106); a grip from inside gains by speed, which is
-    not credited. Need = the larger of sqrt((2 M / D)^2 + Fz^2) / friction for slipping (VDI 3106; Fz is the pull out
-    of the chuck, a push is taken by its face) and 3 x sqrt(Fc^2 + Fp^2) x distance from the jaws / D for tilting
-    (estimate, 2 to 4 without an end stop). With a tailstock or centre nothing tilts. Stop: under grip_safety times
-    the need (1.5, VDI 3106). Review: under grip_safety_squared (2.25: 1.5 for the cut times 1.5 for the chuck).
-    Cutting forces under 50 N are not judged.
+    Grip left = static grip less the jaws' centrifugal force (VDI 3106); a collet has no flying jaws; a grip from
+    inside gains by speed, which is not credited. Need = the larger of sqrt((2 M / D)^2 + Fz^2) / friction for
+    slipping (VDI 3106; Fz is the pull out of the chuck, a push is taken by its face) and
+    3 x sqrt(Fc^2 + Fp^2) x distance from the jaws / D for tilting (estimate, 2 to 4 without an end stop). In a
+    collet, with a tailstock or a centre nothing tilts. Stop: under grip_safety times the need (1.5, VDI 3106).
+    Review: under grip_safety_squared (2.25: 1.5 for the cut times 1.5 for the chuck). Cutting forces under 50 N are
+    not judged. A collet whose grip_diameter is not declared grips the bar's diameter.
 
 Remedy
     The feed or depth at which the same formulas keep the safety; more grip; a shorter stick-out; a lower speed.
@@ -29,6 +30,7 @@ from numpy.typing import NDArray
 
 from auditor.checks._judging import MOST_CURED, SMALL_FORCE, lasting, rows_of, threshold
 from auditor.checks._remedy import way_out
+from auditor.checks._turning import has_flying_jaws
 from auditor.checks._words import figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.clamping import centrifugal_force, grip_for_cut, grip_for_tilting, grip_left
@@ -53,14 +55,13 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if holding.grip_force is None:
         yield NotJudged(CHECK, "workholding.grip_force is not declared")
         return
-    if holding.grip_diameter is None:
+    if holding.grip_diameter is None and holding.kind != "collet":
         yield NotJudged(CHECK, "workholding.grip_diameter is not declared")
         return
     if run.job.workpiece.material.kc11 is None:
         yield NotJudged(CHECK, f"no force pair is known for {run.job.workpiece.material.name}")
         return
-    flying = holding.kind != "collet" and not holding.grip_inside
-    if flying and (holding.jaw_mass is None or holding.jaw_radius is None):
+    if has_flying_jaws(holding) and (holding.jaw_mass is None or holding.jaw_radius is None):
         yield NotJudged(CHECK, "workholding.jaw_mass or jaw_radius is not declared: the grip lost by speed is left out")
     yield from _judge_moves(run)
 
@@ -91,13 +92,14 @@ def used_share(run: Run, loads: Loads) -> Floats:
 def _grips(run: Run, loads: Loads) -> tuple[Floats, Floats]:
     """Grip needed and grip left, N."""
     holding = run.job.workholding
-    grip, friction = holding.grip_diameter or 1.0, holding.friction or USUAL_FRICTION
+    grip = holding.grip_diameter or run.job.workpiece.diameter  # a collet grips the bar
+    friction = holding.friction or USUAL_FRICTION
     turning = np.nan_to_num(loads.torque) * 2000.0 / grip  # N at the gripped diameter
     pull = np.maximum(-np.nan_to_num(loads.force_z), 0.0)  # a push is taken by the chuck's face
     slip = grip_for_cut(turning, pull, grip, grip, friction)
     tilt = _tilting(run, loads, grip) if holding.kind == "chuck" else 0.0 * slip
     lost = 0.0 * slip
-    if holding.jaw_mass is not None and holding.jaw_radius is not None:
+    if has_flying_jaws(holding) and holding.jaw_mass is not None and holding.jaw_radius is not None:
         lost = centrifugal_force(holding.jaw_mass, holding.jaw_radius, np.nan_to_num(loads.rpm), holding.jaws)
     left = grip_left(holding.grip_force or 0.0, lost, inside=holding.grip_inside)
     return np.where(np.isfinite(loads.cutting), np.maximum(slip, tilt), np.nan), np.asarray(left)
@@ -122,7 +124,8 @@ def _finding(
     needed, left = (float(column[row]) for column in _grips(run, loads))
     safety, (least, better) = 1.0 / used, limits
     level, limit = (Level.STOP, least) if safety < least else (Level.REVIEW, better)
-    fate = "The work can slip or tilt out of the jaws" if level is Level.STOP else "The grip is thin for this cut"
+    holder = "slip in the collet" if run.job.workholding.kind == "collet" else "slip or tilt out of the jaws"
+    fate = f"The work can {holder}" if level is Level.STOP else "The grip is thin for this cut"
     message = f"{fate}: {figure(left / 1000)} kN of grip are left at {float(loads.rpm[row]):.0f} rpm, the cut needs " \
               f"{figure(needed / 1000)} kN; that is {figure(safety, 2)} times, {figure(limit, 2)} is wanted (VDI 3106)."
     ways = way_out(run, move, lambda what: used_share(run, what), 1.0 / limit) if curable else ""

@@ -13,7 +13,8 @@ Formula and source
     Speed asked for = 1000 x surface speed / (pi x diameter). Common practice: a limit (G50 S or G92 S) stands
     before the first G96 and is not above what chuck and machine are good for. Stop: the path leads to a diameter
     at which the spindle reaches the machine's or the chuck's limit. Review: it has no limit but does not get
-    there, or the limit is above the machine's or the chuck's.
+    there, or the limit is above the machine's or the chuck's (spindle-speed says so where the work really turns
+    that fast). Nearer the centre than 0.5 mm the speed asked for is given for that radius.
 
 Remedy
     A block G50 S (G92 S in systems B and C) with the lowest of the machine's and the chuck's limit before G96.
@@ -24,7 +25,9 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator
 
+from auditor.checks import spindle_speed
 from auditor.checks._remarks import finding_of, remarks_of
+from auditor.checks._turning import asked_speed
 from auditor.checks._words import x_word
 from auditor.findings import Finding, Level, NotJudged, Run
 from auditor.interpret.moves import Move, Remark
@@ -35,12 +38,13 @@ LIMITS = ()
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """Unlimited surface speed, limits that limit nothing, and S read in the wrong mode."""
+    told_of = {finding.line for finding in spindle_speed.judge(run) if isinstance(finding, Finding)}
     for remark in remarks_of(run, CHECK):
-        if remark.topic != "clamp-missing":
+        if remark.topic != "clamp-missing" and not (remark.topic == "clamp-too-high" and remark.line in told_of):
             yield finding_of(CHECK, Level.REVIEW, remark)
     told = [remark for remark in remarks_of(run, CHECK) if remark.topic == "clamp-missing"]
     for start, moves in _unlimited_stretches(run):
-        fastest = max(moves, key=lambda move: _asked(move) or 0.0)
+        fastest = max(moves, key=_asked)
         said = next((remark for remark in told if remark.line <= start.line), None)
         yield _unlimited(run, start, fastest, said)
 
@@ -58,30 +62,24 @@ def _unlimited_stretches(run: Run) -> Iterator[tuple[Move, list[Move]]]:
         yield stretch[0], stretch
 
 
-def _asked(move: Move) -> float | None:
+def _asked(move: Move) -> float:
     """The speed, rpm, that surface speed asks for at the smallest radius of the move."""
-    radii = [abs(r) for r in (move.start_r, move.end_r) if r is not None and move.kind != "rapid"]
-    if move.kind == "rapid" and move.end_r is not None:
-        radii = [abs(move.end_r)]
-    if move.start_r is not None and move.end_r is not None and move.start_r * move.end_r < 0:
-        radii.append(0.0)
-    if not radii or move.spindle.value is None:
-        return None
-    return 1000.0 * move.spindle.value / (2.0 * math.pi * max(min(radii), 1e-6))
+    return asked_speed(move)[0] or 0.0
 
 
 def _unlimited(run: Run, start: Move, fastest: Move, remark: Remark | None) -> Finding:
-    limit = _lowest(run)
-    asked = _asked(fastest) or 0.0
-    reached = min(asked, run.job.machine.speed_limit)
+    limit, most = _lowest(run), run.job.machine.speed_limit
+    asked, at = asked_speed(fastest)
+    asked = asked or 0.0
     level = Level.STOP if asked >= limit else Level.REVIEW
-    place = x_word(run, fastest.end_r) if fastest.end_r is not None else "its smallest diameter"
-    message = f"Constant surface speed runs without a speed limit: at {place} the spindle turns {reached:.0f} rpm " \
-              f"({'all the machine has' if asked > run.job.machine.speed_limit else 'as surface speed asks'}); " \
-              f"{limit:.0f} rpm is the least of the machine's and the chuck's limits as declared."
+    place = x_word(run, at) if at is not None else "its smallest diameter"
+    runs = f"the spindle runs up to {most:.0f}, all the machine has" if asked > most else "the spindle follows"
+    message = f"Constant surface speed runs without a speed limit: at {place} it asks for {asked:.0f} rpm" \
+              f"{' and more' if at == 0.0 else ''}, and {runs}. The least of the machine's and the chuck's limits as " \
+              f"declared is {limit:.0f} rpm."
     line, block = (remark.line, remark.block) if remark else (start.line, start.block)
     return Finding(
-        CHECK, level, line, block, fastest.tool, message, at=fastest.end, value=reached, limit=limit, unit="rpm",
+        CHECK, level, line, block, fastest.tool, message, at=fastest.end, value=asked, limit=limit, unit="rpm",
         words=("S",), move=start.index,
         remedy=f"A block G50 S{math.floor(limit):d} before it (G92 in systems B and C).",
     )
