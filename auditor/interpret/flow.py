@@ -51,6 +51,7 @@ class Flow:
         self.modal_call: ModalCall | None = None
         self.started: list[Program] = []
         self._from_start = choice(control, "sequence_search") == "from start"
+        self.went_back = False  # since last asked
         self._jumps = 0
         self._steps = 0
         self._most_steps = MOST_STEPS + 2 * sum(len(program.blocks) for program in library.programs)
@@ -91,9 +92,7 @@ class Flow:
         place = frame.program.find(number, frame.index - 1, from_start=self._from_start)
         if place is None:
             return False
-        if place < frame.index:
-            self._count()
-        frame.index = place
+        self._go_to(place)
         return True
 
     def lies_behind(self, number: int) -> bool:
@@ -113,9 +112,7 @@ class Flow:
 
     def go_to_index(self, index: int) -> None:
         """Go on at a block of the running program."""
-        if index < self.frame.index:
-            self._count()
-        self.frame.index = index
+        self._go_to(index)
 
     def call(
         self, program: Program, *, repeats: int, place: tuple[int, str | None], first: int = 0, macro: bool = False
@@ -139,6 +136,12 @@ class Flow:
             return True
         self.frames.pop()
         return to is None or self.jump(to)
+
+    def _go_to(self, index: int) -> None:
+        if index < self.frame.index:
+            self.went_back = True
+            self._count()
+        self.frame.index = index
 
     def _count(self) -> None:
         self._jumps += 1

@@ -8,6 +8,7 @@ from dataclasses import replace
 from auditor.declared.model import Control, Job
 from auditor.interpret.control_values import known_control_values
 from auditor.interpret.detection import Mark, against, detect, marks_of
+from auditor.interpret.endless import LoopWatch
 from auditor.interpret.execute import carry_out
 from auditor.interpret.flow import EndlessError, Flow
 from auditor.interpret.library import Library
@@ -106,6 +107,7 @@ def _work_through(run: Run) -> None:
     if main is None:
         return
     run.flow.begin(main)
+    watch = LoopWatch()
     try:
         while run.ended is None:
             block = run.flow.next_block()
@@ -114,10 +116,15 @@ def _work_through(run: Run) -> None:
                     break
             elif not _skipped(run, block):
                 carry_out(run, block)
+            if run.flow.went_back:
+                run.flow.went_back = False
+                watch.came_back(run)
     except EndlessError:
         reason = "the program does not come to an end here: what lies behind was not reached"
         run.remark("endless", reason)
         run.log.add_not_audited(run.words.line, run.words.text, reason)
+        settle(run)
+        del run.log.moves[watch.moves_to_keep() :]
 
 
 def _end_of_text(run: Run) -> bool:

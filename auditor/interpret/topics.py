@@ -28,11 +28,12 @@ TOPICS: dict[str, frozenset[str]] = {
         "cycle-allowance-sign", "cycle-stored-value", "cycle-depth", "cycle-start", "cycle-corner", "cycle-peck",
         "cycle-relief", "cycle-word-with-point", "cycle-shift-with-pocket", "cycle-groove-step",
     }),
+    "thread-passes": frozenset({"speed-in-thread"}),
     "program-flow": frozenset({
         "end-missing", "program-not-called", "subprogram-missing", "target-missing", "endless", "repeats-main",
         "number-repeated", "return-through-point", "word-repeated", "code-group-repeated", "m-codes-many",
         "travel-limit", "spindle-left-on", "coolant", "dwell", "block-skip", "stop-unattended", "preset",
-        "work-zero-changed", "local-shift", "data-input", "home-unknown", "paren", "semicolon", "speed-in-thread",
+        "work-zero-changed", "local-shift", "data-input", "home-unknown", "paren", "semicolon",
         "tool-in-motion", "safe-start",
     }),
 }

@@ -7,7 +7,16 @@ from dataclasses import dataclass, replace
 from auditor.declared.control_settings import amount, choice
 from auditor.declared.model import Point
 from auditor.interpret.cycles.call import CycleCall, CycleFault, Expansion, Stroke
-from auditor.interpret.cycles.readings import SAME, count_word, end_r, fine_word, moved, point_remarks, thread_lead
+from auditor.interpret.cycles.readings import (
+    SAME,
+    count_word,
+    end_r,
+    fine_word,
+    moved,
+    peck_remarks,
+    point_remarks,
+    thread_lead,
+)
 from auditor.interpret.moves import Feed, Kind
 
 NAMES = ("drill", "tap", "bore")
@@ -45,7 +54,8 @@ def expand(call: CycleCall) -> Expansion:
         if call.return_to_initial:
             here = moved(here, strokes, Kind.RAPID, hole.at(hole.initial))
     stored |= {"initial": hole.initial, "left_at": here.z}
-    return Expansion(tuple(strokes), point_remarks(call, "Q"), stored, _leaned_on(call, hole))
+    remarks = (*point_remarks(call, "Q"), *peck_remarks("Q", hole.peck))
+    return Expansion(tuple(strokes), remarks, stored, _leaned_on(call, hole))
 
 
 def _leaned_on(call: CycleCall, hole: _Hole) -> tuple[str, ...]:

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from auditor.declared.control_settings import amount
 from auditor.declared.model import Point
 from auditor.interpret.cycles.call import CycleCall, CycleFault, CycleRemark, Expansion, Stroke
-from auditor.interpret.cycles.readings import SAME, end_r, end_z, fine_word, has, moved, point_remarks
+from auditor.interpret.cycles.readings import SAME, end_r, end_z, fine_word, has, moved, peck_remarks, point_remarks
 from auditor.interpret.moves import Kind
 
 NAMES = ("peck along z", "peck along x")
@@ -105,7 +105,7 @@ def _column(cycle: _Peck, strokes: list[Stroke], side: float, depths: list[float
 
 
 def _remarks(call: CycleCall, cycle: _Peck, columns: int) -> tuple[CycleRemark, ...]:
-    remarks = list(point_remarks(call, "P", "Q"))
+    remarks = [*point_remarks(call, "P", "Q"), *peck_remarks("Q" if cycle.along_z else "P", cycle.peck)]
     if cycle.relief and columns > 1:
         remarks.append(
             CycleRemark(

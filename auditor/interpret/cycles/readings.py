@@ -7,6 +7,7 @@ from auditor.declared.model import Point
 from auditor.interpret.cycles.call import INCH, CycleCall, CycleFault, CycleRemark, Stroke
 from auditor.interpret.moves import Kind
 
+FINEST_PECK = 0.05  # mm (common practice); smaller ones are a slip of the unit
 SAME = 1e-7  # mm; points nearer than this are one
 
 
@@ -76,6 +77,14 @@ def point_remarks(call: CycleCall, *letters: str) -> tuple[CycleRemark, ...]:
         for letter in letters
         if letter in call.words and call.words[letter].has_point
     )
+
+
+def peck_remarks(letter: str, peck: float) -> tuple[CycleRemark, ...]:
+    """A remark where a peck is too small to be meant: a number of millimetres read as least increments."""
+    if not SAME < peck < FINEST_PECK:
+        return ()
+    message = f"{letter} makes pecks of {peck:.4g} mm: it counts least increments, not millimetres"
+    return (CycleRemark("cycle-peck", message, (letter,)),)
 
 
 def thread_lead(call: CycleCall) -> float:
