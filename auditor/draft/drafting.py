@@ -28,6 +28,8 @@ from auditor.draft.work_tables import (
 from auditor.draft.work_words import is_about_work
 from auditor.errors import DeclarationError, Fault, ProgramError
 
+TRIES = 3  # faults that only show once others are gone
+
 
 def draft_job(program: str | Path, job_path: str | Path, kinds: Mapping[int, ToolKind] | None = None) -> Draft:
     """The job file that could stand at ``job_path`` for a program, with all that the program says filled in.
@@ -53,13 +55,39 @@ def draft_job(program: str | Path, job_path: str | Path, kinds: Mapping[int, Too
     first = Entry("program", text_value(_beside(Path(program), job)), "", "said")
     batch = Entry.optional("batch", None, "50", "parts in the run: with it edge life is judged")
     alone = Entry.optional("unattended", None, "false", "true: nobody watches, worn edges are reckoned with")
-    return Draft(
+    draft = Draft(
         program=Path(program).name,
         lines_read=len(reading.text.lines),
         sections=(Section("", (first, batch, alone, *head)), control_section(reading), *sections,
                   workpiece_section(reading, known, shop.names("materials")),
                   *_tools(reading, deeds, shop, kinds or {})),
     )  # fmt: skip
+    return _without_impossible(draft, program, job)
+
+
+def _without_impossible(draft: Draft, program: str | Path, job: Path) -> Draft:
+    """The draft without what the reader of job files would refuse: sizes in comments need not fit together."""
+    for _ in range(TRIES):
+        faults = {
+            path: fault.message
+            for fault in open_faults(draft.text(), program, job)
+            if fault.key not in draft.open
+            for path in _in_doubt(draft, fault.key or "")
+        }
+        if not faults:
+            break
+        draft = draft.taken_back(faults)
+    return draft
+
+
+def _in_doubt(draft: Draft, key: str) -> list[str]:
+    """The values that a fault at a key may stem from: that key, its table's optional ones, or all of the table."""
+    said = {path: entry for path, entry in draft.entries() if entry.state == "said"}
+    if key in said:
+        return [key]
+    table = key if any(path.startswith(f"{key}.") for path in said) else key.rpartition(".")[0]
+    others = [path for path in said if path.startswith(f"{table}.") and not path.endswith(".kind")]
+    return [path for path in others if said[path].usual] or others
 
 
 def open_faults(text: str, program: str | Path, job_path: str | Path) -> tuple[Fault, ...]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import textwrap
-from collections.abc import Iterator, Mapping
+from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from typing import Literal
 
@@ -23,6 +23,7 @@ class Entry:
     value: str  # as TOML; "?" in quotes where open
     remark: str
     state: State
+    usual: str = ""  # an optional key: the value that is taken without it
 
     @classmethod
     def of(cls, key: str, guess: Guess | None, remark: str) -> Entry:
@@ -34,7 +35,16 @@ class Entry:
     @classmethod
     def optional(cls, key: str, guess: Guess | None, usual: str, remark: str) -> Entry:
         """A key that may be left out."""
-        return cls(key, usual, remark, "usual") if guess is None else cls(key, guess.value, guess.told, "said")
+        if guess is None:
+            return cls(key, usual, remark, "usual", usual)
+        return cls(key, guess.value, guess.told, "said", usual)
+
+    def taken_back(self, why: str) -> Entry:
+        """The entry with a value that cannot stand turned into a question, or left out where it may be."""
+        remark = remark_text(f"{self.value} ({self.remark}) cannot stand here: {why}")
+        if self.usual:
+            return replace(self, value=self.usual, remark=remark, state="usual")
+        return replace(self, value=f'"{OPEN}"', remark=remark, state="open")
 
     def lines(self) -> Iterator[str]:
         """As it stands in the file; a long remark goes above its key."""
@@ -92,7 +102,24 @@ class Draft:
 
     def answered(self, answers: Mapping[str, str]) -> Draft:
         """The draft with values that a person gave, by key path."""
-        return replace(self, sections=tuple(_answered(section, answers) for section in self.sections))
+        def with_answer(path: str, entry: Entry) -> Entry:
+            if path not in answers:
+                return entry
+            return replace(entry, value=answers[path], remark="answered", state="said")
+
+        return self._changed(with_answer)
+
+    def taken_back(self, faults: Mapping[str, str]) -> Draft:
+        """The draft without values that cannot stand, by key path, with the reasons."""
+        return self._changed(
+            lambda path, entry: entry.taken_back(faults[path]) if path in faults and entry.state == "said" else entry
+        )
+
+    def _changed(self, change: Callable[[str, Entry], Entry]) -> Draft:
+        return replace(self, sections=tuple(
+            replace(section, entries=tuple(change(section.path(entry), entry) for entry in section.entries))
+            for section in self.sections
+        ))  # fmt: skip
 
     def text(self) -> str:
         """The file."""
@@ -105,13 +132,3 @@ class Draft:
         yield "# Keys behind # may stay as they are: the value shown is what is taken without them, or an example."
         if self.open:
             yield f'# "{OPEN}" is to be decided: `turnaudit check {remark_text(self.program)}` lists what is left.'
-
-
-def _answered(section: Section, answers: Mapping[str, str]) -> Section:
-    entries = tuple(
-        replace(entry, value=answers[section.path(entry)], remark="answered", state="said")
-        if section.path(entry) in answers
-        else entry
-        for entry in section.entries
-    )
-    return replace(section, entries=entries)

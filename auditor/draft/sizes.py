@@ -44,7 +44,11 @@ def _either(words: dict[str, Role]) -> str:
     return "|".join(re.escape(word) for word in sorted(words, key=len, reverse=True))
 
 
-_NUMBER = r"\d+[ -]\d+/\d+|\d+/\d+|\d+[.,]\d+|[.,]\d+|\d+\.?"
+_DIGITS = r"\d{1,7}"  # more are no size
+_NUMBER = "|".join((
+    rf"{_DIGITS}[ -]{_DIGITS}/{_DIGITS}", rf"{_DIGITS}/{_DIGITS}", rf"{_DIGITS}[.,]{_DIGITS}", rf"[.,]{_DIGITS}",
+    rf"{_DIGITS}\.?",
+))  # fmt: skip
 _SIZE = re.compile(
     rf"""(?:(?<![A-Z0-9])(?P<before>{_either(_BEFORE)})[\ ]*[=:.]?[\ ]*)?
     (?<![A-Z0-9.,/-])(?P<number>{_NUMBER})(?![\d/])
@@ -99,7 +103,9 @@ def _found(text: str) -> Iterator[Size]:
         after, before = match["glued"] or match["after"], match["before"]
         role = _AFTER[after] if after else _BEFORE[before] if before else None
         unit, scale = _UNITS.get(match["unit"], ("in", 1.0)) if match["unit"] else (None, 1.0)
-        yield Size(scale * _value(match["number"]), unit, role, lead.strip(" :=-.,;"))
+        value = scale * _value(match["number"])
+        if value > 0.0:
+            yield Size(value, unit, role, lead.strip(" :=-.,;"))
 
 
 def _value(text: str) -> float:

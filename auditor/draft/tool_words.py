@@ -31,7 +31,7 @@ INCLUDED_ANGLES = (35.0, 55.0, 60.0, 75.0, 80.0, 86.0, 90.0)  # deg, corners of 
 INCH_CORNERS = (0.004, 0.005, 0.008, 0.015, 0.0156, 0.016, 0.031, 0.0312, 0.03125, 0.0313, 0.032, 0.047, 0.0469, 0.062,
                 0.0625)  # fmt: skip
 SMALLEST_CORNER, LARGEST_INCH_CORNER = 0.05, 0.13  # mm, in: a corner beyond is meant in the other unit
-WIDEST, LARGEST_DRILL = 30.0, 100.0  # mm
+NARROWEST, WIDEST, LARGEST_DRILL = 0.4, 30.0, 100.0  # mm
 
 
 @dataclass(slots=True)
@@ -117,7 +117,7 @@ def _width(saying: Saying, found: Sequence[Size], unit: str) -> Iterator[tuple[s
     said: list[tuple[Size, Sure]] = [(size, "likely") for size in found if size.role == "width"]
     said += [(size, "guess") for size in found if size.role is None]
     for size, sure in said:
-        if 0.0 < _millimetres(size, unit) <= WIDEST:
+        if NARROWEST <= _millimetres(size, unit) <= WIDEST:
             yield "width", Guess(quantity(size.value, size.unit or unit), sure, saying.place)
             return
 

@@ -201,3 +201,12 @@ def test_several_machines_of_the_shop_are_a_question(tmp_path: Path) -> None:
     assert draft.open == ("machine",)
     faults = open_faults(draft.text(), PROGRAMS / "welle.nc", tmp_path / "welle.job.toml")
     assert [fault.key for fault in faults] == ["machine"]
+
+
+def test_what_cannot_stand_together_is_taken_back_and_said(tmp_path: Path) -> None:
+    """A corner of 2 mm does not fit a blade of 2 mm: half the width at most (geometry)."""
+    program = tmp_path / "blade.nc"
+    program.write_text("G21\nT0101 (GROOVE W2 R2)\nG0 X50. Z-10.\nG1 X40. F0.1\nX50.\nM30\n", encoding="utf-8")
+    draft = draft_job(program, tmp_path / "blade.job.toml")
+    assert tomllib.loads(draft.text())["tools"]["1"] == {"kind": "grooving", "width": "2 mm"}
+    assert '"2 mm" (likely: (GROOVE W2 R2) in line 2) cannot stand here' in draft.text().replace("\n#   ", " ")
