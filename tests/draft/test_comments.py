@@ -76,7 +76,7 @@ def test_chuck(text: str, expected: dict[str, str]) -> None:
         ("EINSTICH BREITE 2 MM", "grooving", {"width": "2 mm"}),
         ("ABSTECHEN 3MM", "parting", {"width": "3 mm"}),
         ("TRONCONNAGE LARG 3", "parting", {"width": "3 mm"}),
-        ("FACE GROOVE .125W", "face grooving", {"width": "0.125 mm"}),
+        ("FACE GROOVE .125 IN WIDE", "face grooving", {"width": "0.125 in"}),
         ("INNENGEWINDE M20", "threading", {}),
         ("GEWINDEBOHRER M10", "drilling", {"diameter": "10 mm"}),
         ("MASCHIO M8", "drilling", {"diameter": "8 mm"}),
