@@ -13,16 +13,26 @@ from auditor.findings import Run
 from auditor.mechanics.bars import bar_compliance, bar_modulus, shank_compliance
 
 
-def slenderness(run: Run, row: int) -> float:
-    """Distance from the jaws to the cut over the outer diameter left there."""
+def slenderness(run: Run, cut: Cut, row: int) -> float:
+    """Distance from the jaws to the cut over the outer diameter of the work there."""
     loads = run.prediction.loads
     reach = run.job.workholding.stick_out + float(loads.z[row])
-    diameter = 2.0 * float(loads.outermost[row])
+    across = _across(run, cut, row)
+    diameter = 2.0 * (across[1] if across is not None else float(loads.outermost[row]))
     return max(reach, 0.0) / diameter if diameter > 0.0 else 0.0
 
 
 def wall_share(run: Run, cut: Cut, row: int) -> float | None:
     """Wall thickness over outer diameter at the cut; None for solid work."""
+    across = _across(run, cut, row)
+    if across is None:
+        return None
+    inner, outer = across
+    return (outer - inner) / (2.0 * outer) if inner > 1e-6 else None
+
+
+def _across(run: Run, cut: Cut, row: int) -> tuple[float, float] | None:
+    """Smallest and largest radius of the work where the cut is, mm before it; None in air."""
     stock = run.simulation.stock_before.get(cut.move.index)
     if stock is None:
         return None
@@ -32,7 +42,7 @@ def wall_share(run: Run, cut: Cut, row: int) -> float | None:
     if across.is_empty:
         return None
     _, inner, _, outer = across.bounds
-    return (outer - inner) / (2.0 * outer) if inner > 1e-6 else None
+    return float(inner), float(outer)
 
 
 def shank_give(tool: Tool) -> float | None:

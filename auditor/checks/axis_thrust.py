@@ -30,6 +30,7 @@ from auditor.checks._judging import SMALL_FORCE, THRUST_SCATTER, over_limit, thr
 from auditor.checks._remedy import cure
 from auditor.checks._words import finding_over, force
 from auditor.findings import Finding, Limit, NotJudged, Run
+from auditor.interpret.moves import Kind
 from auditor.predict.loads import Loads
 
 CHECK = "axis-thrust"
@@ -62,4 +63,8 @@ def _judge_axis(run: Run, axis: str, limit: float) -> Iterator[Finding]:
         message = f"The cut {sure} back harder than the {axis} slide can: {force(excess.value)} " \
                   f"({force(low)} to {force(high)}) along {axis} against {force(limit)} of thrust (as declared)."
         remedy = cure(run, excess, lambda loads: push(loads, axis) / limit)
+        if excess.move.kind is Kind.DRILL:
+            message += " About half of a drill's thrust comes from its chisel edge (common practice)."
+            ways = "A split point or a pilot hole as wide as the web takes most of that half away."
+            remedy = f"{remedy} {ways}" if remedy else ways
         yield finding_over(run, CHECK, excess, message, "N", remedy)

@@ -60,7 +60,7 @@ def _judge_cut(run: Run, cut: Cut, speeds: NDArray[np.float64], low: float, high
     reached = cut.largest(speeds)
     if reached > high:
         reached = lasting(loads, speeds, cut.move.index, over=high) or high
-    row = cut.row_of_largest(speeds)
+    row = cut.rows.start + int(np.argmin(np.nan_to_num(np.abs(speeds[cut.rows] - reached), nan=np.inf)))
     if reached > high * (1.0 + 1e-6):
         limit, fate = high, "the edge burns off early"
     elif 0.0 < reached < low * (1.0 - 1e-6) and not _to_centre(cut):
@@ -69,8 +69,8 @@ def _judge_cut(run: Run, cut: Cut, speeds: NDArray[np.float64], low: float, high
         return None
     rpm = float(loads.rpm[row])
     held = " (the spindle's limit holds it there)" if limit == low and _held(run, cut, rpm) else ""
-    place = f"{rpm:.0f} rpm and {x_word(run, float(loads.r[row]))}"
-    message = f"The edge runs at {reached:.0f} m/min at {place}{held}; its range " \
+    place = f"{x_word(run, float(loads.outermost[row]))} and {rpm:.0f} rpm"
+    message = f"The edge runs at {reached:.0f} m/min, at {place}{held}; its range " \
               f"as declared is {low:.0f} to {high:.0f}: {fate}."
     wanted = limit if cut.move.spindle.mode == "surface" else rpm * limit / reached
     rounded = math.floor(wanted) if limit == high else math.ceil(wanted)

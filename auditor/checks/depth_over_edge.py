@@ -13,14 +13,17 @@ Formula and source
     Review: over that share. Stop: over the edge length less the nose radius (a round insert: over its radius).
 
 Remedy
-    The depth at which the engaged edge meets the share, computed for the block; or a larger insert.
+    The depth at which the engaged edge meets the share, computed for the block; or a larger insert. Where a shoulder
+    lengthens the engagement: stop short of it and feed out along the wall.
 """
 
 from __future__ import annotations
 
 from collections.abc import Iterator
 
-from auditor.checks._cuts import Cut, cuts
+import numpy as np
+
+from auditor.checks._cuts import Cut, cuts, wipes_outwards
 from auditor.checks._judging import lasting, threshold
 from auditor.checks._remedy import depth_within
 from auditor.checks._words import figure, finding_at, length
@@ -67,12 +70,29 @@ def _judge_straight(run: Run, cut: Cut, edge: float) -> Finding | None:
     end = edge - cut.tool.nose_radius
     level = Level.STOP if engaged > end else Level.REVIEW
     fate = "The cut reaches past the end of the edge" if level is Level.STOP else "Too much of the edge is in the cut"
-    message = f"{fate}: {figure(engaged)} mm of a {figure(edge)} mm edge, usable {figure(share * edge)} mm " \
+    message = f"{fate}: {length(run, engaged, 1)} of a {length(run, edge, 1)} edge, usable " \
+              f"{length(run, share * edge, 1)} " \
               f"({figure(share, 2)} of it, {limit.provenance})."
-    shallower = depth_within(run, cut.move, lambda what: what.length, share * edge)
-    remedy = f"Depth {length(run, shallower)} keeps to it." if shallower else "A larger insert."
+    remedy = _remedy(run, cut, share * edge)
     return finding_at(run, CHECK, level, cut.row_of_largest(loads.length), message, value=engaged,
                       limit=end if level is Level.STOP else share * edge, unit="mm", remedy=remedy)
+
+
+def _remedy(run: Run, cut: Cut, usable: float) -> str:
+    """A smaller depth, unless the length comes from a shoulder that the cut runs into or along."""
+    if wipes_outwards(cut):
+        return "Leave less on the shoulder, or face it inwards in steps."
+    if _usual_length(run, cut) <= usable:
+        return "Stop short of the shoulder and feed out along the wall."
+    shallower = depth_within(run, cut.move, lambda what: what.length, usable)
+    return f"Depth {length(run, shallower)} keeps to it." if shallower else "A larger insert."
+
+
+def _usual_length(run: Run, cut: Cut) -> float:
+    """Engaged length, mm, over most of the way: half of the way lies under it."""
+    loads = run.prediction.loads
+    where = np.linspace(loads.position[cut.rows.start], loads.position[cut.rows.stop - 1], 101)
+    return float(np.median(np.interp(where, loads.position[cut.rows], np.nan_to_num(loads.length[cut.rows]))))
 
 
 def _judge_round(run: Run, cut: Cut) -> Finding | None:
@@ -83,7 +103,7 @@ def _judge_round(run: Run, cut: Cut) -> Finding | None:
     if deep <= usable:
         return None
     level = Level.STOP if deep > 0.5 * diameter else Level.REVIEW
-    message = f"The round insert of {figure(diameter)} mm cuts {figure(deep)} mm deep, usable {figure(usable)} mm " \
-              f"({LIMITS[3].provenance})."
+    message = f"The round insert of {length(run, diameter, 1)} cuts {length(run, deep, 1)} deep, usable " \
+              f"{length(run, usable, 1)} ({LIMITS[3].provenance})."
     return finding_at(run, CHECK, level, cut.row_of_largest(loads.depth), message, value=deep, limit=usable, unit="mm",
                       remedy=f"Depth {length(run, usable)} keeps to it.")

@@ -111,7 +111,7 @@ def _own_clearance(insert: float, pocket_rake: float, inclination: float) -> flo
 
 
 def _to_centre(cut: Cut) -> bool:
-    return cut.move.end is not None and abs(cut.move.end.r) < CENTRE / 2.0 and _crosses(cut)
+    return cut.move.end is not None and cut.move.end.r < CENTRE / 2.0 and _crosses(cut)
 
 
 def _crosses(cut: Cut) -> bool:
@@ -143,8 +143,11 @@ def _finding(run: Run, cut: Cut, left: Left) -> Finding:
     for name, given in (("pocket", left.by_pocket), ("feed", -left.by_feed), ("height", -left.by_height)):
         if abs(given) >= 0.05:
             shares += f", {name} {given:+.1f}"
-    fate = "The flank rubs on the work" if left.angle <= 0.0 else "The flank nearly rubs on the work"
-    message = f"{fate}: {figure(left.angle)} deg of working clearance are left ({shares}). {origin(run, LIMITS[:1])}"
+    if left.angle <= 0.0:
+        fate = f"No working clearance is left ({figure(left.angle)} deg: {shares}): the flank rubs"
+    else:
+        fate = f"The flank nearly rubs on the work: {figure(left.angle)} deg of working clearance are left ({shares})"
+    message = f"{fate}. {origin(run, LIMITS[:1])}"
     if not certain:
         message += " The tilt of the pocket is assumed."
     return finding_at(run, CHECK, level, left.row, message, value=left.angle, limit=threshold(run, LIMITS[0]),

@@ -65,7 +65,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
 def _weakness(run: Run, cut: Cut, row: int) -> str | None:
     """What makes this cut soft, in words; None when it is stiff."""
     chuck, tailstock, bar, wall = (threshold(run, limit) for limit in LIMITS)
-    ratio = slenderness(run, row)
+    ratio = slenderness(run, cut, row)
     held_both = run.job.workholding.kind in ("chuck+tailstock", "centres")
     if ratio > (tailstock if held_both else chuck):
         return f"the work stands out {figure(ratio)} diameters"

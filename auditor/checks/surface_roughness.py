@@ -33,6 +33,7 @@ from auditor.mechanics.roughness import average_roughness, peak_to_valley, real_
 
 CHECK = "surface-roughness"
 LIMITS = ()
+NO_CUT = 0.001  # mm of depth: the tool only follows a surface that is there already
 LEAST_MINOR = 1.0  # deg; a trailing edge along the surface itself would leave no thread at all
 
 
@@ -42,7 +43,10 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if asked is None:
         yield NotJudged(CHECK, "workpiece.roughness is not declared")
         return
+    depths = run.prediction.loads.depth
     for cut in cuts(run):
+        if not cut.largest(depths) > NO_CUT:
+            continue
         if run.simulation.final_surface[cut.move.index] and cut.tool.nose_radius > 0.0:
             finding = _judge_cut(run, cut, *asked)
             if finding is not None:

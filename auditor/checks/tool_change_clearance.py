@@ -11,7 +11,8 @@ Why
 Formula and source
     Distance of the tool point from the box around the remaining stock. Stop: it stands inside. Review: nearer
     than index_clearance, plus what the longest declared overhang of an axial tool sticks out beyond this one's.
-    Common practice. Positions after a return to a reference point are taken as safe.
+    Common practice. Positions after a return to a reference point are taken as safe; after a block that
+    is not audited nothing is judged.
 
 Remedy
     Rapid out to a safe index position before the T word: first X, then Z from outside cuts, Z first out of a bore.
@@ -38,9 +39,12 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     for before, behind in pairwise(run.path.moves):
         if before.tool == behind.tool or before.tool is None or behind.tool is None:
             continue
-        at = before.end
+        at = behind.start  # unknown after a return whose place is not declared, or after a block not understood
         if at is not None:
             yield from _judge_place(run, before, behind, at)
+        elif any(before.line < block.line <= behind.line for block in run.path.not_audited):
+            yield NotJudged(CHECK, f"a block before T{behind.tool} is called is not audited: where the turret stands "
+                                   "then is not known")
 
 
 def _judge_place(run: Run, before: Move, behind: Move, at: Point) -> Iterator[Finding]:

@@ -31,6 +31,9 @@ _NUMBER_FAULTS = (
     (re.compile(r"^[+-]?\.?$"), "has no digit", None),
 )
 
+_AROUND_O = re.compile(r"[A-Z][-+.0-9]*$")
+_BEHIND_O = re.compile(r"O[.0-9]*")
+
 _FUNCTION = r"(?<![A-Z])[A-Z]{2,5}(?<!EQ|NE|GT|GE|LT|LE|OR)(?<!AND|MOD|XOR)$"
 
 # What is wanted inside statements and expressions, by what stands before.
@@ -133,10 +136,22 @@ def _letter(code: CleanCode, position: int) -> SyntaxFault:
         glued = position > 0 and code.columns[position] == code.columns[position - 1] + 1
         if position == 0 and not _FRONT_WORD.match(text):
             message = f"{letter} wants a whole number of up to {MOST_DIGITS} digits behind it"
+        elif letter == "O" and glued and text[position - 1] in _OF_A_NUMBER:
+            return _zero(code, position)
         else:
             message = f"{letter} cannot stand here: {_FRONT[letter]} comes first in a block"
         return fault_between(code, position, position + 1, message, hint if glued else None)
     return fault_between(code, position, position + 1, f"{letter} cannot stand here")
+
+
+def _zero(code: CleanCode, position: int) -> SyntaxFault:
+    """The letter O inside a number, named with the whole word: ``X4O.``."""
+    word = _AROUND_O.search(code.text, 0, position)
+    start = word.start() if word is not None else position
+    behind = _BEHIND_O.match(code.text, position)
+    end = behind.end() if behind is not None else position + 1
+    message = f"the letter O stands in the number of {code.text[start:end]}"
+    return fault_between(code, position, position + 1, message, _LETTER_FOR_DIGIT["O"])
 
 
 def _is_plain_text(code: CleanCode, position: int) -> bool:

@@ -42,3 +42,30 @@ def test_a_bend_under_the_tolerance_is_left_to_the_edge_that_makes_it() -> None:
     assert blunt
     bent = [item for item in of_check(run, "part-deflection") if item.line in blunt and item.level is not Level.STOP]
     assert bent == []
+
+
+def test_no_smaller_depth_is_asked_for_where_a_shoulder_lengthens_the_cut() -> None:
+    run = audited(FOLDER / "depth-over-edge" / "into-a-shoulder.nc")
+    remedies = {finding.line: finding.remedy or "" for finding in of_check(run, "depth-over-edge")}
+    assert "feed out along the wall" in remedies[16]
+    assert not any("epth" in remedy for remedy in remedies.values())
+
+
+def test_where_the_turret_stands_is_not_guessed_after_a_block_not_understood() -> None:
+    run = audited(FOLDER / "tool-change-clearance" / "home-not-understood.nc")
+    assert [item.check for item in run.not_judged if item.check == "tool-change-clearance"] == ["tool-change-clearance"]
+
+
+def test_the_diameter_of_a_wrong_speed_is_where_that_speed_occurs() -> None:
+    """v = pi d n, so d = 1000 v / (pi n): told beside the speed."""
+    run = audited(FOLDER / "cutting-speed" / "too-fast.nc")
+    (finding,) = of_check(run, "cutting-speed")
+    assert finding.value == pytest.approx(math.pi * 60.0 * 2000.0 / 1000.0, rel=1e-3)
+    assert "X60 and 2000 rpm" in finding.message
+
+
+def test_a_drill_is_told_where_half_of_its_thrust_comes_from() -> None:
+    run = audited(FOLDER / "axis-thrust" / "wide-drill.nc")
+    (finding,) = of_check(run, "axis-thrust")
+    assert "chisel edge" in finding.message
+    assert "split point" in (finding.remedy or "")

@@ -11,6 +11,7 @@ from auditor.parse.blocks import SyntaxFault
 TYPED = [
     ("G0 XO.5", "X", "digit 0"),
     ("G0 X1O.5", "O", "digit 0"),
+    ("G0 X4O.", "O", "number of X4O."),
     ("GO X5.", "G", "digit 0"),
     ("G0 Xl0.", "l", "digit 1"),
     ("G0 X1l.5", "l", "digit 1"),
