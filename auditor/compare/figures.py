@@ -19,9 +19,8 @@ from auditor.mechanics.roughness import average_roughness, real_to_ideal
 from auditor.predict.edge_use import edge_use
 from auditor.predict.spindle import power_at
 
-ALL_KINDS: tuple[ToolKind, ...] = (
-    "turning", "boring", "grooving", "face grooving", "parting", "threading", "drilling",
-)  # fmt: skip
+# A drill's lips balance each other, so that it bends nothing aside.
+BENDING: tuple[ToolKind, ...] = ("turning", "boring", "grooving", "face grooving", "parting", "threading")
 LEAST_MINOR = 1.0  # deg; below, feed marks are no longer set by the trailing edge
 ROUND_MINOR = 60.0  # deg, stands in for the trailing edge a round insert has not
 
@@ -57,7 +56,7 @@ def figures_of(run: Run, number: int) -> ToolFigures:
     with np.errstate(divide="ignore", invalid="ignore"):
         share = loads.motor_power / power_at(run.job.machine, loads.rpm)
     errors = diameter_errors(run)
-    own = [cut for cut in cuts(run, ALL_KINDS) if cut.tool.number == number]
+    own = [cut for cut in cuts(run, BENDING) if cut.tool.number == number]
     seated = tool.kind not in ("drilling", "stop")
     return ToolFigures(
         rake=_at_heaviest(loads.rake[rows], loads.cutting[rows]),

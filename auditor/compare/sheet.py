@@ -58,7 +58,7 @@ def comparison_sheet(comparison: Comparison | None, study: RakeStudy | None, vie
     if comparison is not None:
         _side_by_side(paper, comparison)
         for variant in comparison.others:
-            _changed(paper, variant)
+            _changed(paper, variant, comparison)
     if study is not None:
         if comparison is not None:
             paper.gap()
@@ -119,13 +119,16 @@ def _cell(line: Line, value: float | None, base: float | None) -> str:
     return said
 
 
-def _changed(paper: Paper, variant: Variant) -> None:
+def _changed(paper: Paper, variant: Variant, comparison: Comparison) -> None:
     paper.gap()
     counts = [
         f"{_WORDS[what]} {number}" for what in _WORDS
         if (number := sum(change.what == what and change.finding.accepted is None for change in variant.changes))
     ]
     paper.paragraph((f"{variant.name}: {', '.join(counts) or 'no finding before or after'}", "bold"))
+    kind, own = (one.audit.run.job.tools[comparison.number].kind for one in (variant, comparison.base))
+    if kind != own:
+        paper.paragraph(f"a {kind} tool where the job has one for {own}: the program was not made for it", margin=2)
     for change in variant.changes:
         if change.what != "left":
             paper.paragraph((_change_line(change), _STYLES[change.what]), margin=2, hang=6)
