@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 
 from auditor.calibrate.log import LoadLog
 from auditor.calibrate.timeline import Timeline
+from auditor.checks._spindle import power_at
 from auditor.declared.model import Machine
 from auditor.errors import Fault, UsageError
 from auditor.findings import Run
@@ -75,11 +76,9 @@ def power_of(reading: Floats, quantity: str, machine: Machine, rpm: Floats) -> F
     """Readings as kW at the motor."""
     if quantity == "power_kW":
         return reading
-    speeds, powers = (np.array(column) for column in zip(*machine.power_curve, strict=True))
     if quantity == "rated_percent":
-        return reading / 100.0 * float(powers.max())
-    inside = np.interp(rpm, speeds, powers)  # constant torque below the curve's first point
-    return np.asarray(reading / 100.0 * np.where(rpm < speeds[0], powers[0] * rpm / speeds[0], inside))
+        return reading / 100.0 * max(power for _, power in machine.power_curve)
+    return reading / 100.0 * power_at(machine, rpm)
 
 
 def _lines(log: LoadLog, run: Run) -> Ints:
