@@ -11,7 +11,9 @@ Why
 Formula and source
     Exact geometry of the half-section, within half the diameter tolerance (0.05 mm where none is declared). Inner
     corners may keep the nose radius of the finishing tool, threads may cut into it. Stop: a gouge. Review: metal
-    left. The block named is the cut that came nearest to the place.
+    left. The depth told is the greatest distance from the declared outline. Four neighbouring points on one circle,
+    or three that join a side tangentially, are taken as an arc drawn with chords, and the arc itself is judged. The
+    block named is the cut that came nearest to the place.
 
 Remedy
     Look at that block's words; for slopes and arcs at nose-radius compensation first.
@@ -26,7 +28,8 @@ import numpy as np
 import shapely
 from shapely.geometry.base import BaseGeometry
 
-from auditor.checks._words import figure, micro, x_word, z_word
+from auditor.checks._outlines import with_round_arcs
+from auditor.checks._words import thousandths, x_word, z_word
 from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind, Move
@@ -34,6 +37,7 @@ from auditor.interpret.moves import Kind, Move
 CHECK = "finished-shape"
 LIMITS: tuple[Limit, ...] = ()
 WITHIN = 0.05  # mm on the diameter, where no tolerance is declared (common practice)
+RIM_STEP = 0.1  # mm between the places where the depth of a deviation is measured
 SPECK = 0.0005  # mm2; smaller differences are chords of arcs
 
 
@@ -53,6 +57,7 @@ def _judge_outline(
     run: Run, final: BaseGeometry, outline: tuple[Point, ...], slack: float, *, inside: bool
 ) -> Iterator[Finding]:
     """What lies on the axis side of the outline must be metal outside (void in a bore), what lies beyond it not."""
+    outline = with_round_arcs(outline)
     under = _under(outline)
     low, _, high, top = under.bounds
     span = shapely.box(low, 0.0, high, max(top, run.simulation.raw.bounds[3]) + 1.0)
@@ -72,7 +77,7 @@ def _judge_outline(
     ):  # fmt: skip
         worst = max(shapely.get_parts(shapely.intersection(area, _inner(span, margin))), key=shapely.area, default=None)
         if worst is not None and shapely.area(worst) > SPECK:
-            yield _finding(run, level, worst, what, slack)
+            yield _finding(run, level, worst, what, slack, outline)
 
 
 def _threaded(run: Run, high: float, *, inside: bool) -> BaseGeometry:
@@ -130,14 +135,16 @@ def _inner(span: BaseGeometry, margin: float) -> BaseGeometry:
     return shapely.box(low + margin, margin, high - margin, top)
 
 
-def _finding(run: Run, level: Level, area: BaseGeometry, what: str, slack: float) -> Finding:
-    spot = shapely.point_on_surface(area)
-    z, r = float(spot.x), float(spot.y)
-    low_z, low_r, high_z, high_r = area.bounds
-    deep = slack + min(high_r - low_r, high_z - low_z)
+def _finding(
+    run: Run, level: Level, area: BaseGeometry, what: str, slack: float, outline: tuple[Point, ...]
+) -> Finding:
+    rim = shapely.get_coordinates(shapely.segmentize(area, RIM_STEP))
+    away = shapely.distance(shapely.points(rim), shapely.linestrings(outline))
+    deep, (z, r) = float(away.max()), (float(value) for value in rim[int(np.argmax(away))])
+    low_z, _, high_z, _ = area.bounds
     move = _nearest(run, z, r)
     message = f"The finished outline {what} between {z_word(run, low_z)} and {z_word(run, high_z)}, by about " \
-              f"{micro(deep)} at {x_word(run, r)}; {figure(slack, 3)} mm are allowed."
+              f"{thousandths(run, deep)} at {x_word(run, r)} {z_word(run, z)}; {thousandths(run, slack)} is allowed."
     figures = {"value": deep, "limit": slack, "unit": "mm", "at": Point(z, r)}
     remedy = "Look at this block's words and at nose-radius compensation."
     if move is None:

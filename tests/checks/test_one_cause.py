@@ -69,3 +69,10 @@ def test_a_drill_is_told_where_half_of_its_thrust_comes_from() -> None:
     (finding,) = of_check(run, "axis-thrust")
     assert "chisel edge" in finding.message
     assert "split point" in (finding.remedy or "")
+
+
+@pytest.mark.parametrize(("name", "deep"), [("gouge", 0.3), ("deep-taper", 0.3 * math.cos(math.pi / 4.0))])
+def test_a_gouge_is_as_deep_as_it_is_square_to_the_outline(name: str, deep: float) -> None:
+    """53.4 for 54 mm is 0.3 on the radius; a 45 degree taper 0.3 mm too late lies cos 45 of it away."""
+    (finding,) = of_check(audited(FOLDER / "finished-shape" / f"{name}.nc"), "finished-shape")
+    assert finding.value == pytest.approx(deep, abs=2e-3)
