@@ -12,11 +12,11 @@ from numpy.typing import NDArray
 
 from auditor.calibrate.log import LoadLog
 from auditor.calibrate.timeline import Timeline
-from auditor.checks._spindle import power_at
 from auditor.declared.model import Machine
 from auditor.errors import Fault, UsageError
 from auditor.findings import Run
 from auditor.interpret.moves import Kind
+from auditor.predict.spindle import power_at
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
