@@ -59,8 +59,8 @@ _CODE_RULES: dict[float, tuple[_Rule, ...]] = {
     71: (("C", lambda _, seen: not seen.has("PQURD"), 2), ("AB", lambda _, seen: seen.has("PQURD"), 2)),
     72: (("C", lambda _, seen: seen.has("PQ") and not seen.has("UWRD"), 1),),
     73: (("C", lambda _, seen: seen.has("U") and seen.has("R") and not seen.has("WPQ"), 1),),
-    77: (("B", lambda _, seen: seen.has("XZ") and not seen.has("PQR"), 2),),
-    78: (("B", lambda _, seen: seen.has("XZ") and not seen.has("PQ"), 2), ("C", lambda _, seen: seen.has("PQ"), 2)),
+    77: (("B", lambda _, seen: seen.has("X") and seen.has("Z") and not seen.has("PQR"), 2),),
+    78: (("B", lambda _, seen: seen.has("XZ") and not seen.has("PQKD"), 2), ("C", lambda _, seen: seen.has("PQKD"), 2)),
     79: (("B", lambda _, seen: seen.has("XZ"), 2),),
     90: (
         ("A", lambda _, seen: seen.has("XZUW") and seen.has("F") and not seen.moves, 1),

@@ -134,3 +134,24 @@ def test_a_file_that_cannot_be_opened(tmp_path: Path, name: str) -> None:
         read_program(tmp_path / name, Control())
 
     assert caught.value.faults[0].file == str(tmp_path / name)
+
+
+@pytest.mark.parametrize(
+    ("text", "lines"),
+    [
+        ("%\nO1\nG0 X1.\nM30%", [2, 3, 4]),
+        ("%\nO1\nN99 M30 % END\nG0 X5.\n%", [2, 3]),
+        ("O1\nM02%\nG0 X5.", [1, 2]),
+        ("%\nO1\nM98 P2\nM30%\n%\nO2\nM99 (50%) %\n", [2, 3, 4, 6, 7]),
+        ("%\nO1\nG0 X1. M30(50%)\n%\nG0 X5.", [2, 3]),
+    ],
+)
+def test_an_end_mark_behind_the_end_code(text: str, lines: list[int]) -> None:
+    program = parse_text(text)
+    assert [block.line for block in program.blocks] == lines
+    assert all(block.fault is None for block in program.blocks)
+    assert any("behind the end code" in note.message for note in program.notes) is ("(50%)\n" not in text)
+
+
+def test_an_end_mark_behind_another_code_is_a_fault() -> None:
+    assert parse_text("%\nO1\nG0 X5. %\nM30\n%").blocks[1].fault is not None

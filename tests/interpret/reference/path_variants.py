@@ -75,16 +75,45 @@ def compensated_finish(pen: Pen) -> None:
 
 
 def _compensated(pen: Pen, in_finish: bool) -> None:
-    inside = pen.rng.random() < 0.3
+    outside, towards = pen.rng.random() < 0.7, pen.rng.random() < 0.8
+    frame = Frame(False, 1 if towards else -1, 1 if outside else -1)
     pen.nose = pen.rng.choice([0.4, 0.8, 1.2])
-    pen.tip = 2 if inside else 3
-    nose = pen.mm(pen.nose)
-    side = 1 if inside else -1
+    pen.tip = pen.rng.choice([{(1, 1): 3, (1, -1): 2, (-1, 1): 4, (-1, -1): 1}[frame.sz, frame.sr]] * 3 + [8, 7, 6, 9])
+    side = 1 if frame.turns else -1
+    pieces = _bent(pen)
+    height = max(piece.r1 for piece in pieces)
+    base = pen.size(5, 12) if outside else height + pen.size(5, 10)
+    shape = placed(pieces, frame, pen.size(0, 2), base)
+    sign = 1 if outside else -1
+    xs, zs = 2 * (shape[0].r0 + sign * pen.size(3, 6)), shape[0].z0 + frame.sz * pen.size(3, 6)
+    steps = compensated(shape, side, pen.mm(pen.nose), pen.tip)
+    away = 2 * (shape[-1].r1 + sign * pen.size(3, 6)), shape[-1].z1
+    comp = pen.g("G42" if side < 0 else "G41")
+    pen.start(xs, zs)
+    if in_finish:
+        _finish_compensated(pen, shape, steps, comp, away, xs, zs)
+        return
+    if pen.rng.random() < 0.3:
+        pen.write(comp)
+        comp = ""
+    mode = pen.rng.choice(["G0", "G1", "G1"])
+    words = pen.axes(2 * shape[0].r0, shape[0].z0)
+    pen.write(comp, pen.g(mode), *words, pen.feed_word(0.1))
+    pen.note(steps[0] if mode == "G1" else steps[0]._replace(kind="R"))
+    _compensated_blocks(pen, shape, steps[1:])
+    words = pen.axes(away[0], None)
+    pen.write("G40", pen.g("G1"), *words)
+    pen.note(Step("F", away[0], away[1]))
+    pen.rapid(pen.size(120, 150), 50.0)
+
+
+def _bent(pen: Pen) -> list[Piece]:
+    """A contour with every sort of corner, from (0, 0) towards -z."""
     pieces: list[Piece] = [Piece("F", 0.0, 0.0, -pen.size(3, 6), pen.size(1, 5))]
     for _ in range(pen.rng.randint(2, 5)):
         z, r = pieces[-1].z1, pieces[-1].r1
         dz, dr = pen.size(4, 10), pen.size(3, 6)
-        kind = pen.rng.choice(["cylinder", "taper", "shoulder", "fillet", "round", "dip"])
+        kind = pen.rng.choice(["cylinder", "taper", "shoulder", "fillet", "round", "dip", "hollow", "ball"])
         if kind == "cylinder":
             pieces.append(Piece("F", z, r, z - dz, r))
         elif kind == "taper":
@@ -96,38 +125,22 @@ def _compensated(pen: Pen, in_finish: bool) -> None:
             z, r = pieces[-1].z1, pieces[-1].r1
             pieces.append(Piece("F", z, r, z, r + dr))
         elif kind == "round":
-            pieces += [Piece("F", z, r, z, r + dr), arc("CCW", z, r + dr, z - dr, r + 2 * dr, dr),
-                       Piece("F", z - dr, r + 2 * dr, z - dr - dz, r + 2 * dr)]  # fmt: skip
-        else:  # an acute corner to go round: out along a face, back down a falling flank
+            pieces += [
+                Piece("F", z, r, z, r + dr),
+                arc("CCW", z, r + dr, z - dr, r + 2 * dr, dr),
+                Piece("F", z - dr, r + 2 * dr, z - dr - dz, r + 2 * dr),
+            ]
+        elif kind == "dip":  # an acute corner to go round: out along a face, back down a falling flank
             pieces += [Piece("F", z, r, z, r + 2 * dr), Piece("F", z, r + 2 * dr, z - 2 * dr, r + dr * 1.5)]
             z, r = pieces[-1].z1, pieces[-1].r1
             pieces.append(Piece("F", z, r, z - dz, r))
+        else:  # an arc that meets its neighbours at an angle
+            turn = "CW" if kind == "hollow" else "CCW"
+            pieces += [Piece("F", z, r, z - dz, r), arc(turn, z - dz, r, z - 2 * dz, r + dr, round(dz * 1.5, 3))]
+            z, r = pieces[-1].z1, pieces[-1].r1
+            pieces.append(Piece("F", z, r, z - dz, r + (dr if kind == "hollow" else 0.0)))
     z, r = pieces[-1].z1, pieces[-1].r1
-    pieces.append(Piece("F", z, r, z, r + pen.size(3, 5)))
-    height = max(piece.r1 for piece in pieces)
-    base = pen.size(5, 12) if not inside else height + pen.size(5, 10)
-    frame = Frame(False, 1, -1 if inside else 1)
-    shape = placed([p for p in pieces if hypot(p.z1 - p.z0, p.r1 - p.r0) > 0], frame, pen.size(0, 2), base)
-    sign = -1 if inside else 1
-    xs, zs = 2 * (shape[0].r0 + sign * pen.size(3, 6)), shape[0].z0 + pen.size(3, 6)
-    steps = compensated(shape, side, nose, pen.tip)
-    away = 2 * (shape[-1].r1 + sign * pen.size(3, 6)), shape[-1].z1
-    comp = pen.g("G42" if side < 0 else "G41")
-    pen.start(xs, zs)
-    if in_finish:
-        _finish_compensated(pen, shape, steps, comp, away, xs, zs)
-        return
-    if pen.rng.random() < 0.3:
-        pen.write(comp)
-        comp = ""
-    words = pen.axes(2 * shape[0].r0, shape[0].z0)
-    pen.write(comp, pen.g("G1"), *words, pen.feed_word(0.1))
-    pen.note(steps[0])
-    _compensated_blocks(pen, shape, steps[1:])
-    words = pen.axes(away[0], None)
-    pen.write("G40", pen.g("G1"), *words)
-    pen.note(Step("F", away[0], away[1]))
-    pen.rapid(pen.size(120, 150), 50.0)
+    return [*pieces, Piece("F", z, r, z, r + pen.size(3, 5))]
 
 
 def _compensated_blocks(pen: Pen, pieces: Sequence[Piece], steps: list[Step]) -> None:
