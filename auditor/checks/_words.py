@@ -16,7 +16,8 @@ MOST_PLACES = 4
 def figure(value: float, decimals: int = 1) -> str:
     """A number without trailing zeros."""
     text = f"{value:.{decimals}f}"
-    return text.rstrip("0").rstrip(".") if "." in text else text
+    text = text.rstrip("0").rstrip(".") if "." in text else text
+    return "0" if text == "-0" else text
 
 
 def feed(value: float) -> str:
@@ -44,11 +45,6 @@ def angle(value: float) -> str:
     return f"{value:+.0f} deg"
 
 
-def micro(value: float) -> str:
-    """A small length in mm to the thousandth."""
-    return f"{value:.3f} mm"
-
-
 def x_word(run: Run, radius: float) -> str:
     """An X word as the program would write the place: a diameter, inch in inch programs."""
     diameter = 2.0 * radius if run.job.control.x_words == "diameter" else radius
@@ -69,6 +65,11 @@ def length(run: Run, value: float, decimals: int = 2) -> str:
     while decimals < MOST_PLACES and value != 0.0 and round(value, decimals) == 0.0:
         decimals += 1
     return f"{figure(value, decimals)} {unit}"
+
+
+def feed_rate(run: Run, value: float) -> str:
+    """A feed per revolution in the program's unit, without naming it."""
+    return f"{value / INCH:.4f}" if run.path.units == "in" else feed(value)
 
 
 def thousandths(run: Run, value: float) -> str:

@@ -23,7 +23,7 @@ from collections.abc import Iterator
 from auditor.checks._bending import bar_push_off, shank_give
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import THRUST_SCATTER, threshold
-from auditor.checks._words import figure, finding_at, micro
+from auditor.checks._words import figure, finding_at, thousandths
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.bars import overhang_limit
 
@@ -76,8 +76,9 @@ def _push_off(run: Run, cut: Cut) -> Finding | None:
     low, high = run.prediction.band(error, THRUST_SCATTER)
     level = Level.STOP if error > tolerance else Level.REVIEW
     limit = tolerance if high > tolerance else tolerance / 3.0
-    message = f"The bar springs away and the bore is {micro(error)} too small ({micro(low)} to {micro(high)}); " \
-              f"the tolerance is {micro(tolerance)}, and bending should take a third of it at most."
+    small, least, most, asked = (thousandths(run, part) for part in (error, low, high, tolerance))
+    message = f"The bar springs away and the bore is {small} too small ({least} to {most}); the tolerance is " \
+              f"{asked}, and bending should take a third of it at most."
     return finding_at(run, CHECK, level, cut.row_of_largest(run.prediction.loads.passive), message, value=error,
                       band=(low, high), limit=limit, unit="mm",
                       remedy="A shorter or stiffer bar, a smaller nose radius, or a spring pass.")

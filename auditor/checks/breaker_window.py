@@ -27,7 +27,7 @@ from numpy.typing import NDArray
 
 from auditor.checks._cuts import SPRING_PASS, Cut, along_axis, cuts
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import depth, feed, figure, finding_at
+from auditor.checks._words import feed_rate, figure, finding_at, length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "breaker-window"
@@ -88,12 +88,12 @@ def chip_length(run: Run, cut: Cut, outside: NDArray[np.bool_]) -> float:
 def _finding(
     run: Run, cut: Cut, name: str, value: float, limit: float, side: str, chip: float, row: int
 ) -> Finding:
-    words = feed if name == "Feed" else depth
+    words = feed_rate if name == "Feed" else length
     fate = "the chip comes off as a string" if side == "under" else "the chip is crushed against the breaker"
     bound = "from" if side == "under" else "to"
-    message = f"{name} {words(value)} is {side} the chip-breaker's window ({bound} {words(limit)}): {fate}, about " \
-              f"{figure(chip)} m of it. {origin(run, LIMITS)}"
+    message = f"{name} {words(run, value)} is {side} the chip-breaker's window ({bound} {words(run, limit)}): " \
+              f"{fate}, about {figure(chip)} m of it. {origin(run, LIMITS)}"
     side_word = "at least" if side == "under" else "at most"
     return finding_at(run, CHECK, Level.REVIEW, row, message, value=value, limit=limit,
                       unit="mm/rev" if name == "Feed" else "mm", words=("F",) if name == "Feed" else (),
-                      remedy=f"{name} {side_word} {words(limit)}, or an insert for this cut.")
+                      remedy=f"{name} {side_word} {words(run, limit)}, or an insert for this cut.")

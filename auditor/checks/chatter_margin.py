@@ -23,7 +23,7 @@ from collections.abc import Iterator
 from auditor.checks._bending import shank_give
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import lasting, origin, threshold
-from auditor.checks._words import figure, finding_at
+from auditor.checks._words import finding_at, length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.chatter import dynamic_coefficient, limiting_width
 
@@ -54,7 +54,7 @@ def _judge_cut(run: Run, cut: Cut) -> tuple[float, Finding] | None:
     wide = lasting(loads, loads.length, cut.move.index)
     if wide <= quiet:
         return None
-    message = f"The bar may sing: {figure(wide, 2)} mm of edge are in the cut, up to {figure(quiet, 2)} mm surely " \
+    message = f"The bar may sing: {length(run, wide)} of edge are in the cut, up to {length(run, quiet)} surely " \
               f"run quietly. {origin(run, LIMITS)}"
     return wide / quiet, finding_at(run, CHECK, Level.NOTE, row, message, value=wide, limit=quiet, unit="mm",
                                     remedy="A shorter or thicker bar, less depth, or another speed.")

@@ -26,7 +26,7 @@ from collections.abc import Iterator
 
 from auditor.checks._cuts import SPRING_PASS, Cut, cuts, roughs, wipes_outwards
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import figure, finding_at
+from auditor.checks._words import figure, finding_at, length
 from auditor.declared.model import ToolKind
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
@@ -81,7 +81,7 @@ def _on_land(run: Run, cut: Cut) -> Finding | None:
         return None
     assumed = any(item.about == f"tools.{tool.number}.land_width" for item in run.job.assumptions)
     level = Level.REVIEW if tool.breaker_declared and not assumed else Level.NOTE
-    message = f"The chip never leaves the land: the thickest is {figure(thickest, 3)} mm, the land " \
+    message = f"The chip never leaves the land: the thickest is {length(run, thickest, 3)}, the land " \
               f"{figure(tool.land_width, 2)} mm wide, so no cut of {tool.name} reaches the chip-breaker (model)."
     return finding_at(run, CHECK, level, cut.row_of_largest(loads.chip_max), message, value=thickest, limit=least,
-                      unit="mm", words=("F",), remedy=f"A chip of at least {figure(least, 3)} mm, or a narrower land.")
+                      unit="mm", words=("F",), remedy=f"A chip of {length(run, least, 3)} or more, or a narrower land.")

@@ -27,7 +27,7 @@ from collections.abc import Iterator
 import numpy as np
 
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import micro, percent
+from auditor.checks._words import percent, thousandths
 from auditor.declared.model import Tool
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Move
@@ -82,8 +82,9 @@ def _judge_tool(run: Run, tool: Tool, used: float, last: Move) -> Iterator[Findi
                           value=total, limit=most, unit="", remedy=remedy)
     elif tolerance is not None and drift > tolerance:
         yield run.finding(CHECK, Level.REVIEW, last, f"The part outgrows its tolerance: {story} The diameter drifts by "
-                          f"{micro(drift)} as the edge wears, the tolerance is {micro(tolerance)}.", value=drift,
-                          limit=tolerance, unit="mm", remedy="Correct the offset during the run.")
+                          f"{thousandths(run, drift)} as the edge wears, the tolerance is "
+                          f"{thousandths(run, tolerance)}.", value=drift, limit=tolerance, unit="mm",
+                          remedy="Correct the offset during the run.")
     elif total > 1.0:
         yield run.finding(CHECK, Level.NOTE, last, story, value=total, limit=1.0, unit="", remedy=remedy)
 

@@ -23,7 +23,7 @@ from collections.abc import Iterator
 from auditor.checks._cuts import Cut, cuts, wipes_outwards
 from auditor.checks._judging import origin, threshold
 from auditor.checks._remedy import feed_word
-from auditor.checks._words import feed, figure, finding_at
+from auditor.checks._words import feed_rate, figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind
 
@@ -61,8 +61,8 @@ def _judge_cut(run: Run, cut: Cut) -> Finding | None:
     level, limit = (Level.STOP, most) if used > most * (1.0 + 1e-9) else (Level.REVIEW, general)
     fate = "the corner breaks off" if level is Level.STOP else "the surface turns into a thread, the corner carries " \
         "the whole chip"
-    message = f"Feed {feed(used)} is {figure(used / radius, 2)} of the {figure(radius, 2)} mm nose radius: {fate}. " \
-              f"{origin(run, LIMITS[1:] if level is Level.STOP else LIMITS[:1])}"
+    message = f"Feed {feed_rate(run, used)} is {figure(used / radius, 2)} of the {figure(radius, 2)} mm nose radius: " \
+              f"{fate}. {origin(run, LIMITS[1:] if level is Level.STOP else LIMITS[:1])}"
     remedy = f"At most {feed_word(run, cut.move, general)} with this insert" + (
         f"; {feed_word(run, cut.move, most)} is the very most." if level is Level.STOP else ".")
     return finding_at(run, CHECK, level, cut.row_of_largest(loads.depth), message, value=used, limit=limit,

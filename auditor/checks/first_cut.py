@@ -23,7 +23,7 @@ from collections.abc import Iterator
 
 from auditor.checks._cuts import Cut, cuts, raw_radius
 from auditor.checks._judging import lasting, origin, threshold
-from auditor.checks._words import figure, finding_at
+from auditor.checks._words import finding_at, length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "first-cut"
@@ -60,13 +60,14 @@ def _judge_cut(run: Run, cut: Cut) -> Finding | None:
     row = cut.row_of_largest(loads.depth)
     least = threshold(run, LIMITS[0]) if work.skin in SKINS else 0.0
     if deep - half < least - 1e-9:
-        skin = f"{work.skin} skin" if work.skin in SKINS else "air"
-        message = f"On the smallest raw piece the first cut is {figure(deep - half, 2)} mm deep (nominal " \
-                  f"{figure(deep, 2)}, spread {figure(work.diameter_spread, 2)} on the diameter) and runs in {skin}."
+        takes = f"is {length(run, deep - half)} deep" if deep - half > 0.005 else "takes nothing"
+        skin = f"the {work.skin} skin" if work.skin in SKINS else "air"
+        message = f"On the smallest raw piece the first cut {takes} (nominal {length(run, deep)}, spread " \
+                  f"{length(run, work.diameter_spread)} on the diameter) and runs in {skin}."
         if least:
             message += f" {origin(run, LIMITS)}"
         return finding_at(run, CHECK, Level.REVIEW, row, message, value=deep - half, limit=least, unit="mm",
-                          remedy=f"A first cut of {figure(least + half, 2)} mm or more.")
+                          remedy=f"A first cut of {length(run, least + half)} or more.")
     return _largest_raw(run, cut, row, deep, half)
 
 
@@ -78,7 +79,7 @@ def _largest_raw(run: Run, cut: Cut, row: int, deep: float, half: float) -> Find
     usable, most = USABLE * edge, engaged * (deep + half) / deep
     if not engaged <= usable < most:
         return None
-    message = f"On the largest raw piece the first cut is {figure(deep + half, 2)} mm deep and uses " \
-              f"{figure(most)} mm of the edge; {figure(usable)} mm are usable (common practice: two thirds)."
+    message = f"On the largest raw piece the first cut is {length(run, deep + half)} deep and uses " \
+              f"{length(run, most, 1)} of the edge; {length(run, usable, 1)} are usable (common practice: two thirds)."
     return finding_at(run, CHECK, Level.REVIEW, row, message, value=most, limit=usable, unit="mm",
                       remedy="Less depth in the first cut.")

@@ -25,7 +25,7 @@ from collections.abc import Iterator
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import lasting, origin, threshold
 from auditor.checks._remedy import feed_word
-from auditor.checks._words import feed, figure, finding_at, length
+from auditor.checks._words import feed, feed_rate, figure, finding_at, length
 from auditor.declared.model import ToolKind
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
@@ -87,10 +87,11 @@ def _too_deep(run: Run, cut: Cut, width: float, travel: float) -> Finding | None
     limit = threshold(run, LIMITS[0]) * width
     if deep <= limit:
         return None
-    message = f"The {figure(width)} mm blade goes {figure(deep)} mm deep, {figure(deep / width)} widths: it bends " \
-              f"aside and jams. {origin(run, LIMITS[:1])}"
+    message = f"The {figure(width)} mm blade goes {length(run, deep, 1)} deep, {figure(deep / width)} widths: it " \
+              f"bends aside and jams. {origin(run, LIMITS[:1])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=deep / width,
-                      limit=threshold(run, LIMITS[0]), unit="", remedy=f"A blade of {figure(deep / 10.0)} mm or more.")
+                      limit=threshold(run, LIMITS[0]), unit="",
+                      remedy=f"A blade of {length(run, deep / threshold(run, LIMITS[0]), 1)} or more.")
 
 
 def _surface(run: Run, cut: Cut) -> float:
@@ -112,7 +113,7 @@ def _side_stroke(run: Run, cut: Cut, width: float) -> Finding | None:
     deep, limit = lasting(loads, loads.depth, cut.move.index), threshold(run, LIMITS[1]) * width
     if deep <= limit * (1.0 + 1e-6):
         return None
-    message = f"The side stroke is {figure(deep, 2)} mm deep with a {figure(width)} mm insert: it is torn from its " \
+    message = f"The side stroke is {length(run, deep)} deep with a {figure(width)} mm insert: it is torn from its " \
               f"seat. {origin(run, LIMITS[1:2])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=deep, limit=limit,
                       unit="mm", remedy=f"Side strokes of {length(run, limit)} at most.")
@@ -125,7 +126,7 @@ def _at_centre(run: Run, cut: Cut) -> Finding | None:
     used = cut.largest(loads.feed)
     if not used > BRISK:
         return None
-    message = f"The blade parts to the centre at full feed {feed(used)}: the speed falls to nothing there and the " \
-              "corner breaks (common practice: a quarter to a half for the last 3 mm of diameter)."
+    message = f"The blade parts to the centre at full feed {feed_rate(run, used)}: the speed falls to nothing there " \
+              "and the corner breaks (common practice: a quarter to a half for the last 3 mm of diameter)."
     return finding_at(run, CHECK, Level.NOTE, cut.row_of_largest(loads.depth), message, words=("F",),
                       remedy=f"From X3 on {feed_word(run, cut.move, max(0.5 * used, 0.03))}.")

@@ -34,7 +34,7 @@ from numpy.typing import NDArray
 
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import figure, finding_at
+from auditor.checks._words import figure, finding_at, length, x_word
 from auditor.declared.iso_inserts import decode_insert
 from auditor.declared.model import Tool, ToolKind
 from auditor.errors import TurnauditError
@@ -174,8 +174,9 @@ def _judge_height(run: Run, cut: Cut) -> Finding | None:
     if turn <= most:
         return None
     side = "above" if height > 0.0 else "below"
-    message = f"The edge stands {figure(abs(height), 2)} mm {side} centre: at {figure(float(diameter.min()))} mm " \
-              f"that turns rake and clearance by {figure(turn)} deg. {origin(run, LIMITS[1:])}"
+    message = f"The edge stands {figure(abs(height), 2)} mm {side} centre: " \
+              f"at {x_word(run, 0.5 * float(diameter.min()))} that turns rake and clearance by {figure(turn)} deg. " \
+              f"{origin(run, LIMITS[1:])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=turn, limit=most,
                       unit="deg", remedy="Set the edge on centre height.")
 
@@ -193,8 +194,8 @@ def _judge_heel(run: Run, cut: Cut) -> Finding | None:
     needs = float(bore_heel_clearance(radius, thick))
     if has >= needs:
         return None
-    message = f"The heel of the {figure(thick, 2)} mm thick insert touches the bore of {figure(2 * radius)} mm: it " \
-              f"needs {figure(needs)} deg of clearance and has {figure(has)} (geometry)."
+    message = f"The heel of the {figure(thick, 2)} mm thick insert touches the bore of {length(run, 2 * radius, 1)}: " \
+              f"it needs {figure(needs)} deg of clearance and has {figure(has)} (geometry)."
     level = Level.STOP if tool.pocket_known else Level.NOTE if tool.insert_clearance else Level.REVIEW
     if not tool.pocket_known:
         message += " The tilt of the bar's pocket is not declared; small bars tilt to buy this clearance."

@@ -23,7 +23,7 @@ from collections.abc import Iterator
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._edges import engaged_lengths
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import figure, finding_at
+from auditor.checks._words import figure, finding_at, length
 from auditor.declared.model import ToolKind
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.simulate.samples import Part
@@ -46,7 +46,7 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
 def _body(run: Run, cut: Cut, touching: float) -> Finding | None:
     if cut.tool.kind not in ("turning", "boring") or cut.tool.shape == "R" or touching <= TOUCH:
         return None
-    message = f"The body of the insert, behind its edges, meets the metal over {figure(touching)} mm."
+    message = f"The body of the insert, behind its edges, meets the metal over {length(run, touching, 1)}."
     return finding_at(run, CHECK, Level.STOP, cut.row_of_largest(run.prediction.loads.depth), message, value=touching,
                       limit=TOUCH, unit="mm", remedy="A slimmer insert, or come in from the other side.")
 
@@ -58,10 +58,10 @@ def _too_short(run: Run, cut: Cut) -> Finding | None:
     if tool.overhang is None or deep is None or deep <= tool.overhang:
         return None
     row = cut.row_of_largest(-loads.z) if tool.kind in ("boring", "drilling") else cut.row_of_largest(-loads.r)
-    message = f"The tool goes {figure(deep)} mm in and stands out only {figure(tool.overhang)} mm (as declared): " \
+    message = f"The tool goes {length(run, deep, 1)} in and stands out only {figure(tool.overhang)} mm (declared): " \
               "its holder meets the work."
     return finding_at(run, CHECK, Level.STOP, row, message, value=deep, limit=tool.overhang, unit="mm",
-                      remedy=f"An overhang of more than {figure(deep)} mm.")
+                      remedy=f"An overhang of more than {length(run, deep, 1)}.")
 
 
 def _depth_inside(run: Run, cut: Cut) -> float | None:
@@ -89,7 +89,7 @@ def _bar_in_bore(run: Run, cut: Cut) -> Finding | None:
     share, most = tool.bar_diameter / bore if bore > 0.0 else 0.0, threshold(run, LIMITS[0])
     if share <= most:
         return None
-    bar, hole = f"The {figure(tool.bar_diameter)} mm bar", f"a bore of {figure(bore)} mm"
+    bar, hole = f"The {figure(tool.bar_diameter)} mm bar", f"a bore of {length(run, bore, 1)}"
     if share >= 1.0:
         return finding_at(run, CHECK, Level.STOP, row, f"{bar} does not go into {hole}.", value=share, limit=1.0,
                           unit="", remedy="A slimmer bar.")

@@ -28,7 +28,7 @@ from shapely.geometry.base import BaseGeometry
 
 from auditor.checks._judging import origin, threshold
 from auditor.checks._solids import Floats, entered, jaw_zone, outlines, swept_area
-from auditor.checks._words import figure, tool_name, z_word
+from auditor.checks._words import length, tool_name, z_word
 from auditor.declared.model import Tool
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind, Move
@@ -64,18 +64,19 @@ def _outline(run: Run, move: Move, tool: Tool, shape: Floats, zone: BaseGeometry
         deepest = face - float(shapely.bounds(inside)[0])
         how = "at rapid" if move.kind is Kind.RAPID else "in the cut"
         return run.finding(
-            CHECK, Level.STOP, move, f"{tool_name(run, tool.number)} runs into the jaws {how}: {figure(deepest)} mm "
-            f"behind the jaw face at {z_word(run, face)}.", value=deepest, limit=0.0, unit="mm", words=("Z",),
-            remedy=f"A stick-out {figure(deepest + threshold(run, LIMITS[0]))} mm longer, or a shorter cut.",
+            CHECK, Level.STOP, move, f"{tool_name(run, tool.number)} runs into the jaws {how}: "
+            f"{length(run, deepest, 1)} behind the jaw face at {z_word(run, face)}.",
+            value=deepest, limit=0.0, unit="mm", words=("Z",),
+            remedy=f"A stick-out {length(run, deepest + threshold(run, LIMITS[0]), 1)} longer, or a shorter cut.",
         )
     area, least = swept_area(shape, move), threshold(run, LIMITS[0])
     gap = float(shapely.distance(area, zone)) if area is not None else least
     if not 0.0 < gap < least or move.kind is Kind.RAPID:
         return None
     return run.finding(
-        CHECK, Level.REVIEW, move, f"{tool_name(run, tool.number)} comes within {figure(gap, 2)} mm of the jaws. "
+        CHECK, Level.REVIEW, move, f"{tool_name(run, tool.number)} comes within {length(run, gap)} of the jaws. "
         f"{origin(run, LIMITS)}", value=gap, limit=least, unit="mm", words=("Z",),
-        remedy=f"A stick-out {figure(least - gap + 0.5)} mm longer.",
+        remedy=f"A stick-out {length(run, least - gap + 0.5, 1)} longer.",
     )
 
 
@@ -90,8 +91,8 @@ def _drill(run: Run, move: Move, tool: Tool, face: float) -> Finding | None:
         return None
     point = 0.5 * tool.diameter / math.tan(math.radians(0.5 * tool.point_angle))
     where = "into the jaws that hold it from inside" if holding.grip_inside else "inside the chuck"
-    message = f"The drill breaks through {figure(beyond)} mm behind the end of the work (its point is " \
-              f"{figure(point)} mm long), {where}."
+    message = f"The drill breaks through {length(run, beyond, 1)} behind the end of the work (its point is " \
+              f"{length(run, point, 1)} long), {where}."
     level = Level.STOP if holding.grip_inside else Level.REVIEW
     return run.finding(CHECK, level, move, message, value=beyond, limit=0.0, unit="mm", words=("Z",),
                        remedy="Make sure that nothing stands there, or end the hole earlier.")

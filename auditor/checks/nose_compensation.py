@@ -27,7 +27,7 @@ from collections.abc import Iterator
 from auditor.checks._cuts import Cut, cuts, roughs
 from auditor.checks._judging import origin, threshold
 from auditor.checks._remarks import findings_of
-from auditor.checks._words import figure, finding_at, micro
+from auditor.checks._words import figure, finding_at, thousandths
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind
 
@@ -79,8 +79,8 @@ def _uncompensated(run: Run, cut: Cut) -> Finding | None:
     grave = tolerance is not None and 2.0 * error > tolerance and long and not run.job.workpiece.finished
     shape = "arc" if cut.move.kind is Kind.ARC else "slope"
     message = f"This {shape} is finished without nose-radius compensation: the " \
-              f"{figure(cut.tool.nose_radius, 2)} mm corner leaves up to {micro(error)} on it, unless the path is " \
-              f"shifted already. {origin(run, LIMITS)}"
+              f"{figure(cut.tool.nose_radius, 2)} mm corner leaves up to {thousandths(run, error)} on it, unless the " \
+              f"path is shifted already. {origin(run, LIMITS)}"
     return finding_at(
         run, CHECK, Level.REVIEW if grave else Level.NOTE, cut.row_of_largest(run.prediction.loads.depth), message,
         value=2.0 * error, limit=tolerance, unit="mm",

@@ -26,7 +26,7 @@ import numpy as np
 import shapely
 
 from auditor.checks._cuts import Cut, cuts
-from auditor.checks._words import figure, finding_at, micro
+from auditor.checks._words import figure, finding_at, length, thousandths
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.bending import ring_lobing
 
@@ -53,8 +53,9 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
     if last is None or holding.jaws != 3 or lobes <= 0.5 * tolerance:
         return
     level, limit = (Level.STOP, tolerance) if lobes > tolerance else (Level.REVIEW, 0.5 * tolerance)
-    message = f"The jaws press the ring (wall {figure(outer - inner, 2)} mm) out of round by {micro(lobes)} on the " \
-              f"diameter; it springs back when they open. The tolerance is {micro(tolerance)}."
+    message = f"The jaws press the ring (wall {length(run, outer - inner)}) out of round by " \
+              f"{thousandths(run, lobes)} on the diameter; it springs back when they open. " \
+              f"The tolerance is {thousandths(run, tolerance)}."
     remedy = f"At most {figure(holding.grip_force * 0.5 * tolerance / lobes / 1000)} kN of grip, pie jaws or a mandrel."
     row = last.row_of_largest(run.prediction.loads.depth)
     yield finding_at(run, CHECK, level, row, message, value=lobes, limit=limit, unit="mm", remedy=remedy)

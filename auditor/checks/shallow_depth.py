@@ -25,7 +25,7 @@ from collections.abc import Iterator
 
 from auditor.checks._cuts import SPRING_PASS, Cut, cuts, diameter_errors, roughs, tolerance_third, wipes_outwards
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import depth, figure, finding_at, force, micro
+from auditor.checks._words import figure, finding_at, force, length, thousandths
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "shallow-depth"
@@ -56,7 +56,7 @@ def _story(run: Run, cut: Cut, deep: float) -> str:
     loads = run.prediction.loads
     row = cut.row_of_largest(loads.depth)
     passive, along = float(loads.passive[row]), float(loads.feed_force[row])
-    message = f"Depth {depth(deep)} is less than the nose radius {figure(cut.tool.nose_radius, 2)}: "
+    message = f"Depth {length(run, deep)} is less than the nose radius {figure(cut.tool.nose_radius, 2)} mm: "
     if passive > along:
         message += f"the tool pushes the work aside with {force(passive)} (passive force) against {force(along)} " \
                    "along the feed."
@@ -72,10 +72,10 @@ def _grave(run: Run, cut: Cut, deep: float, error: float) -> Finding | None:
     if run.job.workpiece.material.work_hardening and deep < skin:
         return finding_at(run, CHECK, Level.REVIEW, row, f"{_story(run, cut, deep)} It runs in the skin "
                           f"the last pass hardened. {origin(run, LIMITS)}", value=deep, limit=skin, unit="mm",
-                          remedy=f"At least {depth(skin)} mm deep.")
+                          remedy=f"At least {length(run, skin)} deep.")
     if third is not None and run.simulation.final_surface[cut.move.index] and error > third:
         return finding_at(run, CHECK, Level.REVIEW, row, f"{_story(run, cut, deep)} That bends the work so "
-                          f"that the diameter comes out {micro(error)} too large, more than a third of the "
+                          f"that the diameter comes out {thousandths(run, error)} too large, more than a third of the "
                           "tolerance.", value=error, limit=third, unit="mm",
                           remedy="A smaller nose radius or a freer-cutting edge.")
     return None

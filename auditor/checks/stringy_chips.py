@@ -24,7 +24,7 @@ import numpy as np
 
 from auditor.checks._cuts import SPRING_PASS, Cut, along_axis, cuts
 from auditor.checks._judging import lasting, threshold
-from auditor.checks._words import feed, figure, finding_at
+from auditor.checks._words import feed_rate, figure, finding_at
 from auditor.checks.breaker_window import LIMITS as WINDOW_LIMITS
 from auditor.checks.breaker_window import chip_length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -55,7 +55,8 @@ def _why(run: Run, cut: Cut) -> str | None:
     if not tool.breaker_declared and tool.face_rake <= 0.0:
         return f"{tool.name} has no chip-breaker"
     if tool.breaker_feed is not None and used < tool.breaker_feed[0]:
-        return f"feed {feed(used)} is under the chip-breaker's window from {feed(tool.breaker_feed[0])}"
+        return f"feed {feed_rate(run, used)} is under the chip-breaker's window from " \
+               f"{feed_rate(run, tool.breaker_feed[0])}"
     if used > 0.0 and deep / used > threshold(run, LIMITS[0]):
         return f"the chip is {figure(deep / used)} times as wide as thick, {figure(threshold(run, LIMITS[0]))} is " \
                f"the most ({LIMITS[0].provenance})"

@@ -29,7 +29,7 @@ from numpy.typing import NDArray
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._edges import engaged_lengths
 from auditor.checks._judging import lasting, origin, threshold
-from auditor.checks._words import depth, figure, finding_at
+from auditor.checks._words import finding_at, length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.simulate.samples import Part
 
@@ -60,7 +60,7 @@ def _wiping(run: Run, cut: Cut, wiping: float) -> Finding | None:
     if wiping <= limit or lasting(loads, loads.depth, cut.move.index, over=WEDGE) <= WEDGE:
         return None
     row = cut.row_of_largest(loads.length)
-    message = f"The edge wipes along the work: {figure(wiping)} mm of it lean less than {LEAN:.0f} deg to the " \
+    message = f"The edge wipes along the work: {length(run, wiping, 1)} of it lean less than {LEAN:.0f} deg to the " \
               f"motion. {origin(run, LIMITS[:1])}"
     return finding_at(run, CHECK, Level.REVIEW, row, message, value=wiping, limit=limit, unit="mm",
                       remedy="Face inwards instead, or leave less on the shoulder.")
@@ -77,8 +77,8 @@ def _jump(run: Run, cut: Cut) -> Finding | None:
     if deepest <= threshold(run, LIMITS[1]) * usual or used <= HALF_EDGE * edge:
         return None
     row = cut.row_of_largest(loads.depth)
-    message = f"The depth jumps from {depth(usual)} to {depth(deepest)} mm at full feed, with {figure(used)} mm of " \
-              f"the edge in the cut. {origin(run, LIMITS[1:])}"
+    message = f"The depth jumps from {length(run, usual)} to {length(run, deepest)} at full feed, with " \
+              f"{length(run, used, 1)} of the edge in the cut. {origin(run, LIMITS[1:])}"
     return finding_at(run, CHECK, Level.NOTE, row, message, value=deepest, limit=threshold(run, LIMITS[1]) * usual,
                       unit="mm", remedy="Half the feed over the jump, or take the shoulder apart.")
 

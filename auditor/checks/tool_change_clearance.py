@@ -24,7 +24,7 @@ from collections.abc import Iterator
 from itertools import pairwise
 
 from auditor.checks._judging import threshold
-from auditor.checks._words import figure, x_word, z_word
+from auditor.checks._words import length, x_word, z_word
 from auditor.declared.model import Point
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Move
@@ -58,10 +58,10 @@ def _judge_place(run: Run, before: Move, behind: Move, at: Point) -> Iterator[Fi
     lines = [line for number, line in run.path.tools_called if number == behind.tool and line <= behind.line]
     line = lines[-1] if lines else behind.line
     blocks = {block.line: block.label for block in run.text.blocks}
-    where = "inside the part's envelope" if inside else f"{figure(max(gap_z, gap_r))} mm from the part"
+    where = "inside the part's envelope" if inside else f"{length(run, max(gap_z, gap_r), 1)} from the part"
     place = f"{x_word(run, at.r)} {z_word(run, at.z)}"
-    message = f"The turret indexes to T{behind.tool} with the tool at {place}, {where}; {figure(wanted)} mm aside or " \
-              f"{figure(wanted_z)} mm in front are wanted."
+    message = f"The turret indexes to T{behind.tool} with the tool at {place}, {where}; {length(run, wanted, 1)} " \
+              f"aside or {length(run, wanted_z, 1)} in front are wanted."
     yield Finding(
         CHECK, Level.STOP if inside else Level.REVIEW, line, blocks.get(line), behind.tool, message, at=at,
         value=max(gap_z, gap_r), limit=wanted, unit="mm", words=("T",), move=behind.index,

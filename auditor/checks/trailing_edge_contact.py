@@ -30,7 +30,7 @@ import numpy as np
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._edges import engaged_lengths, path_angle
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import figure, finding_at, x_word
+from auditor.checks._words import figure, finding_at, length, x_word
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.copying import minor_edge_angle, steepest_in_copy, steepest_out_copy
 from auditor.simulate.samples import Part
@@ -68,7 +68,7 @@ def _past_centre(run: Run, cut: Cut) -> Finding | None:
     if end.r >= -allowed - 1e-9 or not len(engaged) or engaged.min() > allowed:  # a bored face ends before the centre
         return None
     level = Level.STOP if -end.r > allowed + 1.0 else Level.REVIEW
-    message = f"The tool runs {figure(-end.r, 2)} mm past the centre, to {x_word(run, end.r)}: there the work turns " \
+    message = f"The tool runs {length(run, -end.r)} past the centre, to {x_word(run, end.r)}: there the work turns " \
               f"backwards under the edge. {origin(run, LIMITS)}"
     return run.finding(CHECK, level, cut.move, message, value=-end.r, limit=allowed, unit="mm", words=("X",),
                        remedy=f"End at {x_word(run, -max(cut.tool.nose_radius, 0.2))}.")

@@ -76,3 +76,15 @@ def test_a_gouge_is_as_deep_as_it_is_square_to_the_outline(name: str, deep: floa
     """53.4 for 54 mm is 0.3 on the radius; a 45 degree taper 0.3 mm too late lies cos 45 of it away."""
     (finding,) = of_check(audited(FOLDER / "finished-shape" / f"{name}.nc"), "finished-shape")
     assert finding.value == pytest.approx(deep, abs=2e-3)
+
+
+@pytest.mark.parametrize(("check", "name"), [("rapid-in-stock", "inch-graze"), ("first-cut", "inch-forging")])
+def test_inch_programs_are_answered_in_inches(check: str, name: str) -> None:
+    run = audited(FOLDER / check / f"{name}.nc")
+    told = [f"{finding.message} {finding.remedy}" for finding in of_check(run, check)]
+    assert told
+    for text in told:
+        assert " in" in text
+        assert " mm deep" not in text
+        assert " 0 in" not in text
+        assert "-0 in" not in text
