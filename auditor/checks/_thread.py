@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 from dataclasses import dataclass
 
@@ -100,8 +101,18 @@ def _surface(run: Run, group: list[Move]) -> float | None:
 
 
 def _run_in(run: Run, group: list[Move]) -> float | None:
-    """Way along the thread before the first pass meets metal."""
-    loads = run.prediction.loads
-    own = rows_of(loads, group[0].index)
-    engaged = loads.position[own][loads.depth[own] > 0.0]
-    return float(engaged.min()) if len(engaged) else None
+    """Shortest way, along the thread from where the first pass begins, to the metal that stood there before it."""
+    stock, first = run.simulation.stock_before.get(group[0].index), group[0].start
+    if stock is None or first is None:
+        return None
+    ways, here = [], None
+    for move in group:
+        if move.start and move.end and move.start != here:  # not a stroke joined to the one before
+            metal = shapely.intersection(shapely.linestrings([move.start, move.end]), stock)
+            if not shapely.is_empty(metal):
+                length = math.dist(move.start, move.end)
+                ahead = [(end - begin) / length for begin, end in zip(move.start, move.end, strict=True)]
+                shift = sum(unit * (own - begin) for unit, own, begin in zip(ahead, move.start, first, strict=True))
+                ways.append(float(shapely.distance(metal, shapely.points(move.start))) + shift)
+        here = move.end
+    return min(ways, default=None)

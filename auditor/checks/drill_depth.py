@@ -10,8 +10,8 @@ Why
 
 Formula and source
     Common practice: high-speed steel 4 diameters in one go, carbide 8; feed up to 0.03 diameters (0.3 mm for high-speed
-    steel); on the axis within 0.05 mm. Review: over these. Stop: constant surface speed without a speed limit;
-    with one, a review.
+    steel); on the axis within 0.05 mm. Review: over these. Constant surface speed is a stop where the limit that the
+    spindle goes to is no speed for this drill, else a review.
 
 Remedy
     A peck cycle (first 3 diameters, then 1), G97 with a speed for the drill, X0.
@@ -19,6 +19,7 @@ Remedy
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 
 import numpy as np
@@ -66,9 +67,13 @@ def _first_metal(run: Run, cut: Cut) -> float:
 def _surface_speed(run: Run, cut: Cut) -> Finding | None:
     if cut.move.spindle.mode != "surface":
         return None
-    level = Level.STOP if cut.move.spindle.clamp is None else Level.REVIEW
-    message = "The drill runs under constant surface speed: at X0 the spindle goes to its limit."
-    return run.finding(CHECK, level, cut.move, message, words=("S",), remedy="G97 with a speed before the drill.")
+    rim = math.pi * (cut.tool.diameter or 0.0) * float(run.prediction.moves.rpm_high[cut.move.index]) / 1000.0
+    range_ = cut.tool.speed
+    suits = cut.move.spindle.clamp is not None and range_ is not None and range_[0] <= rim <= range_[1]
+    message = f"The drill runs under constant surface speed: at X0 the spindle goes to its limit, {rim:.0f} m/min at " \
+              "the rim."
+    return run.finding(CHECK, Level.REVIEW if suits else Level.STOP, cut.move, message, words=("S",),
+                       remedy="G97 with a speed before the drill.")
 
 
 def _too_deep(run: Run, cut: Cut, deep: float, diameter: float) -> Finding | None:

@@ -10,8 +10,8 @@ Why
 
 Formula and source
     Common practice: no single-point cut but a thread advances more than 2 mm a turn, and none creeps below 5 mm a
-    minute. Stop: no feed, feed zero, or more than the largest feed a turn. Review: the mode changed without a new
-    F, or the feed is slower than the least.
+    minute. Stop: no feed, feed zero, more than the largest feed a turn, or less than the least a minute and a turn.
+    Review: the mode changed without a new F, or the feed is slower than the least a minute alone.
 
 Remedy
     An F word in the block, in the mode that is in force (a turn: G99 in system A, G95 in B and C; a minute: G98
@@ -35,6 +35,7 @@ CHECK = "feed-missing"
 LIMITS = (
     Limit("largest_feed", 2.0, "mm", "common practice", "largest feed a turn"),
     Limit("least_feed_per_minute", 5.0, "mm", "common practice", "least feed a minute"),
+    Limit("least_feed", 0.005, "mm", "common practice", "least feed a turn"),
 )
 LEVELS = {
     "feed-missing": Level.STOP,
@@ -65,7 +66,7 @@ def _unfed(run: Run, move: Move) -> Finding:
 
 
 def _implausible(run: Run, move: Move) -> Finding | None:
-    largest, least = (threshold(run, limit) for limit in LIMITS)
+    largest, least, rubbing = (threshold(run, limit) for limit in LIMITS)
     assert move.feed is not None
     rows = run.prediction.loads.feed[rows_of(run.prediction.loads, move.index)]
     per_rev = float(np.nanmax(rows)) if np.isfinite(rows).any() else math.nan
@@ -75,7 +76,8 @@ def _implausible(run: Run, move: Move) -> Finding | None:
         return run.finding(CHECK, Level.STOP, move, message, value=per_rev, limit=largest, unit="mm/rev", words=("F",),
                            remedy="Check the feed mode: the number may be meant in mm a minute.")
     if move.feed.mode == "min" and move.feed.value < least:
-        message = f"The tool creeps at {figure(move.feed.value, 3)} mm a minute and rubs. {origin(run, LIMITS[1:])}"
-        return run.finding(CHECK, Level.REVIEW, move, message, value=move.feed.value, limit=least, unit="mm/min",
+        message = f"The tool creeps at {figure(move.feed.value, 3)} mm a minute and rubs. {origin(run, LIMITS[1:2])}"
+        level = Level.STOP if per_rev < rubbing else Level.REVIEW
+        return run.finding(CHECK, level, move, message, value=move.feed.value, limit=least, unit="mm/min",
                            words=("F",), remedy="Check the feed mode: the number may be meant in mm a turn.")
     return None

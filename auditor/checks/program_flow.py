@@ -31,7 +31,7 @@ STOPS = ("target-missing", "endless", "travel-limit")
 REVIEWS = (
     "end-missing", "program-not-called", "subprogram-missing", "number-repeated",
     "return-through-point", "word-repeated", "code-group-repeated", "dwell", "preset", "data-input",
-    "speed-in-thread", "tool-in-motion",
+    "tool-in-motion",
 )
 NOTES = (
     "block-skip", "m-codes-many", "repeats-main", "spindle-left-on", "coolant", "work-zero-changed", "local-shift",

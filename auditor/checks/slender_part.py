@@ -11,7 +11,7 @@ Why
 Formula and source
     Length over diameter of the plain bar with the same give: (3 pi E d y / 64 F)^(1/3). Common practice: in the
     chuck alone up to 3, 4 with light cuts; with a tailstock 8 to 10, which at mid-span is as soft as a bar of 3
-    diameters in the chuck. Review: over slender_equivalent.
+    diameters in the chuck. Review: over slender_equivalent. Stop: over slender_most, where practice refuses the cut.
 
 Remedy
     Hold the work shorter, or bring up the tailstock or a steady rest.
@@ -30,7 +30,10 @@ from auditor.checks._words import figure, finding_at
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
 CHECK = "slender-part"
-LIMITS = (Limit("slender_equivalent", 4.0, "", "common practice", "largest stick-out in diameters"),)
+LIMITS = (
+    Limit("slender_equivalent", 4.0, "", "common practice", "largest stick-out in diameters"),
+    Limit("slender_most", 6.0, "", "common practice", "stick-out in diameters that no cut is made at"),
+)
 
 
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
@@ -47,7 +50,9 @@ def judge(run: Run) -> Iterator[Finding | NotJudged]:
         if ratio > threshold(run, LIMITS[0]) and ratio > worst.get(cut.tool.number, (0.0, 0))[0]:
             worst[cut.tool.number] = (ratio, row)
     for ratio, row in worst.values():
+        passed = LIMITS[1] if ratio > threshold(run, LIMITS[1]) else LIMITS[0]
         message = f"The work is as soft here as a bar standing out {figure(ratio)} diameters: it bends, climbs on " \
-                  f"the tool and chatters. {origin(run, LIMITS)}"
-        yield finding_at(run, CHECK, Level.REVIEW, row, message, value=ratio, limit=threshold(run, LIMITS[0]), unit="",
+                  f"the tool and chatters. {origin(run, [passed])}"
+        level = Level.STOP if passed is LIMITS[1] else Level.REVIEW
+        yield finding_at(run, CHECK, level, row, message, value=ratio, limit=threshold(run, passed), unit="",
                          remedy="Hold it shorter, or use a tailstock or a steady rest.")

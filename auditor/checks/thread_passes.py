@@ -1,20 +1,23 @@
 """Thread passes: will the thread come out right, and the insert live?
 
 What
-    Looks at each thread's passes: depth against lead, first and last pass, the force of the heaviest pass, run-in
-    and run-out, the speed of the slide, the hand that the thread gets, and the flank's clearance at the helix.
+    Looks at each thread's passes: the spindle's speed from pass to pass, depth against lead, first and last pass,
+    the force of the heaviest pass, run-in, the speed of the slide, the hand that the thread gets, and the flank's
+    clearance at the helix.
 
 Why
     The slide needs a few turns to catch up with the spindle: without a run-in the first turns have the wrong lead.
     A heavy pass breaks the tip, a feather-light one only rubs. A backward spindle or feed cuts the other hand.
+    Another speed shifts a pass along the thread: under constant surface speed each pass wrecks the one before.
 
 Formula and source
     Depth of a metric thread 0.61 of the pitch outside, 0.54 inside (ISO 68-1, from memory); review outside 0.5 to
     0.7. Review: a first pass over half the depth; a pass under thread_least (under 0.08 in work-hardening material)
     that is no spring pass; a run-in under thread_run_in leads; a spindle sense and feed that give a left-hand
     thread (M3 towards the chuck gives a right-hand one); less than 2 degrees of flank clearance left at the helix
-    where the clearance is declared (side clearance = atan(tan a x sin of half the flank angle)). Stop: lead x speed
-    over the slide's rapid rate; a pass whose force is over the tool's declared limit (no pass tables are used).
+    where the clearance is declared (side clearance = atan(tan a x sin of half the flank angle)); a speed changed
+    between passes. Stop: passes at different speeds under constant surface speed; lead x speed over the slide's rapid
+    rate; a pass whose force is over the tool's declared limit (no pass tables are used).
     Common practice where nothing else is named.
 
 Remedy
@@ -27,7 +30,10 @@ import math
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
+import numpy as np
+
 from auditor.checks._judging import rows_of, threshold
+from auditor.checks._remarks import findings_of
 from auditor.checks._thread import Thread, threads
 from auditor.checks._words import figure, finding_at, force
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
@@ -39,6 +45,7 @@ LIMITS = (
     Limit("thread_least", 0.05, "mm", "common practice", "thinnest pass"),
     Limit("thread_flank", 2.0, "deg", "common practice", "least flank clearance left at the helix"),
 )
+SAME_SPEED = 0.005  # share of the speed that drive and encoder even out
 SPRING = 0.005  # mm; a pass thinner than this is a spring pass
 HARDENING_PASS = 0.08  # mm, work-hardening material
 DEPTH_RANGE = (0.5, 0.7)  # of the lead, one start
@@ -59,8 +66,9 @@ class Doubt:
 def judge(run: Run) -> Iterator[Finding | NotJudged]:
     """The gravest doubt about each thread."""
     asks: tuple[Callable[[Run, Thread], Doubt | None], ...] = (
-        _slide, _heaviest, _hand, _run_in, _depth, _first, _thinnest, _flank,
+        _slide, _heaviest, _speed, _hand, _run_in, _depth, _first, _thinnest, _flank,
     )  # fmt: skip
+    yield from findings_of(run, CHECK, {"speed-in-thread": Level.REVIEW})
     for thread in threads(run):
         doubts = [doubt for ask in asks if (doubt := ask(run, thread)) is not None]
         if doubts:
@@ -95,6 +103,18 @@ def _heaviest(run: Run, thread: Thread) -> Doubt | None:
     return Doubt(Level.STOP, f"The heaviest pass loads the tip with {force(thread.force)} (chip "
                  f"{figure(thread.area, 3)} mm2); it is declared for {force(tool.force_limit)}.",
                  "More and thinner passes.", thread.force, tool.force_limit, "N")
+
+
+def _speed(run: Run, thread: Thread) -> Doubt | None:
+    figures, rows = run.prediction.moves, [move.index for move in thread.passes]
+    low, high = float(np.fmin.reduce(figures.rpm_low[rows])), float(np.fmax.reduce(figures.rpm_high[rows]))
+    if not high > low * (1.0 + SAME_SPEED):
+        return None
+    surface = any(move.spindle.mode == "surface" for move in thread.passes)
+    why = "under constant surface speed" if surface else "from pass to pass"
+    level = Level.STOP if surface else Level.REVIEW
+    return Doubt(level, f"The speed changes {why}, from {low:.0f} to {high:.0f} rpm: each pass starts at another place "
+                 "of the thread.", "One speed under G97 for all passes.", high, low, "rpm")
 
 
 def _hand(run: Run, thread: Thread) -> Doubt | None:
