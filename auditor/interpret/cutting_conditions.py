@@ -30,16 +30,16 @@ def _check_feed(run: Run, thread: bool) -> None:
         if run.log.first_time("feed-zero", feed.line):
             run.remark("feed-zero", f"a feed of {feed.value:g} moves nothing", "F", value=feed.value)
         return
-    if feed.given_in != feed.mode and not thread:
-        other = "per minute" if feed.mode == "rev" else "per revolution"
+    changed = feed.given_in != feed.mode and not thread
+    if changed and run.log.first_time("feed-mode-without-feed", feed.line, feed.mode):
+        given, now = _feed_text(feed.given_in, feed.value), _feed_text(feed.mode, feed.value)
         run.remark(
             "feed-mode-without-feed",
-            f"F{feed.value:g} was given as a feed {other} and now counts as {_feed_text(feed.mode, feed.value)}",
+            f"the feed was given as {given} and now counts as {now}",
             value=feed.value,
             unit=f"mm/{feed.mode}",
             remedy="give F again in the block that changes the feed mode",
         )
-        feed.given_in = feed.mode
     implausible = (feed.mode == "rev" and feed.value > COARSE_FEED) or (feed.mode == "min" and feed.value < SLOW_FEED)
     if implausible and not thread and run.log.first_time("feed-implausible", feed.line, feed.mode):
         run.remark(
