@@ -20,6 +20,7 @@ Figure = Callable[[Loads], Floats]
 FEED_STEP = 0.005  # mm/rev
 DEPTH_STEP = 0.05  # mm
 LEAST_FEED = 0.05  # mm/rev; what is slower rubs and is no way out (common practice)
+MOST_FEED = 2.0  # mm/rev; beyond it the feed itself is the mistake
 LEAST_DEPTH = 0.2  # mm, likewise
 
 
@@ -36,7 +37,7 @@ def feed_within(run: Run, move: Move, figure: Figure, limit: float) -> float | N
         return lasting(loads, figure(loads), move.index)
 
     steps = _last_within(value, math.ceil(now / FEED_STEP - 1e-9) - 1, limit)
-    return steps * FEED_STEP if steps * FEED_STEP >= LEAST_FEED else None
+    return steps * FEED_STEP if LEAST_FEED <= steps * FEED_STEP <= MOST_FEED else None
 
 
 def depth_within(run: Run, move: Move, figure: Figure, limit: float) -> float | None:

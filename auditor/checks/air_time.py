@@ -4,8 +4,8 @@ What
     Adds up the time of feed moves that take nothing off, and names the block that wastes most.
 
 Why
-    Feeding through air costs minutes a batch and wears nothing but patience; often it is a clearance set for
-    another blank, or a rapid that was forgotten to be switched back on.
+    Feeding through air costs minutes a batch; often it is a clearance set for another blank, or a G1 left standing
+    where G0 was meant.
 
 Formula and source
     Time = path / (feed x speed), for feed moves without engagement; simulation. A note when it passes both

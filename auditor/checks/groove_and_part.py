@@ -25,7 +25,7 @@ from collections.abc import Iterator
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import lasting, origin, threshold
 from auditor.checks._remedy import feed_word
-from auditor.checks._words import feed, feed_rate, figure, finding_at, length
+from auditor.checks._words import feed_rate, figure, finding_at, length, x_word
 from auditor.declared.model import ToolKind
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 
@@ -71,7 +71,7 @@ def _too_fast(run: Run, cut: Cut) -> Finding | None:
     used, most = cut.largest(loads.feed), threshold(run, LIMITS[2])
     if not used > most * (1.0 + 1e-9):
         return None
-    message = f"The blade is plunged at feed {feed(used)}: the chip fills the groove and the blade breaks. " \
+    message = f"The blade is plunged at feed {feed_rate(run, used)}: the chip fills the groove and the blade breaks. " \
               f"{origin(run, LIMITS[2:])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(loads.depth), message, value=used, limit=most,
                       unit="mm/rev", words=("F",), remedy=f"At most {feed_word(run, cut.move, most)}.")
@@ -129,4 +129,4 @@ def _at_centre(run: Run, cut: Cut) -> Finding | None:
     message = f"The blade parts to the centre at full feed {feed_rate(run, used)}: the speed falls to nothing there " \
               "and the corner breaks (common practice: a quarter to a half for the last 3 mm of diameter)."
     return finding_at(run, CHECK, Level.NOTE, cut.row_of_largest(loads.depth), message, words=("F",),
-                      remedy=f"From X3 on {feed_word(run, cut.move, max(0.5 * used, 0.03))}.")
+                      remedy=f"From {x_word(run, CENTRE)} on {feed_word(run, cut.move, max(0.5 * used, 0.03))}.")

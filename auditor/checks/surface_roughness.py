@@ -65,7 +65,7 @@ def _judge_cut(run: Run, cut: Cut, measure: str, asked: float) -> Finding | None
     real = ideal * factor
     if real <= asked:
         return None
-    message = f"The feed leaves a thread of {measure} {figure(real, 2)} um ({figure(ideal, 2)} ideal times " \
+    message = f"The feed leaves {measure} {figure(real, 2)} um on the surface ({figure(ideal, 2)} ideal times " \
               f"{figure(factor, 2)} at {speed:.0f} m/min); asked for is {figure(asked, 2)} um."
     slower = _feed_for(cut, measure, asked / factor, used)
     remedy = f"{feed_word(run, cut.move, slower)} meets it, or a larger nose." if slower else "A larger nose radius."

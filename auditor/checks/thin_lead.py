@@ -40,6 +40,7 @@ LIMITS = (
 )
 LEAN = 15.0  # deg
 WEDGE = 1.0  # mm; what the edge itself left standing at a shoulder is thinner
+AIR = 0.01  # mm; less depth is none
 HALF_EDGE = 0.5
 
 
@@ -77,7 +78,8 @@ def _jump(run: Run, cut: Cut) -> Finding | None:
     if deepest <= threshold(run, LIMITS[1]) * usual or used <= HALF_EDGE * edge:
         return None
     row = cut.row_of_largest(loads.depth)
-    message = f"The depth jumps from {length(run, usual)} to {length(run, deepest)} at full feed, with " \
+    before = length(run, usual) if usual > AIR else "air"
+    message = f"The depth jumps from {before} to {length(run, deepest)} at full feed, with " \
               f"{length(run, used, 1)} of the edge in the cut. {origin(run, LIMITS[1:])}"
     return finding_at(run, CHECK, Level.NOTE, row, message, value=deepest, limit=threshold(run, LIMITS[1]) * usual,
                       unit="mm", remedy="Half the feed over the jump, or take the shoulder apart.")

@@ -53,7 +53,8 @@ def _mixed(run: Run, remark: Remark) -> Finding:
     at_line = [mark.text.partition(" ")[0] for mark in foreign if mark.line == remark.line]
     remark = replace(remark, words=tuple(at_line) or remark.words)
     if run.path.system != "A" or not all(_idle(run.text.blocks, mark.line) for mark in foreign):
-        return finding_of(CHECK, Level.REVIEW, remark)
+        remedy = "declare control.system as the program is written, or correct the block"
+        return finding_of(CHECK, Level.REVIEW, replace(remark, remedy=remark.remedy or remedy))
     return finding_of(CHECK, Level.NOTE, replace(remark, remedy="leave it out"),
                       "G90 does nothing here: in system A it is the box cycle, not absolute words; the next X or Z "
                       "without a G code of its own would start that cycle")
