@@ -119,6 +119,15 @@ def arc_points(
     return [(centre[0] + radius * math.cos(a), centre[1] + radius * math.sin(a)) for a in angles]
 
 
+def corner_edge(depth: float, radius: float, kappa: float) -> float:
+    """Length of edge in a cut of that depth: arc of the corner and straight part behind it."""
+    angle = math.radians(kappa)
+    rounded = radius * (1.0 - math.cos(angle))
+    if depth <= rounded:
+        return radius * math.acos(1.0 - depth / radius)
+    return radius * angle + (depth - rounded) / math.sin(angle)
+
+
 def volume(area: Polygon) -> float:
     """Pappus: area times the way of its centroid."""
     return 0.0 if area.is_empty else 2.0 * math.pi * area.centroid.y * area.area

@@ -12,6 +12,7 @@ from dataclasses import replace
 import numpy as np
 import pytest
 
+from tests.simulate.judge import corner_edge
 from tests.simulate.workshop import (
     BLADE,
     BORER,
@@ -29,15 +30,6 @@ from tests.simulate.workshop import (
 )
 
 CHORD = 0.001  # mm between a chord and its arc
-
-
-def corner_edge(depth: float, radius: float, kappa: float) -> float:
-    """Length of edge in a cut of that depth: arc of the corner and straight part behind it."""
-    angle = math.radians(kappa)
-    rounded = radius * (1.0 - math.cos(angle))
-    if depth <= rounded:
-        return radius * math.acos(1.0 - depth / radius)
-    return radius * angle + (depth - rounded) / math.sin(angle)
 
 
 @pytest.mark.parametrize("depth", [0.05, 0.1, 0.5, 0.8, 2.0, 5.0])

@@ -8,6 +8,7 @@ from dataclasses import replace
 import pytest
 
 from auditor.declared.model import Tool
+from tests.simulate.judge import corner_edge
 from tests.simulate.workshop import ROUGHER, Path, bar, cut, deepest, edge_length, shaped, stretches_at
 
 ROUND = Tool(1, "round", "turning", shape="R", nose_radius=5.0)
@@ -16,14 +17,6 @@ TRIGON = Tool(1, "trigon", "turning", shape="W", nose_radius=0.8, cutting_edge_a
 END = Tool(1, "end style", "turning", shape="S", nose_radius=0.8, cutting_edge_angle=75.0, included_angle=90.0,
            edge_faces_end=True, edge_length=12.7)  # fmt: skip
 BLADE = Tool(1, "blade", "grooving", nose_radius=0.2, width=3.0)
-
-
-def corner_edge(depth: float, radius: float, kappa: float) -> float:
-    angle = math.radians(kappa)
-    rounded = radius * (1.0 - math.cos(angle))
-    if depth <= rounded:
-        return radius * math.acos(1.0 - depth / radius)
-    return radius * angle + (depth - rounded) / math.sin(angle)
 
 
 @pytest.mark.parametrize(
