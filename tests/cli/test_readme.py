@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import json
 import re
 import shutil
 import subprocess
@@ -70,15 +71,45 @@ def test_its_table_of_formats_holds_every_format() -> None:
     )
 
 
-def test_its_tour_can_be_taken(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
-    shutil.copytree(HOUSE / "fixtures" / "demo", tmp_path / "fixtures" / "demo")
+# in the order of each tour
+TOURS = {
+    # drafted, left open, stop, explained, compared, corrected
+    "Who writes or proves out a program": [0, 2, 1, 0, 0, 0],
+    # stop, kept, nothing new, the same for code hosts
+    "Who keeps the programs in a repository": [1, 1, 0, 1],
+    # something to decide but no stop, signed, fitted
+    "Who answers for the shift": [0, 0, 0],
+}
+
+
+@pytest.mark.parametrize("heading", TOURS)
+def test_its_tours_can_be_taken(heading: str, tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    for name in ("demo", "calibrate"):
+        shutil.copytree(HOUSE / "fixtures" / name, tmp_path / "fixtures" / name)
     monkeypatch.chdir(tmp_path)
-    tour = README.split("## A tour of five minutes")[1].split("\n## ")[0]
+    tour = re.split(r"\n###? ", README.split(f"### {heading}\n")[1])[0]
     commands = re.findall(r"`turnaudit ([^`]+)`", tour)
-    statuses = [CliRunner().invoke(turnaudit, command.split()).exit_code for command in commands]
-    # stop, explained, the same with pictures, corrected, kept, nothing new, drafted
-    assert statuses == [1, 0, 1, 0, 1, 0, 0]
-    assert {"tour.html", "known.json", "guess.job.toml"} <= {path.name for path in tmp_path.iterdir()}
+    assert [CliRunner().invoke(turnaudit, command.split()).exit_code for command in commands] == TOURS[heading]
+    written = re.findall(r"--(?:output|html) ([\w.-]+\.\w+)", tour)
+    assert set(written) <= {path.name for path in tmp_path.iterdir()}
+
+
+def test_its_night_has_the_decisions_it_tells_of(monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.chdir(HOUSE)
+    night = CliRunner().invoke(turnaudit, ["shift", "fixtures/demo/night.toml"]).output
+    assert "3 to decide" in night
+    assert all(f"drive-stub-corrected: {what}" in night for what in ("Line 119, stringy-chips", "T1", "T2"))
+
+
+def test_its_log_gives_back_the_factor_it_was_made_with(monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.chdir(HOUSE)
+    log = "fixtures/calibrate/drive-stub-corrected.csv"
+    fitted = json.loads(CliRunner().invoke(
+        turnaudit, ["calibrate", "fixtures/demo/drive-stub-corrected.nc", "--log", log, "--format", "json"]).output)
+    low, high = fitted["factor_95_percent"]
+    assert low < 1.12 < high  # as the head of the log says
+    assert fitted["idle_power_kW"] == pytest.approx(0.45, abs=0.05)
+    assert "MADE UP" in (HOUSE / log).read_text(encoding="utf-8")
 
 
 def test_its_recipe_for_ci_is_a_sound_script() -> None:
