@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from dataclasses import replace
 from pathlib import Path
 from typing import TypeVar
 
@@ -62,7 +63,7 @@ class JobReader:
         if isinstance(program, Fault):
             self.faults.insert(0, program)
         if self.faults or isinstance(program, Fault) or machine is None or workpiece is None or workholding is None:
-            raise DeclarationError(*dict.fromkeys(self.faults))
+            raise DeclarationError(*dict.fromkeys(_left_open(fault) for fault in self.faults))
         return Job(
             path=path,
             sha256=self.toml.sha256,
@@ -163,7 +164,8 @@ class JobReader:
         if material is None:
             close = [nearest(name, self.shop.names("materials", self.faults)), *materials.nearest(name)]
             wanted = " or ".join(f'"{known}"' for known in close if known)
-            wanted = wanted or "a name of the catalogue or of the shop file, or a table"
+            wanted = (f"{wanted}; `turnaudit materials` lists all" if wanted else
+                      "a name of the catalogue (`turnaudit materials` lists them) or of the shop file, or a table")
             self.faults.append(place.fault("no such material", found=f'"{name}"', wanted=wanted))
         return material
 
@@ -246,3 +248,14 @@ class JobReader:
             for index, raw in enumerate(entries, start=1)
         ]
         return tuple(Acceptance(row.check, row.reason, row.line, row.tool, row.until) for row in rows if row)
+
+
+def _left_open(fault: Fault) -> Fault:
+    """A "?" that a draft left is no wrong value: nobody has decided it yet."""
+    if fault.found is None or not fault.found.startswith('"?"'):
+        return fault
+    wanted = fault.wanted
+    if wanted is not None and fault.found != '"?"':  # a code: its first letter alone is no help
+        outright = wanted.partition("; or declared outright")
+        wanted = "its code" + "".join(outright[1:])
+    return replace(fault, message="still to be decided", found=None, wanted=wanted)

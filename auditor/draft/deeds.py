@@ -117,10 +117,19 @@ def _plain(moves: Sequence[Move], index: int, front: float) -> Act | None:
     if _axial(move):
         if max(abs(move.start.r), abs(move.end.r)) <= ON_AXIS:
             return DRILL
-        return _by_way_out(moves, index)
+        return None if _starts_facing(moves, index, front) else _by_way_out(moves, index)
     if _radial(move):
         return _across(move, _next_step(moves, index), front)
     return _by_way_out(moves, index)  # a taper or an arc
+
+
+def _starts_facing(moves: Sequence[Move], index: int, front: float) -> bool:
+    """Whether a feed along Z only brings the tool to the face it then cuts."""
+    end, after = moves[index].end, moves[index + 1] if index + 1 < len(moves) else None
+    if after is None or after.tool != moves[index].tool or not _feeds(after) or not _radial(after):
+        return False
+    to_centre = after.start_r is not None and after.end_r is not None and after.end_r <= min(TO_CENTRE, after.start_r)
+    return to_centre and end is not None and end.z >= front - SHORT
 
 
 def _by_way_out(moves: Sequence[Move], index: int) -> Act | None:

@@ -4,12 +4,12 @@ from __future__ import annotations
 
 import re
 from collections.abc import Iterator, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from auditor.declared.model import Control
 from auditor.draft.guesses import remark_text
 from auditor.draft.sizes import upper
-from auditor.draft.vocabulary import TOOL_LABELS
+from auditor.draft.vocabulary import MATERIAL_LABELS, STICK_OUT_LABELS, STOCK_LABELS, TOOL_LABELS, holds
 from auditor.interpret.toolwords import read_tool_word
 from auditor.parse.blocks import Block, Number, ProgramText
 
@@ -17,6 +17,9 @@ HEADING = 3  # lines a heading may stand above its tool call
 _LABELS = "|".join(re.escape(word) for word in sorted(TOOL_LABELS, key=len, reverse=True))
 _CODE = re.compile(r"/?(?:N\d+ ?)?[GM]\d{1,3}(?![A-Z])")  # a block taken out by brackets says nothing about tools
 _MARK = re.compile(rf"(?<![A-Z0-9])(?:T|(?:{_LABELS})(?![A-Z]))\.?[ :#=-]*(?<!\.)(\d{{1,4}})(?![\d/]|[.,]\d)")
+
+_NUMBER_ALONE = re.compile(r"(?:(?:OFFSET|OFF|OFS|KORREKTUR|CORRECTEUR|CORRETTORE|CORRECTOR)?[ :#=.-]*\d*)")
+_OF_WORK = (*MATERIAL_LABELS, *STOCK_LABELS, *STICK_OUT_LABELS)
 
 
 @dataclass(frozen=True, slots=True)
@@ -39,12 +42,19 @@ def sayings(text: ProgramText, tools: Mapping[int, int]) -> list[Saying]:
     """Every comment; ``tools`` are the numbers the program calls."""
     calls = _calls(text.blocks)
     found: list[Saying] = []
+    heading: int | None = None  # the tool of a comment that says no more than its number
     for index, block in enumerate(text.blocks):
+        heading = None if block.words else heading
         for comment in block.comments:
             said, quote = upper(comment.text), _short(remark_text(comment.text))
             if said and not _CODE.match(said):
                 near = None if block.program is not None else _tool_near(text.blocks, index, calls)  # a title
-                found += _parts(Saying(block.line, said, quote, near, marked=index in calls), tools)
+                parts = list(_parts(Saying(block.line, said, quote, near, marked=index in calls), tools))
+                if heading is not None and not parts[0].marked and not holds(said, _OF_WORK):
+                    parts = [replace(parts[0], tool=heading, marked=True)]
+                bare = len(parts) == 1 and parts[0].marked and _NUMBER_ALONE.fullmatch(parts[0].text)
+                heading = parts[0].tool if bare and not block.words else None
+                found += parts
     return found
 
 
@@ -65,7 +75,12 @@ def _parts(whole: Saying, tools: Mapping[int, int]) -> Iterator[Saying]:
     ends = [match.start() for match, _ in marks[1:]] + [len(said)]
     for (match, number), end in zip(marks, ends, strict=True):
         own = quote if len(marks) == 1 and not head else _short(said[match.start() : end].strip(" -"))
-        yield Saying(line, said[match.end() : end].strip(" -:.="), own, number, marked=True)
+        yield Saying(line, _behind(said[match.end() : end]), own, number, marked=True)
+
+
+def _behind(text: str) -> str:
+    """What follows the number of a tool, without the signs between, but with the point of .125W."""
+    return re.sub(r"^(?:[ :=-]|\.(?!\d))+|[ :.=-]+$", "", text)
 
 
 def _number(digits: str) -> int:

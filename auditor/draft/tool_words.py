@@ -17,7 +17,7 @@ from auditor.draft.vocabulary import KINDS_BY_CLAIM, LEFT, SUBSTRATES, TOOL_KIND
 
 _INSERT = re.compile(
     r"(?<![A-Z0-9])[ABCDEHKLMRSTVW][NABCDEFGP][ACEFGHJKLMNU][NRFAMGWTQUBHCJX][ -]?"
-    r"(?:(?:\d\d|S\d)[ -]?(?:\d\d|T\d)[ -]?(?:\d\d|M0)|\d{3}|\d\.\d\d|\d[ -]\d[ -]\d)(?!\d)"
+    r"(?:(?:\d\d|S\d)[ -]?(?:\d\d|T\d)[ -]?(?:\d\d|M0)|\d{3}|\d\d?\.\d\d|\d[ -]\d[ -]\d)(?!\d)"
 )
 _HOLDER = re.compile(
     r"(?<![A-Z0-9])[A-JS]\d\d[A-Z]?[ -]?[CDMPSW][ABCDEHKLMRSTVW][A-Z][NABCDEFGP][RLN](?:[ -]?\d\d)?(?!\d)"
@@ -119,6 +119,9 @@ def _width(saying: Saying, found: Sequence[Size], unit: str) -> Iterator[tuple[s
     for size, sure in said:
         if NARROWEST <= _millimetres(size, unit) <= WIDEST:
             yield "width", Guess(quantity(size.value, size.unit or unit), sure, saying.place)
+            return
+        if size.unit is None and size.role == "width" and NARROWEST <= 25.4 * size.value <= WIDEST:
+            yield "width", Guess(quantity(size.value, "in"), "guess", saying.place)  # no blade is that narrow in mm
             return
 
 

@@ -29,6 +29,7 @@ from auditor.draft.vocabulary import (
 )
 
 LONGEST_NAME = 4  # words of a material's name
+FAMILY_DIGITS = 3  # AL 6061, SS 304
 SURE_LETTERS = 4  # a shorter name may stand for something else (C15 is a chamfer too)
 _WORD = re.compile(r"[A-Z0-9][A-Z0-9.+/%-]*")
 _NUMBERED = re.compile(r"\d\.\d{4}|(?=.*[A-Z])(?=.*\d).{3,}")  # 1.4301; letters and digits mixed
@@ -42,7 +43,7 @@ _JAWS = re.compile(r"(?<![A-Z0-9])([2-8])[ -]?(?:JAWS?|BACKEN|MORS|GRIFFE|GARRAS
 def work_said(said: Sequence[Saying], unit: str) -> Iterator[tuple[str, Guess]]:
     """Everything said about the work, by key path, the more believable first."""
     about_work = [saying for saying in said if not (saying.marked or _is_tool(saying))]
-    yield from _material(about_work)
+    yield from _material(about_work, unit)
     yield from _stock(about_work, unit)
     yield from _holding(about_work, unit)
 
@@ -59,13 +60,14 @@ def is_about_work(saying: Saying) -> bool:
     return not saying.marked and bool(holds(text, labels) or named(text, HOLDING))
 
 
-def _material(said: Iterable[Saying]) -> Iterator[tuple[str, Guess]]:
+def _material(said: Iterable[Saying], unit: str) -> Iterator[tuple[str, Guess]]:
     """The surest first: a labelled name, a name that can be nothing else, a labelled family."""
     ranked: list[tuple[int, Guess]] = []
     for saying in said:
         label, stock = holds(saying.text, MATERIAL_LABELS), holds(saying.text, STOCK_LABELS)
         rest = _BESIDE_LABEL.sub("", saying.text[label.end() :]) if label else saying.text
         found = _catalogue_name(rest, labelled=label is not None, beside_stock=stock is not None)
+        found = found or (_inch_grade(rest) if unit == "in" else None)
         family = named(rest, FAMILIES)[:1]
         if found:
             ranked.append((0 if label else 1, Guess(text_value(found), "sure" if label else "likely", saying.place)))
@@ -93,9 +95,16 @@ def _catalogue_name(text: str, *, labelled: bool, beside_stock: bool) -> str | N
             for spelling in (run, bare):
                 name = _known().get(key_of(spelling))
                 mixed = _NUMBERED.fullmatch(spelling) and (beside_stock or len(key_of(spelling)) >= SURE_LETTERS)
-                if name and (labelled or mixed or (beside_stock and bare != run)):
+                family = bare != run and (beside_stock or len(key_of(bare)) >= FAMILY_DIGITS)
+                if name and (labelled or mixed or family):
                     return name
     return None
+
+
+def _inch_grade(text: str) -> str | None:
+    """A steel or alloy by its four digits, as inch shops write it: no size in inches has four without a point."""
+    grades = (word for word in _WORD.findall(text) if re.fullmatch(r"\d{4}", word))
+    return next((_known()[word] for word in grades if word in _known()), None)
 
 
 @cache
@@ -112,7 +121,10 @@ def _stock(said: Iterable[Saying], unit: str) -> Iterator[tuple[str, Guess]]:
         text = _without_names(saying.text)
         found = list(_measures(text))
         roles = {size.role for size in found}
-        about_part = "diameter" in roles and _catalogue_name(saying.text, labelled=False, beside_stock=False)
+        about_part = "diameter" in roles and (
+            _catalogue_name(saying.text, labelled=False, beside_stock=False)
+            or (unit == "in" and _inch_grade(saying.text))
+        )
         if label or {"diameter", "length"} <= roles or about_part:
             yield from _by_role(saying, found, unit, "likely" if label else "guess")
             yield from _words(saying)
@@ -178,13 +190,18 @@ def _words(saying: Saying) -> Iterator[tuple[str, Guess]]:
             yield f"workpiece.{key}", Guess(text_value(name), "likely", saying.place)
 
 
-def _holding(said: Iterable[Saying], unit: str) -> Iterator[tuple[str, Guess]]:
+def _kind_of_holding(said: Sequence[Saying]) -> Iterator[tuple[str, Guess]]:
+    """The most particular first: a chuck in one comment and a live centre in another are a chuck with tailstock."""
+    for name in ("centres", "chuck+tailstock", "collet", "chuck"):
+        for saying in said:
+            if name in named(saying.text, HOLDING):
+                yield "workholding.kind", Guess(text_value(name), "likely", saying.place)
+
+
+def _holding(said: Sequence[Saying], unit: str) -> Iterator[tuple[str, Guess]]:
+    yield from _kind_of_holding(said)
     for saying in said:
         kinds = named(saying.text, HOLDING)
-        for name in ("centres", "chuck+tailstock", "collet", "chuck"):
-            if name in kinds:
-                yield "workholding.kind", Guess(text_value(name), "likely", saying.place)
-                break
         jaws = _JAWS.search(saying.text)
         if jaws:
             yield "workholding.jaws", Guess(jaws[1], "likely", saying.place)
