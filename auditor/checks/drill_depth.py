@@ -26,7 +26,8 @@ import numpy as np
 
 from auditor.checks._cuts import Cut, cuts
 from auditor.checks._judging import origin, threshold
-from auditor.checks._words import feed, figure, finding_at, x_word
+from auditor.checks._remedy import feed_word
+from auditor.checks._words import feed_rate, figure, finding_at, length, x_word
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Kind
 
@@ -82,8 +83,8 @@ def _too_deep(run: Run, cut: Cut, deep: float, diameter: float) -> Finding | Non
     most = threshold(run, limit)
     if deep <= most * diameter:
         return None
-    message = f"The drill goes {figure(deep)} mm deep in one go, {figure(deep / diameter)} diameters: chips jam in " \
-              f"the flutes. {origin(run, [limit])}"
+    message = f"The drill goes {length(run, deep, 1)} deep in one go, {figure(deep / diameter)} diameters: chips jam " \
+              f"in the flutes. {origin(run, [limit])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(-run.prediction.loads.z), message,
                       value=deep / diameter, limit=most, unit="", remedy="A peck cycle: first 3 diameters, then 1.")
 
@@ -92,10 +93,10 @@ def _too_fast(run: Run, cut: Cut, diameter: float) -> Finding | None:
     used, most = cut.largest(run.prediction.loads.feed), threshold(run, LIMITS[2]) * diameter
     if not used > most * (1.0 + 1e-9):
         return None
-    message = f"Feed {feed(used)} is {figure(used / diameter, 3)} of the drill's {figure(diameter)} mm: it splits. " \
-              f"{origin(run, LIMITS[2:3])}"
+    message = f"Feed {feed_rate(run, used)} is {figure(used / diameter, 3)} of the drill's {figure(diameter)} mm: " \
+              f"it splits. {origin(run, LIMITS[2:3])}"
     return finding_at(run, CHECK, Level.REVIEW, cut.row_of_largest(run.prediction.loads.feed), message, value=used,
-                      limit=most, unit="mm/rev", words=("F",), remedy=f"At most F{feed(most)}.")
+                      limit=most, unit="mm/rev", words=("F",), remedy=f"At most {feed_word(run, cut.move, most)}.")
 
 
 def _off_axis(run: Run, cut: Cut) -> Finding | None:

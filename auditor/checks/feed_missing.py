@@ -27,7 +27,7 @@ import numpy as np
 
 from auditor.checks._judging import cutting_moves, origin, rows_of, threshold
 from auditor.checks._remarks import findings_of
-from auditor.checks._words import feed, figure
+from auditor.checks._words import length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.interpret.moves import Feed, Kind, Move
 
@@ -71,13 +71,13 @@ def _implausible(run: Run, move: Move) -> Finding | None:
     rows = run.prediction.loads.feed[rows_of(run.prediction.loads, move.index)]
     per_rev = float(np.nanmax(rows)) if np.isfinite(rows).any() else math.nan
     if per_rev > largest:
-        message = f"The tool advances {feed(per_rev)} mm in one turn of the work; no edge cuts that. " \
+        message = f"The tool advances {length(run, per_rev, 3)} in one turn of the work; no edge cuts that. " \
                   f"{origin(run, LIMITS[:1])}"
         return run.finding(CHECK, Level.STOP, move, message, value=per_rev, limit=largest, unit="mm/rev", words=("F",),
-                           remedy="Check the feed mode: the number may be meant in mm a minute.")
+                           remedy="Check the feed mode: the number may be meant for a minute.")
     if move.feed.mode == "min" and move.feed.value < least:
-        message = f"The tool creeps at {figure(move.feed.value, 3)} mm a minute and rubs. {origin(run, LIMITS[1:2])}"
+        message = f"The tool creeps at {length(run, move.feed.value, 3)} a minute and rubs. {origin(run, LIMITS[1:2])}"
         level = Level.STOP if per_rev < rubbing else Level.REVIEW
         return run.finding(CHECK, level, move, message, value=move.feed.value, limit=least, unit="mm/min",
-                           words=("F",), remedy="Check the feed mode: the number may be meant in mm a turn.")
+                           words=("F",), remedy="Check the feed mode: the number may be meant for a turn.")
     return None

@@ -35,7 +35,7 @@ import numpy as np
 from auditor.checks._judging import rows_of, threshold
 from auditor.checks._remarks import findings_of
 from auditor.checks._thread import Thread, threads
-from auditor.checks._words import figure, finding_at, force
+from auditor.checks._words import figure, finding_at, force, length
 from auditor.findings import Finding, Level, Limit, NotJudged, Run
 from auditor.mechanics.clearance import feed_angle
 
@@ -132,9 +132,9 @@ def _run_in(run: Run, thread: Thread) -> Doubt | None:
     least = threshold(run, LIMITS[0]) * thread.lead
     if thread.run_in is None or thread.run_in >= least - 1e-6:
         return None
-    return Doubt(Level.REVIEW, f"The thread starts {figure(thread.run_in)} mm before the metal, {figure(least)} mm are "
-                 "wanted: the first turns get the wrong lead (common practice).",
-                 f"Start {figure(least)} mm or more before the thread.", thread.run_in, least, "mm")
+    return Doubt(Level.REVIEW, f"The thread starts {length(run, thread.run_in, 1)} before the metal, "
+                 f"{length(run, least, 1)} are wanted: the first turns get the wrong lead (common practice).",
+                 f"Start {length(run, least, 1)} or more before the thread.", thread.run_in, least, "mm")
 
 
 def _depth(run: Run, thread: Thread) -> Doubt | None:
@@ -143,16 +143,17 @@ def _depth(run: Run, thread: Thread) -> Doubt | None:
     share = thread.depth / thread.lead
     if DEPTH_RANGE[0] <= share <= DEPTH_RANGE[1] or thread.starts > 1:
         return None
-    return Doubt(Level.REVIEW, f"The thread is {figure(thread.depth, 3)} mm deep at a lead of "
-                 f"{figure(thread.lead, 3)}, {figure(share, 2)} of it; a metric thread has 0.61 outside, 0.54 inside.",
+    return Doubt(Level.REVIEW, f"The thread is {length(run, thread.depth, 3)} deep at a lead of "
+                 f"{length(run, thread.lead, 3)}, {figure(share, 2)} of it; a metric thread has 0.61 outside, "
+                 "0.54 inside.",
                  "Check depth and lead.", share, DEPTH_RANGE[0 if share < DEPTH_RANGE[0] else 1], "")
 
 
 def _first(run: Run, thread: Thread) -> Doubt | None:
     if thread.depth is None or len(thread.infeeds) < 2 or thread.infeeds[0] <= 0.5 * thread.depth:
         return None
-    return Doubt(Level.REVIEW, f"The first pass takes {figure(thread.infeeds[0], 3)} mm, more than half of the depth "
-                 "(common practice).", "A thinner first pass.", thread.infeeds[0], 0.5 * thread.depth, "mm")
+    return Doubt(Level.REVIEW, f"The first pass takes {length(run, thread.infeeds[0], 3)}, more than half of the "
+                 "depth (common practice).", "A thinner first pass.", thread.infeeds[0], 0.5 * thread.depth, "mm")
 
 
 def _thinnest(run: Run, thread: Thread) -> Doubt | None:
@@ -163,7 +164,7 @@ def _thinnest(run: Run, thread: Thread) -> Doubt | None:
         return None
     closing = [infeed for infeed in thread.infeeds if infeed > SPRING][-1]
     level = Level.REVIEW if hardening and min(thin) < closing else Level.NOTE  # a light last pass is common
-    return Doubt(level, f"A pass takes only {figure(min(thin), 3)} mm and rubs; {figure(least, 3)} mm are wanted "
+    return Doubt(level, f"A pass takes only {length(run, min(thin), 3)} and rubs; {length(run, least, 3)} are wanted "
                  "(common practice).", "Fewer passes, or a larger least pass in the cycle.", min(thin), least, "mm")
 
 
