@@ -19,7 +19,7 @@ from auditor.simulate.rapids import arrival_contact, dogleg_contact, near_contac
 from auditor.simulate.runs import runs
 from auditor.simulate.samples import Contact, Edge, Floats, Ints, LoosePiece, Samples, Simulation
 from auditor.simulate.shares import swept_volume
-from auditor.simulate.stock import boundary_segments, raw_stock, split_loose, swept, volume, without
+from auditor.simulate.stock import boundary_segments, enclosed_volume, raw_stock, split_loose, swept, volume, without
 from auditor.simulate.surface import final_surface
 from auditor.simulate.threads import thread_pass
 from auditor.simulate.tool_outline import tool_outline
@@ -78,7 +78,7 @@ class Follower:
         self.raw = raw_stock(job.workpiece)
         self.stock: BaseGeometry = self.raw
         self.sides = boundary_segments(self.stock)
-        self.volume = volume(self.stock)
+        self.volume = enclosed_volume(self.sides)
         self.parts: list[Stretch] = []
         self.edges: list[Edge] = []
         self.edge_numbers: dict[tuple[int, tuple[float, float]], int] = {}
@@ -116,14 +116,13 @@ class Follower:
         """Engage and remove, piece by piece; returns the greatest depth met."""
         deepest = 0.0
         for piece in pieces(move):
-            edge = outline.edge(piece.direction)
-            stretches = engagement(edge, self.sides, piece.start, piece.length)
+            facing = outline.facing(piece.direction)
+            stretches = engagement(facing.edge, self.sides, piece.start, piece.length)
             if not stretches.engaged:
                 continue
-            self._add(move, edge, piece, stretches)
+            self._add(move, facing.edge, piece, stretches)
             deepest = max(deepest, float((stretches.high - stretches.low).max()))
-            nodes = outline.nodes(piece.direction)[0]
-            self._remove(move, swept(nodes, piece.step, piece.start))
+            self._remove(move, facing.swept(piece.length, piece.start))
         return deepest
 
     def _cut_run(self, run: Sequence[Move], outline: Outline) -> None:
@@ -133,8 +132,8 @@ class Follower:
             return
         bounds = np.concatenate(([0.0], np.cumsum([path_length(move) for move in run])))
         bounds *= whole.length / bounds[-1]
-        edge = outline.edge(whole.direction)
-        stretches = engagement(edge, self.sides, whole.start, whole.length, bounds[1:-1])
+        facing = outline.facing(whole.direction)
+        stretches = engagement(facing.edge, self.sides, whole.start, whole.length, bounds[1:-1])
         if not stretches.engaged:
             return
         shares = np.zeros(len(run))
@@ -142,11 +141,11 @@ class Follower:
             begin, end = float(bounds[number]), float(bounds[number + 1])
             rows = (stretches.position > begin - JOINT) & (stretches.position < end + JOINT)
             own = stretches.only(rows)
-            self._add(move, edge, replace(whole, offset=-begin), own)
-            shares[number] = swept_volume(own, edge, whole)
+            self._add(move, facing.edge, replace(whole, offset=-begin), own)
+            shares[number] = swept_volume(own, facing.edge, whole)
             self.stock_before[move.index] = self.stock
         before = self.volume
-        self._remove(run[0], swept(outline.nodes(whole.direction)[0], whole.step, whole.start))
+        self._remove(run[0], facing.swept(whole.length, whole.start))
         taken = before - self.volume
         self.removed[[move.index for move in run]] = taken * shares / (shares.sum() or 1.0)
 
@@ -169,7 +168,7 @@ class Follower:
         self.stock_before.setdefault(move.index, self.stock)
         self.stock = without(self.stock, area)
         self.sides = boundary_segments(self.stock)
-        left = volume(self.stock)
+        left = enclosed_volume(self.sides)
         self.removed[move.index] += self.volume - left
         self.volume = left
 
@@ -221,7 +220,7 @@ class Follower:
             self.loose.append(LoosePiece(move.index, volume(part), (low, high)))
         self.stock = held
         self.sides = boundary_segments(held)
-        self.volume = volume(held)
+        self.volume = enclosed_volume(self.sides)
 
 
 def simulate(path: Interpretation, job: Job) -> Simulation:

@@ -6,6 +6,8 @@ import math
 from dataclasses import dataclass, field
 
 import numpy as np
+import shapely
+from shapely.geometry.base import BaseGeometry
 
 from auditor.simulate.samples import Edge, Floats, Ints, Part
 
@@ -64,12 +66,30 @@ class Corner:
 
 
 @dataclass(frozen=True, slots=True)
+class Facing:
+    """An outline seen along a direction of motion: its leading edge, and its nodes before and behind.
+
+    ``before`` and ``behind`` (n, 2) share their end nodes, so that one moved ahead and the other left in place
+    enclose what the outline sweeps.
+    """
+
+    edge: Edge
+    before: Floats
+    behind: Floats
+
+    def swept(self, length: float, start: tuple[float, float]) -> BaseGeometry:
+        """Area covered while the programmed point runs ``length`` mm from ``start``."""
+        ahead = self.before + np.asarray(self.edge.direction) * length
+        return shapely.polygons(np.concatenate((ahead, self.behind)) + np.asarray(start))
+
+
+@dataclass(frozen=True, slots=True)
 class Outline:
     """Corners in counter-clockwise order in (z, r), relative to the programmed point."""
 
     tool: int
     corners: tuple[Corner, ...]
-    _edges: dict[Direction, Edge] = field(default_factory=dict, compare=False, repr=False)
+    _facings: dict[Direction, Facing] = field(default_factory=dict, compare=False, repr=False)
     _hull: list[Floats] = field(default_factory=list, compare=False, repr=False)
 
     @property
@@ -96,14 +116,18 @@ class Outline:
         return self._hull[0]
 
     def edge(self, direction: Direction) -> Edge:
-        """The leading edge for a direction of motion; remembered per direction."""
-        edge = self._edges.get(direction)
-        if edge is None:
-            edge = self._edges[direction] = _leading_edge(self, direction)
-        return edge
+        """The leading edge for a direction of motion."""
+        return self.facing(direction).edge
+
+    def facing(self, direction: Direction) -> Facing:
+        """The outline seen along a direction of motion; remembered per direction."""
+        facing = self._facings.get(direction)
+        if facing is None:
+            facing = self._facings[direction] = _facing(self, direction)
+        return facing
 
 
-def _leading_edge(outline: Outline, direction: Direction) -> Edge:
+def _facing(outline: Outline, direction: Direction) -> Facing:
     points, parts = outline.nodes(direction)
     dz, dr = direction
     along = points[:, 0] * dz + points[:, 1] * dr
@@ -116,7 +140,8 @@ def _leading_edge(outline: Outline, direction: Direction) -> Edge:
     order = (first + np.arange(int(leads.sum()))) % len(points)
     nodes = np.append(order, (order[-1] + 1) % len(points))
     low, high = points[nodes[0]], points[nodes[-1]]
-    return Edge(
+    rest = (nodes[-1] + np.arange(len(points) - len(order) + 1)) % len(points)
+    edge = Edge(
         tool=outline.tool,
         direction=direction,
         across=_frozen(across[nodes]),
@@ -126,6 +151,7 @@ def _leading_edge(outline: Outline, direction: Direction) -> Edge:
         round_low=_radius_at(outline, low, (dr, -dz)),
         round_high=_radius_at(outline, high, (-dr, dz)),
     )
+    return Facing(edge, _frozen(points[nodes]), _frozen(points[rest]))
 
 
 def _radius_at(outline: Outline, point: Floats, normal: tuple[float, float]) -> float:

@@ -8,7 +8,6 @@ import numpy as np
 import shapely
 from shapely.geometry import Polygon
 from shapely.geometry.base import BaseGeometry
-from shapely.geometry.polygon import orient
 
 from auditor.declared.model import Workpiece
 from auditor.simulate.samples import Floats
@@ -18,12 +17,12 @@ SNAP = 1e-9  # mm, grid of the fallback after a failed boolean operation
 
 
 def raw_stock(workpiece: Workpiece) -> BaseGeometry:
-    """The stock before the first move; outer ring counter-clockwise, holes clockwise."""
-    return orient(Polygon([(point.z, point.r) for point in workpiece.outline]))
+    """The stock before the first move."""
+    return Polygon([(point.z, point.r) for point in workpiece.outline])
 
 
 def without(stock: BaseGeometry, sweep: BaseGeometry) -> BaseGeometry:
-    """Stock after the area ``sweep`` was cut, oriented, free of numerical dust."""
+    """Stock after the area ``sweep`` was cut, free of numerical dust."""
     try:
         rest = shapely.difference(stock, sweep)
     except shapely.errors.GEOSException:
@@ -33,8 +32,8 @@ def without(stock: BaseGeometry, sweep: BaseGeometry) -> BaseGeometry:
 
 def _tidy(shape: BaseGeometry) -> BaseGeometry:
     if shape.geom_type == "Polygon":
-        return orient(shape)
-    parts = [orient(part) for part in polygons(shape) if part.area > SLIVER]
+        return shape
+    parts = [part for part in polygons(shape) if part.area > SLIVER]
     return parts[0] if len(parts) == 1 else shapely.multipolygons(parts) if parts else Polygon()
 
 
@@ -55,25 +54,32 @@ def swept(outline: Floats, step: tuple[float, float], at: tuple[float, float]) -
 
 def volume(shape: BaseGeometry) -> float:
     """Volume of revolution about the z axis, mm3 (Pappus, exact for straight sides)."""
-    total = 0.0
-    for polygon in polygons(shape):
-        total += _ring_volume(polygon.exterior) - sum(abs(_ring_volume(hole)) for hole in polygon.interiors)
-    return total
+    return enclosed_volume(boundary_segments(shape))
 
 
-def _ring_volume(ring: BaseGeometry) -> float:
-    coords = shapely.get_coordinates(ring)
-    z, r = coords[:, 0], coords[:, 1]
-    # integral of r over the area, by Green's theorem
-    slices = (z[:-1] - z[1:]) * (r[:-1] ** 2 + r[:-1] * r[1:] + r[1:] ** 2)
-    return abs(math.pi / 3.0 * float(slices.sum()))
+def enclosed_volume(sides: tuple[Floats, Floats]) -> float:
+    """The same from the sides of a shape, their inside on their left, by Green's theorem."""
+    (z_begin, r_begin), (z_end, r_end) = sides[0].T, sides[1].T
+    return math.pi / 3.0 * float(np.dot(z_begin - z_end, r_begin * r_begin + r_begin * r_end + r_end * r_end))
 
 
 def boundary_segments(stock: BaseGeometry) -> tuple[Floats, Floats]:
     """Starts and ends (n, 2) of all sides of the stock, its inside on their left."""
-    rings = [ring for part in polygons(stock) for ring in (part.exterior, *part.interiors)]
-    coords = [shapely.get_coordinates(ring) for ring in rings] or [np.empty((0, 2))]
-    return np.concatenate([ring[:-1] for ring in coords]), np.concatenate([ring[1:] for ring in coords])
+    rings = [
+        _turned(shapely.get_coordinates(ring), outer=number == 0)
+        for part in polygons(stock)
+        for number, ring in enumerate((part.exterior, *part.interiors))
+    ] or [np.empty((0, 2))]
+    if len(rings) == 1:
+        return rings[0][:-1], rings[0][1:]
+    return np.concatenate([ring[:-1] for ring in rings]), np.concatenate([ring[1:] for ring in rings])
+
+
+def _turned(ring: Floats, *, outer: bool) -> Floats:
+    """An outer ring counter-clockwise, a hole clockwise."""
+    z, r = ring.T
+    counter_clockwise = np.dot(z[:-1], r[1:]) > np.dot(z[1:], r[:-1])
+    return ring if counter_clockwise == outer else ring[::-1]
 
 
 def split_loose(stock: BaseGeometry) -> tuple[BaseGeometry, list[Polygon]]:
