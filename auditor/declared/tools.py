@@ -75,7 +75,7 @@ def tip_of(kind: ToolKind, hand: Hand, inside: bool) -> int:
     >>> tip_of("turning", "right", inside=False), tip_of("boring", "right", inside=True)
     (3, 2)
     """
-    if kind in ("drilling", "face grooving"):
+    if kind == "drilling":
         return 7
     if kind == "threading":
         return 6 if inside else 8
@@ -83,7 +83,7 @@ def tip_of(kind: ToolKind, hand: Hand, inside: bool) -> int:
         return 2
     if kind == "turning":
         return {"right": 3, "left": 4, "neutral": 8}[hand]
-    return 3  # grooving and parting are programmed with the corner nearer the chuck
+    return 3  # blades are programmed with a corner: nearer the chuck, or in the face nearer the axis
 
 
 def _common(number: int, kind: ToolKind, name: str, hand: Hand, table: rows.AnyTool, notes: Notes) -> Tool:

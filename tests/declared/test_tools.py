@@ -197,13 +197,14 @@ def test_a_bar_stop_needs_nothing(tmp_path: Path) -> None:
         ("boring", OUTRIGHT, 2),
         ("grooving", 'width = "3 mm"\n', 3),
         ("grooving", 'width = "3 mm"\nholder = "A20Q-SCLCR 09"\n', 2),
-        ("face grooving", 'width = "3 mm"\n', 7),
+        ("face grooving", 'width = "3 mm"\n', 3),
         ("threading", 'holder = "A20Q-SCLCR 09"\n', 6),
         ("drilling", 'diameter = "9 mm"\n', 7),
     ],
 )
 def test_the_usual_tip_number(tmp_path: Path, kind: str, text: str, tip: int) -> None:
-    # numbers by the usual picture: 3 outside towards the chuck, 2 inside, 4 outside away, 7 and 8 along Z and X
+    # numbers by the usual picture: 3 outside towards the chuck, 2 inside, 4 outside away, 7 and 8 along Z and X;
+    # a blade by its corner nearer the chuck, in the face nearer the axis (contract: programmed point = corner)
     assert tool(tmp_path, kind, text).tip == tip
 
 
