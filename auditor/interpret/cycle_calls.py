@@ -132,7 +132,8 @@ def _one_stroke(run: Run, stroke: Stroke) -> None:
     own = dressed(run, replace(_shifted(stroke, run.state.shift, 1), line=run.words.line, block=run.words.label))
     if stroke.reversed_spindle and own.spindle is not None:
         own = replace(own, spindle=replace(own.spindle, direction=-own.spindle.direction))
-    write(run, start.z, start.r, own)
+    write(run, *(run.compensated.tip or start), own)
+    run.compensated.tip = None
     run.state.z, run.state.r = own.end
 
 

@@ -13,7 +13,7 @@ from auditor.interpret.cycles.call import CycleFault, Stroke
 from auditor.interpret.moves import Feed, Kind
 from auditor.interpret.registry import motion
 from auditor.interpret.run import CornerChain, NotUnderstood, Run
-from auditor.interpret.travel import close_chain, rapid_partly_known, travel, unknown_start
+from auditor.interpret.travel import close_chain, rapid_partly_known, settle, travel, unknown_start
 from auditor.interpret.variable_lead import mean_lead
 from auditor.interpret.words import BlockWords, length
 
@@ -229,7 +229,10 @@ def _arc(run: Run, words: BlockWords, start: Point, end: Point, clockwise: bool)
 @motion("thread", "variable thread")
 def thread_stroke(run: Run, words: BlockWords) -> None:
     """G32 or G33: one stroke in step with the spindle; F (or E) is the lead."""
-    close_chain(run)
+    settle(run)
+    if run.state.compensation != "off":
+        text = "nose-radius compensation is on at a thread, which is cut without it"
+        run.remark("compensation-left-on", text, "G", remedy="cancel with G40 in a move before it")
     refuse_letters(run, words, frozenset((*AXIS_LETTERS, "Q", "E", *("K",) * (run.state.motion == "variable thread"))))
     end = end_point(run, words)
     start = known_start(run, end)

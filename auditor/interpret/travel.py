@@ -66,7 +66,9 @@ def rapid_partly_known(run: Run, end_z: float | None, end_r: float | None) -> No
     stroke = dressed(run, Stroke(Kind.RAPID, Point(end_z or 0.0, end_r or 0.0)))
     if end_r is None:
         stroke = replace(stroke, spindle=run.state.spindle.command())
-    write(run, run.state.z, run.state.r, stroke, (end_z, end_r))
+    here = (run.state.z, run.state.r) if run.state.position is None else run.compensated.tip or run.state.position
+    write(run, *here, stroke, (end_z, end_r))
+    run.compensated.tip = None
     run.state.z, run.state.r = end_z, end_r
 
 

@@ -16,6 +16,7 @@ def preset(run: Run, words: BlockWords) -> None:
     if not words.has("X", "Z", "U", "W"):
         return
     settle(run)
+    run.compensated.tip = None
     state, half = run.state, x_factor(run)
     x, u = millimetres(run, words, "X"), millimetres(run, words, "U")
     z, w = millimetres(run, words, "Z"), millimetres(run, words, "W")

@@ -127,3 +127,13 @@ def test_tools_with_one_offset_digit() -> None:
     job = declared(control, {2: Tool(2, "T2", "turning")}, start=Point(1.0, 1.0))
     found = carried_out("T21\nG0 X5.", job)
     assert (found.moves[0].tool, found.moves[0].offset) == (2, 1)
+
+
+@pytest.mark.parametrize("behind", ["G32 Z-30. F2.", "G90 X18. Z-30. F.1", "G75 X18. P500 F.1", "G28 U0 W0"])
+def test_compensation_left_on_leaves_no_gap_and_keeps_the_order(behind: str) -> None:
+    found = under("T0101\nG97 S500 M3 F.2\nG0 X30. Z4.\nG42 G1 X20. Z2.\nZ-10.\n" + behind)
+    assert "compensation-left-on" in topics(found)
+    lines = [move.line for move in found.moves]
+    assert lines == sorted(lines)
+    for move, after in zip(found.moves, found.moves[1:], strict=False):
+        assert (after.start_z, after.start_r) == (move.end_z, move.end_r)

@@ -32,20 +32,20 @@ def aside(way: Vector, side: int, radius: float) -> Vector:
     return -way[1] * side * radius, way[0] * side * radius
 
 
-def compensated(pieces: Sequence[Piece], side: int, radius: float, tip: int) -> list[Step]:
-    """End of the start-up move, then the tip path along the elements; a cancel move may follow."""
+def compensated(pieces: Sequence[Piece], side: int, radius: float, tip: int) -> tuple[Step, list[list[Step]]]:
+    """End of the start-up move, then the tip path along each element; a cancel move may follow."""
     shift = (radius * TIPS[tip][0], radius * TIPS[tip][1])
     opening = aside(tangent(pieces[0], False), side, radius)
-    steps = [Step("F", 2 * (pieces[0].r0 + opening[1] + shift[1]), pieces[0].z0 + opening[0] + shift[0])]
+    start = Step("F", 2 * (pieces[0].r0 + opening[1] + shift[1]), pieces[0].z0 + opening[0] + shift[0])
+    path = []
     for number, piece in enumerate(pieces):
         after = pieces[number + 1] if number + 1 < len(pieces) else None
-        for count, (z, r) in enumerate(_joint(piece, after, side, radius)):
-            x, z = 2 * (r + shift[1]), z + shift[0]
-            if piece.is_arc and count == 0:
-                steps.append(Step(piece.kind, x, z, 2 * (piece.cr + shift[1]), piece.cz + shift[0]))
-            else:
-                steps.append(Step("F", x, z))
-    return steps
+        steps = [Step("F", 2 * (r + shift[1]), z + shift[0]) for z, r in _joint(piece, after, side, radius)]
+        if piece.is_arc:
+            centre = 2 * (piece.cr + shift[1]), piece.cz + shift[0]
+            steps[0] = Step(piece.kind, steps[0].x, steps[0].z, *centre)
+        path.append(steps)
+    return start, path
 
 
 def _joint(piece: Piece, after: Piece | None, side: int, radius: float) -> list[Vector]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from itertools import chain
 from math import hypot, pi
 
 from tests.interpret.reference.contours import placed
@@ -51,9 +52,9 @@ def corner_words(pen: Pen) -> None:
         word: Corner = pen.rng.choice([None, ("C", pen.size(0.5, 2)), ("R", pen.size(0.5, 2))])
         points.append((place, word))
     points[-1] = (points[-1][0], None)
-    chain = [start, *(p for p, _ in points)]
+    corners = [start, *(p for p, _ in points)]
     points = [
-        (p, None if w and abs(angle(chain[i], p, chain[i + 2]) - pi) < 0.05 else w)
+        (p, None if w and abs(angle(corners[i], p, corners[i + 2]) - pi) < 0.05 else w)
         for i, (p, w) in enumerate(points[:-1])
     ] + [points[-1]]
     steps = broken(start, points)
@@ -86,12 +87,12 @@ def _compensated(pen: Pen, in_finish: bool) -> None:
     shape = placed(pieces, frame, pen.size(0, 2), base)
     sign = 1 if outside else -1
     xs, zs = 2 * (shape[0].r0 + sign * pen.size(3, 6)), shape[0].z0 + frame.sz * pen.size(3, 6)
-    steps = compensated(shape, side, pen.mm(pen.nose), pen.tip)
+    opening, path = compensated(shape, side, pen.mm(pen.nose), pen.tip)
     away = 2 * (shape[-1].r1 + sign * pen.size(3, 6)), shape[-1].z1
     comp = pen.g("G42" if side < 0 else "G41")
     pen.start(xs, zs)
     if in_finish:
-        _finish_compensated(pen, shape, steps, comp, away, xs, zs)
+        _finish_compensated(pen, shape, [opening, *chain(*path)], comp, away, xs, zs)
         return
     if pen.rng.random() < 0.3:
         pen.write(comp)
@@ -99,8 +100,12 @@ def _compensated(pen: Pen, in_finish: bool) -> None:
     mode = pen.rng.choice(["G0", "G1", "G1"])
     words = pen.axes(2 * shape[0].r0, shape[0].z0)
     pen.write(comp, pen.g(mode), *words, pen.feed_word(0.1))
-    pen.note(steps[0] if mode == "G1" else steps[0]._replace(kind="R"))
-    _compensated_blocks(pen, shape, steps[1:])
+    pen.note(opening if mode == "G1" else opening._replace(kind="R"))
+    for piece, steps in zip(shape, path, strict=True):
+        code = pen.g({"F": "G1", "CW": "G2", "CCW": "G3"}[piece.kind])
+        centre = pen.arc_words(piece) if piece.is_arc else []
+        pen.write(code, *pen.axes(2 * piece.r1, piece.z1), *centre)
+        pen.note(*steps)
     words = pen.axes(away[0], None)
     pen.write("G40", pen.g("G1"), *words)
     pen.note(Step("F", away[0], away[1]))
@@ -141,27 +146,6 @@ def _bent(pen: Pen) -> list[Piece]:
             pieces.append(Piece("F", z, r, z - dz, r + (dr if kind == "hollow" else 0.0)))
     z, r = pieces[-1].z1, pieces[-1].r1
     return [*pieces, Piece("F", z, r, z, r + pen.size(3, 5))]
-
-
-def _compensated_blocks(pen: Pen, pieces: Sequence[Piece], steps: list[Step]) -> None:
-    """Blocks of the contour; an acute corner gives its block a second step."""
-    steps = list(steps)
-    for number, piece in enumerate(pieces):
-        code = pen.g({"F": "G1", "CW": "G2", "CCW": "G3"}[piece.kind])
-        centre = pen.arc_words(piece) if piece.is_arc else []
-        words = pen.axes(2 * piece.r1, piece.z1)
-        pen.write(code, *words, *centre)
-        pen.note(steps.pop(0))
-        links = len(steps) - (len(pieces) - number - 1)
-        if links and _acute(piece, pieces[number + 1] if number + 1 < len(pieces) else None):
-            pen.note(steps.pop(0))
-
-
-def _acute(piece: Piece, after: Piece | None) -> bool:
-    if after is None or piece.is_arc or after.is_arc:
-        return False
-    a, b = (piece.z1 - piece.z0, piece.r1 - piece.r0), (after.z1 - after.z0, after.r1 - after.r0)
-    return a[0] * b[0] + a[1] * b[1] < 0
 
 
 def _finish_compensated(

@@ -175,12 +175,12 @@ class Pen:
             fed = step if step.kind == "R" or step.feed is not None else step._replace(feed=self.feed)
             self.steps.append((len(self.lines), fed))
 
-    def note_finish(self, *steps: Step) -> None:
-        """The steps of a finishing cycle: way in, one for each piece with the feeds of their blocks, way back."""
+    def note_finish(self, *blocks: Sequence[Step]) -> None:
+        """The steps of a finishing cycle: way in, those of each piece with the feed of its block, way back."""
         feeds = [None, *self.feeds, None]
-        for step, feed in zip(steps, feeds, strict=True):
+        for steps, feed in zip(blocks, feeds, strict=True):
             self.feed = self.feed if feed is None else feed
-            self.note(step)
+            self.note(*steps)
 
     def here(self) -> tuple[float, float]:
         """Present place: z, r."""

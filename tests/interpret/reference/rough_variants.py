@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from tests.interpret.reference.contours import placed, pocketed, rising
+from tests.interpret.reference.nose import compensated
 from tests.interpret.reference.pen import Pen
 from tests.interpret.reference.roughing import Contour, Rough, finish, pattern, rough
 from tests.interpret.reference.steps import Frame, Piece, Step
@@ -53,15 +54,32 @@ def _roughing(pen: Pen, facing: bool) -> None:
     pen.start(2 * rs, zs)
     numbers = _call(pen, "rough face" if facing else "rough", words, "W" if facing else "U")
     pen.note(*rough(zs, rs, contour, words, facing, pockets=False))
-    pen.contour(contour, numbers, with_z=facing, with_x=not facing)
+    side = 1 if frame.turns else -1
+    on, off = _compensation(pen, contour, side)
+    pen.contour(contour, numbers, with_z=facing, with_x=not facing, first=on, last=off)
     pen.x, pen.z = 2 * rs, zs
-    _after_rough(pen, contour, numbers, zs, rs)
+    _after_rough(pen, contour, numbers, zs, rs, side if on else 0)
 
 
-def _after_rough(pen: Pen, contour: Contour, numbers: tuple[int, int], zs: float, rs: float) -> None:
+def _compensation(pen: Pen, contour: Contour, side: int) -> tuple[list[str], list[str]]:
+    """Now and then G41 or G42 in block ns and G40 in nf, which acts in the finishing cycle alone."""
+    tight = any(piece.is_arc and piece.radius < 2 * pen.mm(0.4) for piece in contour.pieces)
+    if tight or pen.rng.random() < 0.6:
+        return [], []
+    pen.nose, pen.tip = 0.4, pen.rng.choice([1, 2, 3, 4, 8])
+    return [pen.g("G42" if side < 0 else "G41")], ["G40"]
+
+
+def _after_rough(pen: Pen, contour: Contour, numbers: tuple[int, int], zs: float, rs: float, side: int = 0) -> None:
+    """The finishing cycle now and then, compensated when the contour says so, and away."""
     if pen.rng.random() < 0.5:
         pen.write(pen.g("finish"), f"P{numbers[0]}", f"Q{numbers[1]}")
-        pen.note_finish(*finish(zs, rs, contour))
+        steps = finish(zs, rs, contour)
+        if not side:
+            pen.note_finish(*([step] for step in steps))
+        else:
+            opening, path = compensated(contour.pieces[:-1], side, pen.mm(pen.nose), pen.tip)
+            pen.note_finish([opening._replace(kind=contour.mode)], *path, *([step] for step in steps[-2:]))
     pen.rapid(None, pen.size(50, 90), always=True)
 
 
