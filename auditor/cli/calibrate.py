@@ -26,7 +26,10 @@ _FILE = click.Path(path_type=Path, dir_okay=False)
 @click.option("--format", "form", type=click.Choice(["screen", "json"]), default="screen", show_default=True,
               help="How the result is written.")
 @click.option("--output", type=_FILE, metavar="FILE", help="Write it there instead of standard output.")
-def command(program: Path, log_path: Path, reading: str, job: Path | None, form: str, output: Path | None) -> None:
+@click.option("--append", is_flag=True, help="Ask, and after a yes put the lines behind the nearest shop file's.")
+def command(
+    program: Path, log_path: Path, reading: str, job: Path | None, form: str, output: Path | None, append: bool
+) -> None:
     """Compare a logged spindle load with the prediction for PROGRAM and fit the material's force factor.
 
     \b
@@ -37,12 +40,13 @@ def command(program: Path, log_path: Path, reading: str, job: Path | None, form:
                 speed, as load meters show it) or rated_percent (of its
                 largest continuous power)
 
-    Nothing is written into any shop file: the lines for it are shown.
+    Nothing is written into any shop file without a yes: the lines for it are
+    shown.
 
     Exit status: 0 fitted, 2 the log does not tell the factor.
     """
     try:
-        _run(program, log_path, reading, job, form, output)
+        _run(program, log_path, reading, job, form, output, append)
     except TurnauditError as problem:
         from auditor.cli._talk import complain
 
@@ -50,7 +54,9 @@ def command(program: Path, log_path: Path, reading: str, job: Path | None, form:
         click.get_current_context().exit(EXIT_NOT_AUDITED)
 
 
-def _run(program: Path, log_path: Path, reading: str, job: Path | None, form: str, output: Path | None) -> None:
+def _run(
+    program: Path, log_path: Path, reading: str, job: Path | None, form: str, output: Path | None, append: bool
+) -> None:
     from auditor.cli import _files
     from auditor.cli._one import only_task
 
@@ -62,11 +68,16 @@ def _run(program: Path, log_path: Path, reading: str, job: Path | None, form: st
 
     log = read_log(log_path)
     run = audit_program(task.program, declared).run
-    text = _text(calibrate(run, log, peak=reading == "peak"), run.job, log, form, output)
+    calibration = calibrate(run, log, peak=reading == "peak")
+    text = _text(calibration, run.job, log, form, output)
     if output is not None:
         _files.replace(output, text)
     else:
         click.echo(text, nl=False)
+    if append:
+        from auditor.cli._appending import append_lines
+
+        append_lines(calibration, run.job, log)
 
 
 def _text(calibration: Calibration, job: Job, log: LoadLog, form: str, output: Path | None) -> str:
