@@ -9,6 +9,7 @@ from auditor.draft.guesses import Guess, quantity
 from auditor.interpret.moves import Interpretation, Kind, Move
 
 TO_HOLD = 30.0  # mm of stock taken to be held behind the deepest cut
+SAME = 0.001  # mm
 OUTSIDE = ("turning", "grooving", "parting", "threading")
 
 
@@ -17,7 +18,7 @@ def work_by_path(path: Interpretation, deeds: Sequence[Deeds]) -> Iterator[tuple
     scale, unit = (25.4, "in") if path.units == "in" else (1.0, "mm")
     outside = {deed.tool for deed in deeds if deed.kind in OUTSIDE and not deed.inside}
     widest = _widest(path.moves, outside)
-    if widest is not None:
+    if widest is not None and not _turns_at(path.moves, widest[0]):
         radius, line = widest
         why = f"the tools feed out to X{_short(2 * radius / scale)} in line {line}; the stock may be smaller"
         yield "workpiece.diameter", Guess(quantity(2 * radius / scale, unit), "guess", why)
@@ -57,6 +58,15 @@ def _widest(moves: Sequence[Move], outside: set[int]) -> tuple[float, int] | Non
     reached = [(abs(point.r), -move.line) for move in behind or cuts for point in (move.start, move.end) if point]
     radius, line = max(reached, default=(0.0, 0))
     return (radius, -line) if radius > 0.0 else None
+
+
+def _turns_at(moves: Sequence[Move], radius: float) -> bool:
+    """Whether a pass along Z lies at a radius: what is turned to that was larger before, nobody knows by how much."""
+    return any(
+        move.kind is not Kind.RAPID and move.start is not None and move.end is not None and move.end.z < 0.0
+        and move.end.z < move.start.z and min(move.start.r, move.end.r) >= radius - SAME
+        for move in moves
+    )  # fmt: skip
 
 
 def _deepest(moves: Sequence[Move]) -> tuple[float, int] | None:

@@ -62,6 +62,11 @@ def test_feed_to_the_face_is_no_boring(tmp_path: Path) -> None:
     assert _values(tmp_path, "", body=body)["tools.1.kind"] == '"turning"'
 
 
+def test_stock_is_not_taken_for_the_size_it_is_turned_to(tmp_path: Path) -> None:
+    body = "T0101\nG97 S900 M3\nG0 X42. Z2.\nG1 Z-30. F.2\nG0 X80. Z50.\n"
+    assert _values(tmp_path, "", body=body)["workpiece.diameter"] == '"?"'  # a cut through air else, found clear
+
+
 def test_what_a_draft_leaves_open_is_told_as_undecided(tmp_path: Path) -> None:
     program, job = tmp_path / "part.nc", tmp_path / "part.job.toml"
     program.write_text(f"%\nO1\nG21\n{CUT}M30\n%\n", encoding="ascii")
