@@ -9,7 +9,7 @@ from pathlib import Path
 
 from auditor.declared.job_reader import JobReader
 from auditor.declared.model import ToolKind
-from auditor.declared.shops import Shop
+from auditor.declared.shops import SHOP_FILE, Shop, find_shop
 from auditor.declared.toml_text import TomlFile, key_lines
 from auditor.draft.deeds import Deeds, all_deeds
 from auditor.draft.guesses import Guess, text_value
@@ -114,6 +114,8 @@ class _ShopNames:
 
     def __init__(self, job: Path) -> None:
         self._shop = Shop(job)
+        found = find_shop(job.absolute().parent)
+        self.where = _beside(found, job) if found else SHOP_FILE  # it may stand folders above, and be another shop's
 
     def names(self, section: str) -> tuple[str, ...]:
         """The names of a section; none where there is no shop file."""
@@ -141,7 +143,7 @@ def _surroundings(
     """Machine and chuck: names of the shop file at the head, or tables to fill in."""
     head: list[Entry] = []
     sections: list[Section] = []
-    machine = named_entry("machine", shop.names("machines"))
+    machine = named_entry("machine", shop.names("machines"), shop.where)
     if machine is None:
         sections.append(machine_section(reading))
     else:
@@ -150,7 +152,7 @@ def _surroundings(
     stick_out = known.get("workholding.stick_out")
     wanted = stick_out.value if stick_out else None
     fitting = [name for name in chucks if wanted and shop.value("workholdings", name, "stick_out") == wanted]
-    chuck = named_entry("workholding", fitting if len(fitting) == 1 else chucks)
+    chuck = named_entry("workholding", fitting if len(fitting) == 1 else chucks, shop.where)
     if chuck is None or (stick_out and not fitting):  # a chuck of the shop with another stick-out is another set-up
         sections.append(workholding_section(reading, known))
     else:

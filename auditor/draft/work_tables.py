@@ -24,14 +24,14 @@ def control_section(reading: Reading) -> Section:
     ))  # fmt: skip
 
 
-def named_entry(key: str, names: Sequence[str]) -> Entry | None:
+def named_entry(key: str, names: Sequence[str], shop: str) -> Entry | None:
     """A machine or chuck of the shop file in place of a table; None where the shop has none."""
     if not names:
         return None
     if len(names) == 1:
-        return Entry(key, text_value(names[0]), f"likely: the only one in shop.toml; or a table [{key}]", "said")
+        return Entry(key, text_value(names[0]), f"likely: the only one in {shop}; or a table [{key}]", "said")
     listed = " or ".join(text_value(name) for name in names)
-    return Entry(key, f'"{OPEN}"', f"{listed} of shop.toml, or a table [{key}]", "open")
+    return Entry(key, f'"{OPEN}"', f"{listed} of {shop}, or a table [{key}]", "open")
 
 
 def machine_section(reading: Reading) -> Section:

@@ -21,7 +21,8 @@ def shift_sheet(shift: Shift, view: View) -> str:
     if view.brief:
         return paper.text()
     watch = "unattended" if shift.plan.unattended else "attended"
-    paper.paragraph(f"{len(shift.jobs)} jobs take {duration(shift.time)} of {duration(shift.plan.length)}, {watch}",
+    jobs = "1 job takes" if len(shift.jobs) == 1 else f"{len(shift.jobs)} jobs take"
+    paper.paragraph(f"{jobs} {duration(shift.time)} of {duration(shift.plan.length)}, {watch}",
                     margin=2)
     _decisions(paper, shift)
     for job in shift.jobs:

@@ -78,3 +78,12 @@ def test_what_a_draft_leaves_open_is_told_as_undecided(tmp_path: Path) -> None:
     assert not any(fault.found for fault in refused.value.faults if fault.key in left)
     (material,) = (fault for fault in refused.value.faults if fault.key == "workpiece.material")
     assert "turnaudit materials" in (material.wanted or "")
+
+
+def test_shop_file_of_a_folder_above_is_named(tmp_path: Path) -> None:
+    lathe = '[machines.lathe]\nspeed_limit = "4000 rpm"\npower = "9 kW"\nbase_speed = "1000 rpm"\n'
+    (tmp_path / "shop.toml").write_text(lathe, encoding="utf-8")
+    folder = tmp_path / "parts"
+    folder.mkdir()
+    (folder / "part.nc").write_text(f"%\nO1\nG21\n{CUT}M30\n%\n", encoding="ascii")
+    assert "the only one in ../shop.toml" in draft_job(folder / "part.nc", folder / "part.job.toml").text()
