@@ -1,18 +1,35 @@
-"""System variables whose values follow from the text: modal feed, speed, tool, and the position."""
+"""System variables whose values follow from the text: codes in force, feed, speed, tool, and the position."""
 
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
+from functools import partial
 
 from auditor.interpret.cycles.call import INCH
 from auditor.interpret.run import Run
+from auditor.interpret.state import State
+from auditor.interpret.systems import number_of
 
 Reader = Callable[[], float | None]
+_MODAL: Mapping[int, Callable[[State], str | None]] = {  # modal groups by number: the function in force
+    1: lambda state: state.motion,
+    2: lambda state: "surface speed" if state.spindle.mode == "surface" else "rotation speed",
+    3: lambda state: "absolute" if state.absolute else "incremental",
+    5: lambda state: "feed per revolution" if state.feed.mode == "rev" else "feed per minute",
+    6: lambda state: "inch" if state.inch else "metric",
+    7: lambda state: f"compensation {state.compensation}",
+    10: lambda state: state.drilling or "drilling off",
+    14: lambda state: state.work_zero or "work zero 1",
+    16: lambda state: state.plane,
+}
+
+_SIDES = {"compensation left": "compensation right", "compensation right": "compensation left"}  # as written
 
 
 def known_control_values(run: Run) -> Mapping[int, Reader]:
-    """Readers by variable number: #4109 F, #4119 S, #4120 T, #5001 and #5041 X, #5002 and #5042 Z."""
+    """Readers by variable number: #4001 to #4014 codes in force, #4109 F, #4119 S, #4120 T, #5001 X, #5002 Z …"""
     return {
+        **{4000 + group: partial(_code_in_force, run, group) for group in _MODAL},
         4109: lambda: _in_program_unit(run, run.state.feed.value),
         4119: lambda: run.state.spindle.value,
         4120: lambda: _tool_word(run),
@@ -21,6 +38,14 @@ def known_control_values(run: Run) -> Mapping[int, Reader]:
         5041: lambda: _x(run),
         5042: lambda: _z(run),
     }
+
+
+def _code_in_force(run: Run, group: int) -> float | None:
+    """The G number in force of a modal group; macros keep it and restore it at their end."""
+    function = _MODAL[group](run.state)
+    if run.control.arcs == "mirrored":
+        function = _SIDES.get(function or "", function)
+    return number_of(run.system, function or "")
 
 
 def _in_program_unit(run: Run, value: float | None) -> float | None:

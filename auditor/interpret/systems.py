@@ -204,10 +204,13 @@ def code_text(code: float) -> str:
 
 def code_for(system: System, function: str) -> str:
     """How a system writes a function, for messages; the function's own name when it has no code."""
-    for code, name in SYSTEMS[system].items():
-        if name == function:
-            return code_text(code)
-    return function
+    code = number_of(system, function)
+    return function if code is None else code_text(code)
+
+
+def number_of(system: System, function: str) -> float | None:
+    """The G number of a function in a system, None when the system has none for it."""
+    return next((code for code, name in SYSTEMS[system].items() if name == function), None)
 
 
 def known_elsewhere(system: System, code: float) -> dict[System, str]:

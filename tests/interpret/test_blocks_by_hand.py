@@ -44,6 +44,10 @@ CASES: list[tuple[str, list[Row], dict[str, Any]]] = [
     ("DO1\n#1=#1+1\nG0 X#1\nIF[#1GE2]GOTO5\nEND1\nN5 G0 Z0", [(R, 1, 100), (R, 2, 100), (R, 2, 0)], {}),
     ("#1=20\nGOTO#1\nN10 G0 X1.\nN20 G0 X2.", [(R, 2, 100)], {}),
     ("IF [[1 EQ 1] AND [2 GT 1]] GOTO 10\nG0 X1.\nN10G0 Z2.", [(R, 200, 2)], {}),
+    # codes in force, kept and restored
+    ("M3 S9 F.2\nG1 X50.\n#33=#4001\nG0 X5.\nG#33 X6.", [(F, 50, 100), (R, 5, 100), (F, 6, 100)], {}),
+    ("G90 G0 X50.\n#3=#4003\nG91 X1.\nG#3 X5.", [(R, 50, 100), (R, 51, 100), (R, 5, 100)], {"system": "B"}),
+    ("G20 G0 X1.\n#6=#4006\nG21 X9.\nG#6 X2.", [(R, 25.4, 100), (R, 9, 100), (R, 50.8, 100)], {}),
     # calls
     ("G65 P100 K1. I2. J3. I7.\nM30\nO100\nG0 X#6 Z#4\nX#5 Z#7\nM99", [(R, 1, 2), (R, 3, 7)], {}),
     (f"M98 P100 L2\n{SUB}", [(R, 195, 100), (R, 190, 100)], {}),
