@@ -50,7 +50,7 @@ class Flow:
         self.frames: list[Frame] = []
         self.modal_call: ModalCall | None = None
         self.started: list[Program] = []
-        self._from_start = choice(control, "sequence_search") == "from start"
+        self.from_start = choice(control, "sequence_search") == "from start"
         self.went_back = False  # since last asked
         self._jumps = 0
         self._steps = 0
@@ -89,7 +89,7 @@ class Flow:
     def jump(self, number: int) -> bool:
         """Go on at block N``number`` of the running program; False when it is missing."""
         frame = self.frame
-        place = frame.program.find(number, frame.index - 1, from_start=self._from_start)
+        place = frame.program.find(number, frame.index - 1, from_start=self.from_start)
         if place is None:
             return False
         self._go_to(place)
@@ -97,7 +97,7 @@ class Flow:
 
     def lies_behind(self, number: int) -> bool:
         """Whether going on at block N``number`` repeats what ran already."""
-        place = self.frame.program.find(number, self.frame.index - 1, from_start=self._from_start)
+        place = self.frame.program.find(number, self.frame.index - 1, from_start=self.from_start)
         return place is not None and place < self.frame.index
 
     def repeated_number(self, number: int) -> tuple[int, ...]:

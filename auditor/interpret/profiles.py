@@ -75,7 +75,7 @@ def _bounds(run: Run, words: BlockWords, program: Program) -> tuple[int, int]:
         text = "the cycle needs P and Q, the block numbers of its profile"
         raise CycleFault("cycle-profile-missing", text, ("P", "Q"))
     here = run.flow.frame.index - 1
-    first = program.find(ns, here)
+    first = program.find(ns, here, from_start=run.flow.from_start)
     if first is None:
         raise CycleFault("cycle-profile-missing", f"N{ns}, where the profile begins, is not in the program", ("P",))
     if nf not in program.places:

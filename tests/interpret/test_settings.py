@@ -72,6 +72,13 @@ def test_where_a_block_number_is_searched() -> None:
     assert [x for _, x, _ in rows(under(text, sequence_search="from start"))] == [1.0, 1.0, 4.0]
 
 
+def test_where_a_profile_is_searched() -> None:
+    first, second = ("N10 G0 X40.\nN20 G1 Z-5.\n", "N10 G0 X38.\nN20 G1 Z-9.\n")
+    text = TURN + "G70 P10 Q20\nGOTO5\n" + first + "N5 G70 P10 Q20\nM30\n" + second
+    assert [z for kind, _, z in rows(under(text)) if kind == "F"] == [-5.0, -9.0]
+    assert [z for kind, _, z in rows(under(text, sequence_search="from start")) if kind == "F"] == [-5.0, -5.0]
+
+
 def test_arc_ends_apart() -> None:
     text = TURN + "G1 X30. Z-40.\nG2 X40. Z-45.1 I5. K0"
     assert not_audited(under(text)) == [5]
