@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import numpy as np
 import pytest
-from hypothesis import given
+from hypothesis import assume, given
 from hypothesis import strategies as st
 
 from auditor.mechanics.force_circle import (
@@ -42,6 +42,7 @@ def test_merchant_has_the_least_force(g, beta):
 @given(rake, friction, st.floats(15.0, 40.0))
 def test_energy_of_shear_and_friction_is_the_energy_of_the_cut(g, beta, phi):
     """Fc = Fs gamma_s h b sin(phi) / (h b) …: shear work tau * strain plus friction share adds up to the whole."""
+    assume(phi + beta - g < 89.0)  # at a right angle the force has no bound, and the law refuses
     fc, ft = force_from_shear(400.0, 0.2, 2.0, phi, beta, g)
     strain = shear_strain(phi, g)
     ratio = np.sin(np.radians(phi)) / np.cos(np.radians(phi - g))  # uncut over cut thickness, from the geometry
@@ -52,6 +53,7 @@ def test_energy_of_shear_and_friction_is_the_energy_of_the_cut(g, beta, phi):
 @given(rake, friction, st.floats(15.0, 40.0))
 def test_force_circle_closes(g, beta, phi):
     """From shear to forces and back: friction angle, shear stress, shear force."""
+    assume(phi + beta - g < 89.0)  # at a right angle the force has no bound, and the law refuses
     fc, ft = force_from_shear(400.0, 0.2, 2.0, phi, beta, g)
     assert float(measured_friction_angle(fc, ft, g)) == pytest.approx(beta)
     assert float(shear_stress(fc, ft, phi, 0.2, 2.0)) == pytest.approx(400.0)
