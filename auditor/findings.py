@@ -17,7 +17,7 @@ Verdict = Literal["stop", "incomplete", "review", "clear"]
 
 
 class Level(StrEnum):
-    """How grave a finding is (contract section 4)."""
+    """How grave a finding is."""
 
     STOP = "stop"
     REVIEW = "review"

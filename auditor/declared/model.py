@@ -35,7 +35,7 @@ class Assumption:
 
 @dataclass(frozen=True, slots=True)
 class Control:
-    """How the program text is to be read (contract section 2 and language.md section 8)."""
+    """How the program text is to be read: the [control] table."""
 
     system: System = "A"
     system_declared: bool = False  # False: the reader scores the marks and says what it took
@@ -118,7 +118,7 @@ class Material:
     mf: float | None = None
     kp11: float | None = None
     mp: float | None = None
-    friction_angle: float = 32.0  # deg at the reference rake (mechanics.md D4)
+    friction_angle: float = 32.0  # deg at the reference rake
     tensile_strength: float | None = None  # MPa
     hardness: float | None = None  # HB
     modulus: float = 210_000.0  # MPa
@@ -200,7 +200,7 @@ class Tool:
     hand: Literal["right", "left", "neutral"] = "right"
     insert_faces: Literal["up", "down"] | None = None
     centre_height: float = 0.0  # mm above (+) the spindle axis
-    tip: int = 3  # imaginary tip number, language.md 4.1
+    tip: int = 3  # imaginary tip number, 0 to 9
 
 
 @dataclass(frozen=True, slots=True)

@@ -10,7 +10,7 @@ from auditor.declared.model import Assumption, Point, System
 
 
 class Kind(StrEnum):
-    """What sort of motion a move is (contract section 5)."""
+    """What sort of motion a move is, as the JSON report names it."""
 
     RAPID = "rapid"
     FEED = "feed"
@@ -27,7 +27,7 @@ class Spindle:
     mode: Literal["rpm", "surface"] = "rpm"
     value: float | None = None  # rpm, or m/min under constant surface speed
     clamp: float | None = None  # rpm, programmed; machine limit not included
-    fixed_diameter: float | None = None  # rapid: speed is set for the end point (language.md 2.8)
+    fixed_diameter: float | None = None  # rapid: speed is set for the end point
 
 
 @dataclass(frozen=True, slots=True)

@@ -8,7 +8,7 @@ from typing import Literal
 
 @dataclass(frozen=True, slots=True)
 class Number:
-    """A literal number exactly as the program writes it; the point matters (language.md 1.4)."""
+    """A literal number exactly as the program writes it; the point matters."""
 
     value: float
     has_point: bool

@@ -84,6 +84,6 @@ class Prediction:
     wear_factor: float
 
     def band(self, value: float, scatter: float) -> tuple[float, float]:
-        """Lower and upper edge of a predicted figure (contract section 2, [model])."""
+        """Lower and upper edge of a predicted figure, worn edge included ([model] of the job file)."""
         upper = (scatter**2 + (self.wear_factor - 1.0) ** 2) ** 0.5
         return value * (1.0 - scatter), value * (1.0 + upper)
